@@ -1,0 +1,1 @@
+//! Runtime kinds of quantity, their algebra, and the unit table.

@@ -1,0 +1,1 @@
+//! Shared helpers of the tests that look at Layshaft as a whole.
