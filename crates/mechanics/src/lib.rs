@@ -1,1 +1,11 @@
-//! To be filled.
+//! Sources, transmissions, loads and the solver for their operating points: plain values in, plain values out.
+//!
+//! This crate knows no syntax and no spans. Beside every law stands its [`registry`] row: fields, results, kinds,
+//! ranges, words, formula text and source as plain data, from which checking, completion, reference and messages
+//! are derived.
+
+pub mod drive;
+pub mod fault;
+pub mod registry;
+pub mod solution;
+pub mod values;
