@@ -1,0 +1,103 @@
+//! Loads that grow with a power of the speed.
+//!
+//! Formula: `T = T_r * (w / w_r)^n` with n = 0 constant, 1 viscous, 2 quadratic; polynomial `T = c_0 + c_1*w + …`.
+//! Symbols: T torque [N·m] or force [N]; T_r at the rated point; w speed [rad/s] or [m/s], w_r at the rated point;
+//! c_k coefficients.
+//! Validity: the load resists motion in either direction: against reversed motion the same law holds with the sign
+//! of the motion. A fan or pump follows the square only against a system that does (no static head), and its torque
+//! near standstill is friction, given as breakaway.
+//! Source: affinity laws of fans and pumps (usual handbooks); closed form.
+//! Revision: 1
+
+use super::Checked;
+use crate::registry::Formula;
+
+/// Resistance that grows evenly with speed.
+pub const VISCOUS: Formula = Formula {
+    name: "torque",
+    text: "b * w",
+    symbols: &[("b", "viscous_coefficient", "torque per speed"), ("w", "rotational_speed", "speed")],
+    validity: "laminar friction, eddy-current brakes well below their peak",
+    source: "definition",
+    revision: 1,
+};
+
+/// Resistance that grows with the square of speed.
+pub const QUADRATIC: Formula = Formula {
+    name: "torque",
+    text: "T_r * (w / w_r)^2",
+    symbols: &[
+        ("T_r", "torque", "torque at the rated point"),
+        ("w", "rotational_speed", "speed"),
+        ("w_r", "rotational_speed", "speed at the rated point"),
+    ],
+    validity: "fans and pumps on a system without static head, density unchanged",
+    source: "affinity laws of fans and pumps, usual handbooks",
+    revision: 1,
+};
+
+/// The formulas with the kernels that must equal them.
+pub const CHECKED: &[Checked] = &[
+    Checked {
+        formula: &VISCOUS,
+        domain: &[(1e-5, 10.0), (0.0, 500.0)],
+        kernel: |x| Powers { coefficients: [0.0, x[0], 0.0, 0.0] }.at(x[1]),
+    },
+    Checked {
+        formula: &QUADRATIC,
+        domain: &[(0.1, 1e4), (0.0, 500.0), (1.0, 500.0)],
+        kernel: |x| Powers::through(2, x[2], x[0]).at(x[1]),
+    },
+];
+
+/// Coefficients of speed to the powers 0 to 3.
+#[derive(Clone, Copy, Debug, PartialEq, Default)]
+pub struct Powers {
+    /// Of the powers 0, 1, 2, 3.
+    pub coefficients: [f64; 4],
+}
+
+impl Powers {
+    /// The single power (0 to 3) of speed that passes through a point.
+    #[must_use]
+    pub fn through(power: usize, speed: f64, effort: f64) -> Self {
+        let mut scale = 1.0;
+        for _ in 0..power {
+            scale *= speed;
+        }
+        let mut coefficients = [0.0; 4];
+        coefficients[power.min(3)] = effort / scale;
+        Self { coefficients }
+    }
+
+    /// Effort at a speed of zero or above.
+    #[must_use]
+    pub fn at(&self, speed: f64) -> f64 {
+        self.coefficients.iter().rev().fold(0.0, |sum, c| sum * speed + c)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::Powers;
+    use crate::laws::testing::{close, rpm};
+
+    #[test]
+    fn a_fifth_more_speed_asks_half_as_much_torque_again() {
+        // Affinity laws: a fan sped up by 20 % takes 1.44 times the torque and 1.73 times the power.
+        let fan = Powers::through(2, rpm(1000.0), 30.0);
+        close(fan.at(rpm(1200.0)), 30.0 * 1.44, 1e-14);
+        close(fan.at(rpm(1200.0)) * 1.2 / 30.0, 1.728, 1e-14);
+    }
+
+    #[test]
+    fn propeller_law() {
+        // E. C. Tupper, Introduction to Naval Architecture, propulsion: Q = K_Q rho n² D⁵, n in revolutions per second.
+        let torque = 0.05 * 1025.0 * 2.0 * 2.0 * 1024.0;
+        let propeller = Powers::through(2, rpm(120.0), torque);
+        close(torque, 209_920.0, 1e-14);
+        close(torque * rpm(120.0), 2_637_932.519_37, 1e-11);
+        close(propeller.at(rpm(108.0)) * 0.9 / torque, 0.729, 1e-12);
+        close(propeller.at(rpm(132.0)) * 1.1 / torque, 1.331, 1e-12);
+    }
+}

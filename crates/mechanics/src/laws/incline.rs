@@ -1,0 +1,85 @@
+//! Weight on a slope: the share that pulls down and the share that presses.
+//!
+//! Formula: `F = m * g * (sin(a) + mu * cos(a))`, `a = atan(G)`.
+//! Symbols: m mass [kg]; g standard gravity 9.80665 [m/s²]; a slope [rad]; G grade, rise per run, uphill positive [-];
+//! mu coefficient of friction, opposing motion [-]; F force along the slope [N].
+//! Validity: Coulomb friction, the same at all speeds. A grade of 15 % is 8.53°, not 15°.
+//! Source: Coulomb's law of friction; standard gravity of the 3rd CGPM (1901), ISO 80000-3.
+//! Revision: 1
+
+use super::{Checked, G_N};
+use crate::registry::Formula;
+
+/// Slope of a grade.
+pub const SLOPE: Formula = Formula {
+    name: "slope",
+    text: "atan(G)",
+    symbols: &[("G", "grade", "grade, rise per run, uphill positive")],
+    validity: "a sign of 1 in 4 may mean the sine instead: ask",
+    source: "definition",
+    revision: 1,
+};
+
+/// Force along the slope, moving uphill.
+pub const UPHILL_FORCE: Formula = Formula {
+    name: "force",
+    text: "m * (9.80665 m/s²) * (sin(a) + mu * cos(a))",
+    symbols: &[
+        ("m", "mass", "mass"),
+        ("a", "angle", "slope, uphill positive"),
+        ("mu", "number", "coefficient of friction"),
+    ],
+    validity: "moving in the direction counted positive; friction opposes motion",
+    source: "Coulomb's law of friction",
+    revision: 1,
+};
+
+/// The formulas with the kernels that must equal them.
+pub const CHECKED: &[Checked] = &[
+    Checked { formula: &SLOPE, domain: &[(-2.0, 2.0)], kernel: |x| libm::atan(x[0]) },
+    Checked {
+        formula: &UPHILL_FORCE,
+        domain: &[(0.1, 1e5), (-1.5, 1.5), (0.0, 1.0)],
+        kernel: |x| weight(x[0]) * (libm::sin(x[1]) + x[2] * libm::cos(x[1])),
+    },
+];
+
+/// Weight (N) of a mass (kg) under standard gravity.
+#[must_use]
+pub fn weight(mass: f64) -> f64 {
+    mass * G_N
+}
+
+/// Sine of the slope that has this grade.
+#[must_use]
+pub fn sine_of_grade(grade: f64) -> f64 {
+    grade / (1.0 + grade * grade).sqrt()
+}
+
+/// Cosine of the slope that has this grade.
+#[must_use]
+pub fn cosine_of_grade(grade: f64) -> f64 {
+    1.0 / (1.0 + grade * grade).sqrt()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::{cosine_of_grade, sine_of_grade, weight};
+    use crate::laws::testing::close;
+
+    #[test]
+    fn percent_is_not_degrees() {
+        // Closed form: 85 kg on 15 % and on 15°.
+        close(weight(85.0) * sine_of_grade(0.15), 123.65, 1e-4);
+        close(weight(85.0) * libm::sin(15.0_f64.to_radians()), 215.7, 2e-4);
+    }
+
+    #[test]
+    fn sine_and_cosine_belong_together() {
+        for grade in [-0.3, 0.0, 0.06, 1.0, 30.0] {
+            let (s, c) = (sine_of_grade(grade), cosine_of_grade(grade));
+            close(s * s + c * c, 1.0, 1e-15);
+            close(s, libm::sin(libm::atan(grade)), 1e-14);
+        }
+    }
+}
