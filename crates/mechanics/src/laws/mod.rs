@@ -11,13 +11,21 @@ pub mod dc_machine;
 pub mod drag;
 pub mod gear;
 pub mod incline;
+pub mod induction_curve;
 pub mod inertia;
+pub mod kloss;
+pub mod person_power;
 pub mod road;
 pub mod rope;
+pub mod servo_envelope;
 pub mod straight_line;
 pub mod synchronous;
+pub mod table;
 pub mod wheel;
 pub mod winding;
+
+#[cfg(test)]
+pub(crate) mod testing;
 
 /// Standard gravity, m/s² (3rd CGPM, 1901; ISO 80000-3).
 pub const G_N: f64 = 9.806_65;
@@ -35,7 +43,7 @@ pub struct Checked {
 
 /// Every formula with its kernel.
 pub fn checked() -> impl Iterator<Item = &'static Checked> {
-    let laws: [&'static [Checked]; 14] = [
+    let laws: [&'static [Checked]; 19] = [
         battery::CHECKED,
         belt::CHECKED,
         brake::CHECKED,
@@ -43,16 +51,95 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         drag::CHECKED,
         gear::CHECKED,
         incline::CHECKED,
+        induction_curve::CHECKED,
         inertia::CHECKED,
+        kloss::CHECKED,
+        person_power::CHECKED,
         road::CHECKED,
         rope::CHECKED,
+        servo_envelope::CHECKED,
         straight_line::CHECKED,
         synchronous::CHECKED,
+        table::CHECKED,
         wheel::CHECKED,
         winding::CHECKED,
     ];
     laws.into_iter().flatten()
 }
 
+
 #[cfg(test)]
-pub(crate) mod testing;
+mod tests {
+    use super::{Checked, checked};
+
+    /// Words of the expression grammar that a formula may use beside its symbols.
+    const FUNCTIONS: &[&str] = &["pi", "sqrt", "abs", "min", "max", "sin", "cos", "tan", "atan", "exp", "ln"];
+
+    /// The names in a formula; a word directly after a number is a unit.
+    fn names(text: &str) -> Vec<String> {
+        let mut out = Vec::new();
+        let mut chars = text.chars().peekable();
+        let mut after_number = false;
+        while let Some(c) = chars.next() {
+            if c.is_alphabetic() || c == '_' {
+                let mut word = String::from(c);
+                let unit = after_number;
+                let more = |c: char| c.is_alphanumeric() || c == '_' || (unit && "·/²³^".contains(c));
+                while let Some(next) = chars.next_if(|c| more(*c)) {
+                    word.push(next);
+                }
+                if !unit {
+                    out.push(word);
+                }
+                after_number = false;
+            } else if c.is_ascii_digit() || c == '.' {
+                after_number = true;
+            } else if c != ' ' {
+                after_number = false;
+            }
+        }
+        out
+    }
+
+    #[test]
+    fn formulas_name_their_symbols_and_no_others() {
+        for Checked { formula, domain, .. } in checked() {
+            let declared: Vec<&str> = formula.symbols.iter().map(|(name, _, _)| *name).collect();
+            let used = names(formula.text);
+            for name in &used {
+                let known = declared.contains(&name.as_str()) || FUNCTIONS.contains(&name.as_str());
+                assert!(known, "{}: `{}` names {name}, which is not declared", formula.name, formula.text);
+            }
+            for name in &declared {
+                assert!(used.iter().any(|word| word == name), "{}: {name} is not used", formula.text);
+            }
+            assert_eq!(declared.len(), domain.len(), "{}", formula.text);
+            assert!(domain.iter().all(|(low, high)| low <= high), "{}", formula.text);
+        }
+    }
+
+    #[test]
+    fn names_are_told_from_units() {
+        assert_eq!(names("m * (9.80665 m/s²) * sin(a_1) - 235 K"), ["m", "sin", "a_1"]);
+    }
+
+    #[test]
+    fn kernels_answer_in_their_domain() {
+        for Checked { formula, domain, kernel } in checked() {
+            for share in [0.0, 0.3, 0.7, 1.0] {
+                let x: Vec<f64> = domain.iter().map(|(low, high)| low + share * (high - low)).collect();
+                assert!(kernel(&x).is_finite(), "{} at {x:?}", formula.text);
+            }
+        }
+    }
+
+    #[test]
+    fn every_formula_says_where_it_holds_and_where_it_comes_from() {
+        for Checked { formula, .. } in checked() {
+            for text in [formula.name, formula.text, formula.validity, formula.source] {
+                assert!(!text.is_empty() && !text.ends_with('.'), "{text}");
+            }
+            assert!(formula.revision >= 1);
+        }
+    }
+}
