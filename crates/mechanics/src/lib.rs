@@ -4,8 +4,13 @@
 //! ranges, words, formula text and source as plain data, from which checking, completion, reference and messages
 //! are derived.
 
+pub mod curve;
 pub mod drive;
 pub mod fault;
+pub mod kinds;
+pub mod laws;
+pub mod model;
 pub mod registry;
+pub mod scalar;
 pub mod solution;
 pub mod values;

@@ -18,6 +18,8 @@ pub enum Answer {
     Flag(bool),
     /// A word, such as `motoring`.
     Word(&'static str),
+    /// It grows above every limit: the highest speed of a drive that runs away. An upper limit on it fails.
+    Unbounded(Note),
     /// There is such a result, but not here: the reason.
     Absent(Note),
     /// The part or the drive has no result of this name.

@@ -1,0 +1,3 @@
+//! Driven machines.
+
+pub mod quadratic;

@@ -1,0 +1,3 @@
+//! Power plants.
+
+pub mod straight_line;

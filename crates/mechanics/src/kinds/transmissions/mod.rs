@@ -1,0 +1,3 @@
+//! What stands between two shafts.
+
+pub mod gear;
