@@ -3,6 +3,7 @@
 //! `parse` is total: any text gives a [`File`] of items, each with its own problems, and a broken item
 //! leaves its neighbours whole.
 
+pub mod format;
 mod lexer;
 mod problem;
 pub mod token;
