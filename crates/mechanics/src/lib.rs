@@ -13,4 +13,5 @@ pub mod model;
 pub mod registry;
 pub mod scalar;
 pub mod solution;
+mod solve;
 pub mod values;
