@@ -177,13 +177,24 @@ impl Task<'_> {
 
     /// Judges a stretch that bounds cannot decide by the signs beside it.
     fn settle(&self, cluster: (f64, f64), range: (f64, f64), roots: &mut Vec<Root>) {
-        let pad = 8.0 * NARROW * f64::max(cluster.0.abs(), cluster.1.abs());
-        let (lo, hi) = (f64::max(cluster.0 - pad, range.0), f64::min(cluster.1 + pad, range.1));
+        let size = f64::max(cluster.0.abs(), cluster.1.abs());
+        let (mut lo, mut hi) = cluster;
+        // Beside the stretch the curve may still be too near zero for its sign to mean anything.
+        let mut pad = 8.0 * NARROW * size;
+        while pad < 1e-2 * size {
+            lo = if self.touches(lo) { f64::max(cluster.0 - pad, range.0) } else { lo };
+            hi = if self.touches(hi) { f64::min(cluster.1 + pad, range.1) } else { hi };
+            if !self.touches(lo) && !self.touches(hi) {
+                break;
+            }
+            pad *= 2.0;
+        }
         // A zero already found beside the stretch is the same place.
         roots.retain(|root| root.x < lo || root.x > hi);
         let outer = |x: f64| if self.touches(x) { 0 } else { self.sign(x) };
         let (before, after) = (outer(lo), outer(hi));
-        let wide = cluster.1 - cluster.0 > 64.0 * pad;
+        // A smooth touch is never so wide; a stretch at zero is reached at its start.
+        let wide = cluster.1 - cluster.0 > 1e-3 * cluster.1.abs();
         if before * after < 0 {
             let crossing = if before > 0 { Crossing::Falling } else { Crossing::Rising };
             let x = if wide { cluster.0 } else { self.bisect(lo, hi, before) };
