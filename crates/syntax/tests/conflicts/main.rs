@@ -2,9 +2,12 @@
 
 mod ebnf;
 mod lalr;
+mod sentences;
 
 use ebnf::Grammar;
 use lalr::Automaton;
+use layshaft_syntax::{DECLARATION_WORDS, RESERVED};
+use sentences::{line_at, sentence};
 
 const GRAMMAR: &str = include_str!("../../../../grammar/layshaft.ebnf");
 
@@ -142,5 +145,83 @@ fn every_word_is_listed() {
     }
     for word in &listed {
         assert_eq!(listed.iter().filter(|other| *other == word).count(), 1, "{word} is listed twice");
+    }
+}
+
+/// The words of the grammar are the words of the lexer.
+#[test]
+fn words_are_the_lexers() {
+    let grammar = Grammar::read(GRAMMAR).unwrap();
+    let mut reserved = grammar.list("reserved");
+    let mut lexed: Vec<&str> = RESERVED.iter().map(|row| row.word).collect();
+    reserved.sort_unstable();
+    lexed.sort_unstable();
+    assert_eq!(reserved, lexed);
+    let contextual = grammar.list("contextual");
+    for row in DECLARATION_WORDS.iter().filter(|row| !row.meaning.contains("later version")) {
+        assert!(contextual.contains(&row.word), "{}", row.word);
+    }
+}
+
+/// The specs and the examples of the reference, each with its name.
+fn specs() -> Vec<(String, String)> {
+    let root = std::path::Path::new(env!("CARGO_MANIFEST_DIR"));
+    let mut specs = Vec::new();
+    for folder in ["tests/data", "../../tests/specs"] {
+        let Ok(entries) = std::fs::read_dir(root.join(folder)) else { continue };
+        for path in entries.flatten().map(|entry| entry.path()) {
+            if path.extension().is_some_and(|end| end == "shaft") {
+                specs.push((path.display().to_string(), std::fs::read_to_string(&path).unwrap()));
+            }
+        }
+    }
+    let reference = include_str!("../../../../grammar/language.md");
+    for (index, block) in reference.split("```shaft").skip(1).enumerate() {
+        let body =
+            block.split_once('\n').map_or("", |(_, body)| body.split("```").next().unwrap_or_default());
+        specs.push((format!("example {} of grammar/language.md", index + 1), body.to_string()));
+    }
+    assert!(specs.len() > 15, "only {} specs found", specs.len());
+    specs
+}
+
+/// The index of the token of a sentence that cannot stand there.
+fn refused(automaton: &Automaton, text: &str) -> Option<usize> {
+    let sentence = sentence(text);
+    let terminals: Vec<Vec<String>> = sentence.iter().map(|(terminal, _)| vec![terminal.clone()]).collect();
+    let at = automaton.accept(&terminals).err()?;
+    Some(sentence.get(at).map_or(text.len(), |(_, at)| *at))
+}
+
+#[test]
+fn every_spec_is_a_sentence_of_the_grammar() {
+    let automaton = automaton(GRAMMAR);
+    for (name, text) in specs() {
+        if let Some(at) = refused(&automaton, &text) {
+            panic!("{name}: {:?} cannot stand in `{}`", text[at..].chars().next(), line_at(&text, at));
+        }
+    }
+}
+
+#[test]
+fn what_is_no_sentence_is_refused() {
+    let automaton = automaton(GRAMMAR);
+    for text in [
+        "let a = 2^3^2",
+        "let a = -2^2",
+        "let a = 5 m ± 1 m ± 1 m",
+        "let a = b < c < d < e",
+        "let a = 38 N m",
+        "let a = 5 from \"x\" measured \"y\"",
+        "drive d = 2 motor -> gear",
+        "case a { x = 1, y = 2 }",
+        "show a.b in A",
+        "let low-battery = 3 V",
+        "let a = 1,000 m",
+        "let a = points (n [rpm]) { 1000 - 2 }",
+        "require \"x\" a only b",
+        "let a = (5 m",
+    ] {
+        assert!(refused(&automaton, text).is_some(), "accepted: {text}");
     }
 }
