@@ -1,2 +1,2 @@
-//! The command. 
+//! The command.
 fn main() {}

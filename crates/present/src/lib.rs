@@ -1,1 +1,11 @@
-//! To be filled.
+//! Numbers, tables and sentences shared by every renderer: what terminal, JSON, hover and record show is made here,
+//! once, so that they cannot disagree. Plain data in, plain data out; nothing is coloured, escaped or laid out.
+//!
+//! [`sheet::sheet`] turns an analysis into what a reader is shown; [`shown::shown`] writes one value.
+
+pub mod escape;
+pub mod note;
+pub mod number;
+pub mod sheet;
+pub mod shown;
+pub mod unit;
