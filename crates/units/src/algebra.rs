@@ -244,3 +244,8 @@ pub fn negate(a: &Type) -> Result<Type, Refusal> {
     }
     Ok(Type { literal: false, ..*a })
 }
+
+/// The type of a tolerance on a value of type `a`: the same, and for a level the difference.
+pub fn difference_of(a: &Type) -> Type {
+    Type { scale: Scale::Ratio, of_level: a.scale == Scale::Level, ..a.named() }
+}

@@ -68,6 +68,11 @@ impl Function {
         TABLE.iter().map(|row| row.0)
     }
 
+    /// Their names, in the same order.
+    pub fn names() -> impl Iterator<Item = &'static str> {
+        TABLE.iter().map(|row| row.1)
+    }
+
     fn row(self) -> &'static Row {
         TABLE.iter().find(|row| row.0 == self).unwrap_or(&TABLE[0])
     }
@@ -87,11 +92,25 @@ impl Function {
         (self.row().2, self.row().3)
     }
 
+    /// True if it can be called with so many arguments.
+    pub fn takes(self, count: usize) -> bool {
+        let (fewest, most) = self.arity();
+        (fewest..=most).contains(&count)
+    }
+
+    /// How many arguments it takes, in words: "one value", "two values", "two values or more".
+    pub fn arity_text(self) -> &'static str {
+        match self.arity() {
+            (1, 1) => "one value",
+            (2, 2) => "two values",
+            _ => "two values or more",
+        }
+    }
+
     /// The value for arguments in SI units, or `None` where it is undefined: outside the domain, with the wrong
     /// number of arguments, or where the result is not finite.
     pub fn evaluate(self, arguments: &[f64]) -> Option<f64> {
-        let (fewest, most) = self.arity();
-        if !(fewest..=most).contains(&arguments.len()) || arguments.iter().any(|x| x.is_nan()) {
+        if !self.takes(arguments.len()) || arguments.iter().any(|x| x.is_nan()) {
             return None;
         }
         let x = *arguments.first()?;
@@ -131,11 +150,10 @@ impl Function {
 /// # Errors
 /// Arguments of a kind the function does not take, or too few or too many of them.
 pub fn apply(function: Function, arguments: &[Type]) -> Result<Type, Refusal> {
-    let (fewest, most) = function.arity();
     let [first, rest @ ..] = arguments else {
         return Err(Refusal::Arguments { function, found: 0 });
     };
-    if !(fewest..=most).contains(&arguments.len()) {
+    if !function.takes(arguments.len()) {
         return Err(Refusal::Arguments { function, found: arguments.len() });
     }
     if first.scale == Scale::Level && !matches!(function, Function::Min | Function::Max) {

@@ -26,7 +26,9 @@ mod quantity;
 mod refusal;
 mod unit;
 
-pub use algebra::{add, compare, divide, multiply, negate, power, raise, rational, root, subtract, unify};
+pub use algebra::{
+    add, compare, difference_of, divide, multiply, negate, power, raise, rational, root, subtract, unify,
+};
 pub use angle::Angle;
 pub use closest::closest;
 pub use demand::{TurnWarning, demand};

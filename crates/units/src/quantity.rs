@@ -119,6 +119,8 @@ pub struct Type {
     pub(crate) zero: bool,
     /// A difference of two powers of one tag, which is what is left or what is lost.
     pub(crate) maybe_heat: bool,
+    /// Wanted behind the `±` of a temperature, where `°C` is a difference.
+    pub(crate) of_level: bool,
 }
 
 impl Type {
@@ -133,6 +135,7 @@ impl Type {
             literal: false,
             zero: false,
             maybe_heat: false,
+            of_level: false,
         }
     }
 

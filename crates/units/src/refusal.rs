@@ -174,7 +174,9 @@ impl Refusal {
             Refusal::WantsNumber { function, found } => {
                 format!("`{}` wants a plain number, this is {}", function.name(), found.describe())
             }
-            Refusal::Arguments { function, found } => arguments(*function, *found),
+            Refusal::Arguments { function, found } => {
+                format!("`{}` takes {}, not {found}", function.name(), function.arity_text())
+            }
             Refusal::WrongDimension { wanted, found } | Refusal::WrongKind { wanted, found } => {
                 format!("{} is wanted here, this is {}", wanted.with_article(), found.describe())
             }
@@ -228,16 +230,6 @@ fn level_scaled(operation: Operation) -> String {
         Operation::Add | Operation::Subtract | Operation::Compare | Operation::Unify => "used so".to_owned(),
     };
     format!("a temperature cannot be {verb}, for it is a level on a scale whose zero is a convention")
-}
-
-fn arguments(function: Function, found: usize) -> String {
-    let (fewest, most) = function.arity();
-    let wants = match (fewest, most) {
-        (1, 1) => "one value".to_owned(),
-        (a, b) if a == b => format!("{a} values"),
-        (a, _) => format!("at least {a} values"),
-    };
-    format!("`{}` takes {wants}, not {found}", function.name())
 }
 
 /// How many radians more the wanted kind counts than the value, if both say so.

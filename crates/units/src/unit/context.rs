@@ -19,7 +19,8 @@ const ACCELERATION: Dim = Dim::whole(1, 0, -2, 0, 0);
 ///
 /// - `min⁻¹` or `1/min` as the whole unit is a turn per minute where a rotational speed is wanted, else events
 ///   per minute.
-/// - `K` is a level where a temperature is wanted, else a difference.
+/// - `K` is a level where a temperature is wanted, else a difference. Where [`crate::difference_of`] a
+///   temperature is wanted, behind `±`, `°C` is a difference as well.
 /// - Everything else means what it always means; whether it fits is for [`crate::demand`] to say.
 ///
 /// # Errors
@@ -32,6 +33,9 @@ pub fn interpret_unit(unit: &Unit, wanted: &Type) -> Result<Unit, UnitError> {
     }
     if unit.ty.dim == KELVIN && wanted.scale == Scale::Level && unit.ty.scale == Scale::Ratio {
         return Ok(Unit { ty: Type { scale: Scale::Level, ..unit.ty }, ..unit.clone() });
+    }
+    if wanted.of_level && unit.ty.scale == Scale::Level {
+        return Ok(unit.as_difference());
     }
     if wanted.dim.minus(unit.ty.dim) == Some(ACCELERATION)
         && let Some(choices) = pound_as_force(unit)
@@ -119,7 +123,7 @@ fn one_replaced(level: &Level, role: Role) -> Option<String> {
     (one && replaced != level.text()).then_some(replaced)
 }
 
-/// Units that were perhaps meant where `unit` stands but another kind is wanted, with what each means:
+/// Units that were perhaps meant where a literal in `unit` stands but `wanted` is wanted, with what each means:
 /// `N·m` for `J` where a torque is wanted, `kgf·cm` for `kg·cm`, `rev/s` for `Hz`.
 ///
 /// The number stays as it is: these correct the unit, they do not convert it.
