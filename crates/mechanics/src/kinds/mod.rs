@@ -1,11 +1,22 @@
-//! Every kind of part: one file a kind, with its registry row and its model beside it.
+//! Every kind of part: one file a kind, with its registry row and its model beside it. A new kind is its file and
+//! one line in [`ROWS`].
 
+mod fields;
 pub mod loads;
+mod reading;
 pub mod sources;
+pub mod supplies;
 pub mod transmissions;
 
 use crate::registry::KindRow;
 
 /// Every kind, in the order of the reference.
-pub static ROWS: &[&KindRow] =
-    &[&sources::straight_line::ROW, &transmissions::gear::ROW, &loads::quadratic::ROW];
+pub static ROWS: &[&KindRow] = &[
+    &supplies::mains::ROW,
+    &supplies::battery::ROW,
+    &supplies::dc_bus::ROW,
+    &sources::straight_line::ROW,
+    &sources::straight_line_force::ROW,
+    &transmissions::gear::ROW,
+    &loads::quadratic::ROW,
+];

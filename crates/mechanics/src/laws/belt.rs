@@ -15,11 +15,11 @@ use crate::registry::Formula;
 
 /// Speed of the driven pulley.
 pub const OUTPUT_SPEED: Formula = Formula {
-    name: "output_speed",
+    name: "speed",
     text: "w_in * (1 - s) / i",
     symbols: &[
         ("w_in", "rotational_speed", "speed of the driving pulley"),
-        ("s", "number", "slip, creep included"),
+        ("s", "percentage", "slip, creep included"),
         ("i", "number", "pitch diameter of the driven over that of the driving pulley"),
     ],
     validity: "a belt inside its rating",
@@ -31,7 +31,7 @@ pub const OUTPUT_SPEED: Formula = Formula {
 pub const TOTAL_EFFICIENCY: Formula = Formula {
     name: "total_efficiency",
     text: "eta * (1 - s)",
-    symbols: &[("eta", "number", "efficiency without slip"), ("s", "number", "slip, creep included")],
+    symbols: &[("eta", "percentage", "efficiency without slip"), ("s", "number", "slip, creep included")],
     validity: "a belt inside its rating",
     source: "balance of power",
     revision: 1,

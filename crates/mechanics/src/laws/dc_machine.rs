@@ -45,10 +45,10 @@ pub const SPEED: Formula = Formula {
 /// Torque at a voltage and a speed, no limit in force.
 pub const TORQUE: Formula = Formula {
     name: "torque",
-    text: "k_T * (U - k_E * w) / (R + R_s) - T_0",
+    text: "k_T * (U_0 - k_E * w) / (R + R_s) - T_0",
     symbols: &[
         ("k_T", "torque_constant", "torque constant"),
-        ("U", "voltage", "open-circuit voltage of the supply"),
+        ("U_0", "voltage", "open-circuit voltage of the supply"),
         ("k_E", "voltage_constant", "voltage constant"),
         ("w", "rotational_speed", "speed"),
         ("R", "resistance", "resistance of the winding, warm, with brushes"),

@@ -16,7 +16,7 @@ use crate::registry::Formula;
 pub const VISCOUS: Formula = Formula {
     name: "torque",
     text: "b * w",
-    symbols: &[("b", "viscous_coefficient", "torque per speed"), ("w", "rotational_speed", "speed")],
+    symbols: &[("b", "viscous_torque_coefficient", "torque per speed"), ("w", "rotational_speed", "speed")],
     validity: "laminar friction, eddy-current brakes well below their peak",
     source: "definition",
     revision: 1,

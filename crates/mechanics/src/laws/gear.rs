@@ -16,8 +16,8 @@ pub const REDUCTION: Formula = Formula {
     name: "reduction",
     text: "z_2 / z_1",
     symbols: &[
-        ("z_2", "number", "teeth of the driven wheel"),
-        ("z_1", "number", "teeth of the driving wheel"),
+        ("z_2", "count", "teeth of the driven wheel"),
+        ("z_1", "count", "teeth of the driving wheel"),
     ],
     validity: "positive drive without slip",
     source: "definition, ISO 1122-1 (from memory)",
@@ -26,7 +26,7 @@ pub const REDUCTION: Formula = Formula {
 
 /// Speed behind the gear.
 pub const OUTPUT_SPEED: Formula = Formula {
-    name: "output_speed",
+    name: "speed",
     text: "w_in / i",
     symbols: &[("w_in", "rotational_speed", "speed of the input shaft"), ("i", "number", "reduction")],
     validity: "positive drive without slip",
@@ -36,11 +36,11 @@ pub const OUTPUT_SPEED: Formula = Formula {
 
 /// Torque behind the gear when the source drives.
 pub const OUTPUT_TORQUE: Formula = Formula {
-    name: "output_torque",
+    name: "torque",
     text: "i * eta * T_in",
     symbols: &[
         ("i", "number", "reduction"),
-        ("eta", "number", "efficiency, power flowing to the load"),
+        ("eta", "percentage", "efficiency, power flowing to the load"),
         ("T_in", "torque", "torque on the input shaft"),
     ],
     validity: "power flows to the load",
@@ -53,7 +53,7 @@ pub const INPUT_TORQUE_BACKWARD: Formula = Formula {
     name: "input_torque_backward",
     text: "eta_b * T_out / i",
     symbols: &[
-        ("eta_b", "number", "efficiency, power flowing back"),
+        ("eta_b", "percentage", "efficiency, power flowing back"),
         ("T_out", "torque", "torque of the load on the output shaft"),
         ("i", "number", "reduction"),
     ],

@@ -26,7 +26,7 @@ pub const UPHILL_FORCE: Formula = Formula {
     text: "m * (9.80665 m/s²) * (sin(a) + mu * cos(a))",
     symbols: &[
         ("m", "mass", "mass"),
-        ("a", "angle", "slope, uphill positive"),
+        ("a", "slope", "slope, uphill positive"),
         ("mu", "number", "coefficient of friction"),
     ],
     validity: "moving in the direction counted positive; friction opposes motion",

@@ -19,8 +19,8 @@ pub const TORQUE: Formula = Formula {
     text: "2 * T_b / (s / s_b + s_b / s)",
     symbols: &[
         ("T_b", "torque", "breakdown torque"),
-        ("s", "number", "slip"),
-        ("s_b", "number", "slip at breakdown"),
+        ("s", "percentage", "slip"),
+        ("s_b", "percentage", "slip at breakdown"),
     ],
     validity: "stator resistance left aside; near standstill the catalogue's ratios replace it",
     source: "M. Kloss, Archiv für Elektrotechnik 5 (1916) (from memory)",
@@ -32,7 +32,7 @@ pub const BREAKDOWN_SLIP: Formula = Formula {
     name: "breakdown_slip",
     text: "s_n * (k + sqrt(k^2 - 1))",
     symbols: &[
-        ("s_n", "number", "slip at the rated point"),
+        ("s_n", "percentage", "slip at the rated point"),
         ("k", "number", "breakdown torque over rated torque"),
     ],
     validity: "the rated point lies between no load and breakdown",

@@ -19,7 +19,7 @@ pub const LAYER_DIAMETER: Formula = Formula {
     text: "D + 2 * (n - 1) * d",
     symbols: &[
         ("D", "length", "pitch diameter of the first layer"),
-        ("n", "number", "layer, counted from the barrel"),
+        ("n", "count", "layer, counted from the barrel"),
         ("d", "length", "diameter of the rope"),
     ],
     validity: "layers stacked, not nested: the largest diameter the layer can have",
@@ -29,7 +29,7 @@ pub const LAYER_DIAMETER: Formula = Formula {
 
 /// Speed of the rope.
 pub const ROPE_SPEED: Formula = Formula {
-    name: "rope_speed",
+    name: "speed",
     text: "w * D / 2",
     symbols: &[
         ("w", "rotational_speed", "speed of the drum"),
@@ -42,10 +42,10 @@ pub const ROPE_SPEED: Formula = Formula {
 
 /// Pull of the rope.
 pub const ROPE_PULL: Formula = Formula {
-    name: "rope_pull",
+    name: "force",
     text: "2 * eta * T / D",
     symbols: &[
-        ("eta", "number", "efficiency, power flowing to the load"),
+        ("eta", "percentage", "efficiency, power flowing to the load"),
         ("T", "torque", "torque on the drum"),
         ("D", "length", "pitch diameter of the layer"),
     ],
@@ -56,11 +56,11 @@ pub const ROPE_PULL: Formula = Formula {
 
 /// Force at the hook.
 pub const HOOK_FORCE: Formula = Formula {
-    name: "hook_force",
+    name: "force",
     text: "n * eta * F",
     symbols: &[
-        ("n", "number", "falls that carry the load"),
-        ("eta", "number", "efficiency, power flowing to the load"),
+        ("n", "count", "falls that carry the load"),
+        ("eta", "percentage", "efficiency, power flowing to the load"),
         ("F", "force", "pull of the rope"),
     ],
     validity: "power flows to the load; falls as good as parallel",

@@ -1,8 +1,8 @@
 //! Synchronous speed, slip and the torque on a name plate.
 //!
-//! Formula: `w_s = 4 * pi * f / p`, `s = (w_s - w) / w_s`, `T = P / w`.
+//! Formula: `w_s = 4 * pi * f / p`, `s = (w_s - w) / w_s`, `T_n = P_n / w_n`.
 //! Symbols: f supply frequency [Hz]; p number of poles [-]; w_s synchronous speed [rad/s]; w shaft speed [rad/s];
-//! s slip [-]; P shaft power [W]; T torque [N·m].
+//! s slip [-]; P_n rated power at the shaft [W], w_n rated speed [rad/s], T_n rated torque [N·m].
 //! Validity: three-phase machines; the rated speed of an induction motor lies below the synchronous speed.
 //! Source: definitions, IEC 60034-1 and IEC 60050-411 (from memory).
 //! Revision: 1
@@ -15,7 +15,7 @@ use core::f64::consts::PI;
 pub const SYNCHRONOUS_SPEED: Formula = Formula {
     name: "synchronous_speed",
     text: "4 * pi * f / p",
-    symbols: &[("f", "frequency", "supply frequency"), ("p", "number", "number of poles, an even number")],
+    symbols: &[("f", "frequency", "supply frequency"), ("p", "count", "number of poles, an even number")],
     validity: "three-phase machines",
     source: "definition, IEC 60050-411 (from memory)",
     revision: 1,
@@ -37,10 +37,10 @@ pub const SLIP: Formula = Formula {
 /// Torque at the rated point.
 pub const RATED_TORQUE: Formula = Formula {
     name: "rated_torque",
-    text: "P / w",
+    text: "P_n / w_n",
     symbols: &[
-        ("P", "mechanical_power", "rated power, at the shaft"),
-        ("w", "rotational_speed", "rated speed"),
+        ("P_n", "mechanical_power", "rated power, at the shaft"),
+        ("w_n", "rotational_speed", "rated speed"),
     ],
     validity: "the power on a motor's name plate is mechanical",
     source: "definition of power; name plates as IEC 60034-1 (from memory)",

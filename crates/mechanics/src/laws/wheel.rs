@@ -15,7 +15,7 @@ use core::f64::consts::PI;
 
 /// Speed over ground.
 pub const ROLLING_SPEED: Formula = Formula {
-    name: "rolling_speed",
+    name: "speed",
     text: "w * C / (2 * pi)",
     symbols: &[("w", "rotational_speed", "speed of the wheel"), ("C", "length", "rolling circumference")],
     validity: "no slip; circumference under load, shorter than that of the free wheel",
@@ -29,7 +29,7 @@ pub const GRIP_FORCE: Formula = Formula {
     text: "mu * c * m * (9.80665 m/s²) * cos(atan(G))",
     symbols: &[
         ("mu", "number", "grip, friction between tyre and ground"),
-        ("c", "number", "share of the weight on the driven wheels"),
+        ("c", "percentage", "share of the weight on the driven wheels"),
         ("m", "mass", "mass of the vehicle"),
         ("G", "grade", "grade, rise per run"),
     ],

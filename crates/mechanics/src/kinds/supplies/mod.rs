@@ -1,0 +1,5 @@
+//! What feeds sources.
+
+pub mod battery;
+pub mod dc_bus;
+pub mod mains;
