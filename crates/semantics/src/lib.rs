@@ -1,10 +1,77 @@
 //! From the tree of a spec to its analysis: names, kinds, cases, drives, verdicts, findings.
 //!
-//! One pure function stands in the middle, [`analyze`]: the same texts give the same analysis, to the bit.
+//! One pure function stands in the middle, [`analyze`]: the same texts give the same analysis, to the bit. Each stage
+//! is total: it runs on what survived the stage before, and what it finds wrong it reports once, at its root.
+//!
+//! ```text
+//! texts -> load -> defs -> cases -> eval (values, fields, drives) -> criteria -> findings -> allow -> Analysis
+//! ```
 
 pub mod analysis;
 pub mod files;
 pub mod quantity;
+pub mod say;
+
+mod allow;
+mod cases;
+mod criteria;
+mod defs;
+mod drives;
+mod eval;
+mod faults;
+mod fields;
+mod findings;
+mod load;
+mod record;
+mod sink;
+mod world;
+
+use std::sync::Arc;
 
 pub use analysis::Analysis;
-pub use files::{Files, ReadError};
+pub use files::{Files, MemoryFiles, NoFiles, ReadError};
+pub use layshaft_syntax::Memo;
+
+use eval::Shared;
+
+/// Analyzes the spec `path` with the text `text`; `files` hands out what it uses.
+///
+/// `path` is relative to the root that `files` reads from, `/` between names.
+#[must_use]
+pub fn analyze(path: &str, text: Arc<str>, files: &dyn Files) -> Analysis {
+    analyze_with(path, text, files, &mut Memo::default())
+}
+
+/// The same, item trees kept from an earlier state of the texts. The answer is that of [`analyze`], to the bit.
+#[must_use]
+pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Analysis {
+    let sink = sink::Sink::default();
+    let world = load::load(path, text, files, memo, &sink);
+    let parts = defs::parts(&world, &sink);
+    let drives = drives::drives(&world, &sink);
+    let tables = fields::Tables::default();
+    let solver = drives::Solver::default();
+    let shared = Shared {
+        world: &world,
+        parts: &parts,
+        drives: &drives,
+        files,
+        tables: &tables,
+        solver: &solver,
+        sink: &sink,
+    };
+    let mut analysis = Analysis::default();
+    record::identity(shared, &mut analysis);
+    let states = cases::states(shared);
+    record::check_everything(&states);
+    let mut extra = Vec::new();
+    analysis.criteria = criteria::judge(shared, &states, &mut extra);
+    analysis.shows = criteria::shows(shared, &states, &mut extra);
+    let all: Vec<&cases::State<'_>> = states.iter().chain(&extra).collect();
+    findings::report(shared, &all);
+    record::record(shared, &all, &mut analysis);
+    let found = sink.finish();
+    allow::accept(shared, found, &mut analysis);
+    analysis.files.clone_from(&world.files);
+    analysis
+}

@@ -1,0 +1,185 @@
+//! From the entries of a part to the values its law is built from.
+
+mod shape;
+mod table;
+
+use std::collections::BTreeMap;
+
+use layshaft_diagnostics::{Code, Diagnostic};
+use layshaft_mechanics::registry::{self, Field, Need, Shape};
+use layshaft_mechanics::values::{FieldValue, Values};
+
+use crate::defs::{PartDef, SlotName, required};
+use crate::eval::Eval;
+use crate::quantity::{Datum, Quantity};
+use crate::world::ItemRef;
+
+pub(crate) use shape::read;
+pub(crate) use table::Tables;
+
+/// A field as read: for the law, for a reader, and the part it names.
+#[derive(Clone, Debug)]
+pub(crate) struct FieldRead {
+    pub value: FieldValue,
+    pub datum: Option<Datum>,
+    pub link: Option<ItemRef>,
+}
+
+/// A part's values in one state.
+#[derive(Debug, Default)]
+pub(crate) struct Built {
+    pub values: Values,
+    /// Fields that name other parts.
+    pub links: BTreeMap<&'static str, ItemRef>,
+    /// Results known from the fields alone.
+    pub given: Vec<(&'static str, Datum)>,
+    /// Defaults the registry put in.
+    pub defaults: Vec<&'static Field>,
+    /// Whether the law accepts the values.
+    pub sound: bool,
+    pub on: bool,
+}
+
+impl Built {
+    pub fn given_result(&self, name: &str) -> Option<Datum> {
+        self.given.iter().find(|(known, _)| *known == name).map(|(_, datum)| datum.clone())
+    }
+}
+
+/// A default of the registry as a value.
+pub(crate) fn of_default(field: &Field, si: f64) -> Option<Datum> {
+    match field.shape {
+        Shape::Quantity(kind) | Shape::OfRated(kind) => quantity(si, kind),
+        Shape::Flag => Some(Datum::Flag(si != 0.0)),
+        Shape::Choice(words) => words.get(si as usize).map(|(word, _)| Datum::Word((*word).into())),
+        _ => None,
+    }
+}
+
+/// An SI value of a kind.
+pub(crate) fn quantity(si: f64, kind: &str) -> Option<Datum> {
+    let kind = layshaft_units::kind(kind)?;
+    let unit = Some(kind.unit).filter(|unit| !unit.is_empty()).map(Into::into);
+    Some(Datum::Quantity(Quantity { si, ty: kind.ty(), limits: None, confidence: None, unit }))
+}
+
+fn default_value(field: &Field, si: f64) -> Option<FieldValue> {
+    match field.shape {
+        Shape::Quantity(_) | Shape::OfRated(_) => Some(FieldValue::Si(si)),
+        Shape::Flag => Some(FieldValue::Flag(si != 0.0)),
+        Shape::Choice(words) => words.get(si as usize).map(|(word, _)| FieldValue::Word(word)),
+        _ => None,
+    }
+}
+
+/// Reads every field of a part and tries its law on them.
+pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
+    let part = eval.shared.parts.get(&at)?;
+    let row = part.row?;
+    let mut built = Built { on: true, ..Built::default() };
+    let mut whole = !part.broken;
+    let mut gears = Vec::new();
+    for (slot, given) in eval.all_given(at) {
+        let Some(field) = part.field(&slot.0) else { continue };
+        let Some(read) = eval.read(at, &slot) else {
+            whole = false;
+            continue;
+        };
+        if let (Shape::Gears, Some(name), FieldValue::Si(reduction)) = (field.shape, &slot.1, &read.value) {
+            gears.push((given.entry.span, name.to_string(), *reduction));
+            continue;
+        }
+        if let Some(link) = read.link {
+            built.links.insert(field.name, link);
+        }
+        if field.name == "on" && read.value == FieldValue::Flag(false) {
+            built.on = false;
+        }
+        built.values.set(field.name, read.value.clone());
+    }
+    if !gears.is_empty() {
+        // In the order of the text, as a driver would name them.
+        gears.sort_by_key(|(span, ..)| *span);
+        let gears = gears.into_iter().map(|(_, name, reduction)| (name, reduction)).collect();
+        built.values.set("gear", FieldValue::Gears(gears));
+    }
+    if whole && !report_missing(eval, part, &built.values) {
+        whole = false;
+    }
+    put_defaults(part, &mut built);
+    if whole {
+        try_law(eval, part, &mut built);
+    }
+    let found = (row.given)(&built.values);
+    built.given = found
+        .into_iter()
+        .filter(|(_, si)| si.is_finite())
+        .filter_map(|(name, si)| {
+            let result = row.results.iter().find(|result| result.name == name)?;
+            let registry::ResultShape::Quantity(kind) = result.shape else { return None };
+            Some((name, quantity(si, kind)?))
+        })
+        .collect();
+    Some(built)
+}
+
+fn put_defaults(part: &PartDef<'_>, built: &mut Built) {
+    let Some(row) = part.row else { return };
+    for field in row.fields.iter().chain(registry::common_fields(part.role)) {
+        if let Need::Default { si, .. } = field.need
+            && built.values.get(field.name).is_none()
+            && let Some(value) = default_value(field, si)
+        {
+            built.values.set(field.name, value);
+            built.defaults.push(field);
+        }
+    }
+}
+
+/// One message for all required fields that are not given. Whether none is missing.
+fn report_missing(eval: &Eval<'_>, part: &PartDef<'_>, values: &Values) -> bool {
+    let Some(row) = part.row else { return false };
+    let missing: Vec<&Field> =
+        row.fields.iter().filter(|field| required(field) && values.get(field.name).is_none()).collect();
+    if missing.is_empty() {
+        return true;
+    }
+    let names: Vec<_> = missing.iter().map(|field| format!("`{}`", field.name)).collect();
+    let message = format!("`{}` needs {}", part.name.text, names.join(", "));
+    let lines: Vec<_> = missing
+        .iter()
+        .map(|field| format!("{} = {}  # {}", field.name, shape::sample(field), field.meaning))
+        .collect();
+    eval.report(
+        Diagnostic::new(Code::MissingField, eval.place(part.at, part.name.span), message)
+            .help(format!("add {}", lines.join("\n"))),
+    );
+    false
+}
+
+/// Builds the law's model once, so that what several fields say together is checked where they stand.
+fn try_law(eval: &Eval<'_>, part: &PartDef<'_>, built: &mut Built) {
+    let Some(row) = part.row else { return };
+    match (row.build)(&built.values) {
+        Ok(_) => built.sound = true,
+        Err(faults) => {
+            for fault in faults {
+                crate::faults::report(eval, part.at, &fault);
+            }
+        }
+    }
+}
+
+/// A field as a single value; tables and the like have none.
+pub(crate) fn rated_value(eval: &Eval<'_>, at: ItemRef, slot: &SlotName) -> Option<Datum> {
+    let part = eval.shared.parts.get(&at)?;
+    let Shape::OfRated(kind) = part.field(&slot.0)?.shape else { return None };
+    let built = eval.built(at)?;
+    let FieldValue::OfRated(times) = built.values.get(&slot.0)? else { return None };
+    let ty = layshaft_units::kind(kind)?.ty();
+    let rated = built.given.iter().find_map(|(name, datum)| match datum {
+        Datum::Quantity(found) if name.starts_with("rated_") && found.ty == ty => Some(found.si),
+        _ => None,
+    })?;
+    quantity(times * rated, kind)
+}
