@@ -5,10 +5,13 @@
 
 use layshaft_syntax::{Token, TokenKind as K, lex};
 
-/// The terminals of a spec, each with its place in the text.
-pub fn sentence(text: &str) -> Vec<(String, usize)> {
+/// A token as a terminal: what it may be, the first that fits is meant, and its place in the text.
+pub type Terminal = (Vec<String>, usize);
+
+/// The terminals of a spec.
+pub fn sentence(text: &str) -> Vec<Terminal> {
     let tokens = lex(text).tokens;
-    let mut out: Vec<(String, usize)> = Vec::new();
+    let mut out: Vec<Terminal> = Vec::new();
     let mut open: Vec<K> = Vec::new();
     let mut rows_ahead = false;
     let mut at = 0;
@@ -24,21 +27,40 @@ pub fn sentence(text: &str) -> Vec<(String, usize)> {
             K::RightParen | K::RightSquare | K::RightBrace => drop(open.pop()),
             K::Points => rows_ahead = next == Some(K::LeftParen),
             K::Minus if in_rows && tokens.get(at).is_some_and(|next| is_signed(token, next)) => {
-                out.push(("NEGATIVE".into(), token.span.start as usize));
+                out.push((vec!["NEGATIVE".into()], token.span.start as usize));
                 at += 1;
                 continue;
             }
             _ => {}
         }
-        out.push((terminal(token.kind), token.span.start as usize));
+        let word = &text[token.span.start as usize..token.span.end as usize];
+        let number = matches!(next, Some(K::Number | K::SignedNumber));
+        let special = match word {
+            "reduction" | "increase" if number || next == Some(K::Name) => Some("RATIO"),
+            "teeth" if number || next == Some(K::Name) => Some("TEETH"),
+            _ if is_duty(word) && (number || next.is_none_or(ends_value)) => Some("DUTY"),
+            _ => None,
+        };
+        let terminals = special.into_iter().map(String::from).chain([terminal(token.kind)]).collect();
+        out.push((terminals, token.span.start as usize));
         if token.kind == K::Allow {
-            out.push(("CODE".into(), token.span.end as usize));
+            out.push((vec!["CODE".into()], token.span.end as usize));
             while tokens.get(at).is_some_and(|part| part.kind != K::Because) {
                 at += 1;
             }
         }
     }
     out
+}
+
+fn is_duty(word: &str) -> bool {
+    word.strip_prefix('S').and_then(|digits| digits.parse::<u8>().ok()).is_some_and(|type_| (1..=10).contains(&type_))
+}
+
+/// What can stand behind a whole value.
+fn ends_value(next: K) -> bool {
+    matches!(next, K::Newline | K::Semicolon | K::RightBrace | K::RightSquare | K::Comma)
+        || matches!(next, K::From | K::Measured | K::Assumed)
 }
 
 /// In a row, a minus that stands tight before a number is its sign.
