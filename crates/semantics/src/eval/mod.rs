@@ -1,5 +1,6 @@
 //! Values of one state of the spec: the plain one, or a case with its overrides laid over it.
 
+mod compare;
 mod expr;
 mod literal;
 mod path;
@@ -22,7 +23,8 @@ use crate::quantity::{Datum, Quantity};
 use crate::sink::Sink;
 use crate::world::{ItemRef, World};
 
-pub(crate) use expr::{compare_words, is_literal};
+pub(crate) use compare::compare_words;
+pub(crate) use expr::is_literal;
 pub(crate) use path::Station;
 
 /// A place that a case can override.

@@ -21,7 +21,6 @@ pub(crate) fn is_constant(name: &str) -> bool {
 
 /// A path into a drive, its parts resolved.
 pub(crate) struct Station {
-    pub drive: ItemRef,
     /// The part's item; none for the drive itself.
     pub part: Option<ItemRef>,
     pub port: Option<Port>,
@@ -268,7 +267,7 @@ impl Eval<'_> {
             }
         };
         if known.iter().any(|row| row.name == &*result.text) {
-            return Some(Station { drive, part, port, result: result.text.clone() });
+            return Some(Station { part, port, result: result.text.clone() });
         }
         let place = self.place(at, result.span);
         let whose = match part {

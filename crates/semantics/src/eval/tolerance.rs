@@ -3,8 +3,6 @@
 use layshaft_diagnostics::{Code, Diagnostic};
 use layshaft_syntax::{Expr, ExprKind, ToleranceForm};
 
-use layshaft_units::{Scale, Type};
-
 use super::expr::is_literal;
 use super::{Eval, Reading};
 use crate::quantity::Quantity;
@@ -50,8 +48,7 @@ impl Eval<'_> {
 
     /// The tolerance of a value, in its kind; of a level it is a difference.
     fn difference(&self, tolerance: &Expr, of: &Quantity, reading: Reading<'_>) -> Option<Quantity> {
-        // The difference of two levels is no level.
-        let wanted = Type { scale: Scale::Ratio, ..of.ty };
+        let wanted = layshaft_units::difference_of(&of.ty);
         let t = self.quantity(tolerance, reading.wanting(Some(&wanted)))?;
         if let Err(refusal) = layshaft_units::unify(&wanted, &t.ty) {
             let place = self.place(reading.at, tolerance.span);

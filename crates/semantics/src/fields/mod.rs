@@ -1,5 +1,6 @@
 //! From the entries of a part to the values its law is built from.
 
+mod csv_file;
 mod shape;
 mod table;
 

@@ -1,0 +1,98 @@
+//! What a comparison found, and how far it lies from its limits.
+
+use layshaft_diagnostics::Span;
+use layshaft_syntax::{CompareOp, Expr, ExprKind};
+use layshaft_units::Scale;
+
+use super::Judged;
+use crate::analysis::Measure;
+use crate::eval::{Eval, Reading};
+use crate::quantity::{Datum, Quantity};
+
+/// `x <= limit`, `low <= x <= high`: the value found and its distance to the limits.
+pub(super) fn comparison(
+    eval: &Eval<'_>,
+    first: &Expr,
+    rest: &[(CompareOp, Span, Expr)],
+    whole: &Expr,
+    reading: Reading<'_>,
+) -> Judged {
+    let Some(holds) = eval.flag(whole, reading) else { return Judged::default() };
+    let flagged = Judged { holds: Some(holds), measure: None };
+    let mut limits = Vec::new();
+    let found = match rest {
+        [(op, _, second)] => {
+            let Some((a, b)) = sides(eval, first, second, reading) else { return flagged };
+            // What is asked for is the side that a result or a value gives; a literal is the limit.
+            let limit_first = crate::eval::is_literal(first) || (has_result(second) && !has_result(first));
+            let (found, limit, op) = if limit_first { (b, a, mirrored(*op)) } else { (a, b, *op) };
+            limits.push((op, limit));
+            found
+        }
+        [(op, _, second), (other, _, third)] => {
+            let Some((a, b)) = sides(eval, first, second, reading) else { return flagged };
+            let Some((_, c)) = sides(eval, second, third, reading) else { return flagged };
+            limits.push((mirrored(*op), a));
+            limits.push((*other, c));
+            b
+        }
+        _ => return flagged,
+    };
+    Judged { holds: Some(holds), measure: measure(found, limits) }
+}
+
+fn sides(eval: &Eval<'_>, left: &Expr, right: &Expr, reading: Reading<'_>) -> Option<(Quantity, Quantity)> {
+    if crate::eval::compare_words(eval, left, right, reading) != Some(None) {
+        return None;
+    }
+    eval.operands(left, right, reading)
+}
+
+/// Whether an expression names a field or result.
+fn has_result(expr: &Expr) -> bool {
+    match &expr.kind {
+        ExprKind::Path(path) => path.names.len() > 1,
+        ExprKind::Paren(inner) | ExprKind::Unary { arg: inner, .. } => has_result(inner),
+        ExprKind::Binary { left, right, .. } => has_result(left) || has_result(right),
+        ExprKind::Power { base, .. } => has_result(base),
+        ExprKind::Call { args, .. } => args.iter().any(has_result),
+        ExprKind::If { then, otherwise, .. } => has_result(then) || has_result(otherwise),
+        _ => false,
+    }
+}
+
+fn mirrored(op: CompareOp) -> CompareOp {
+    match op {
+        CompareOp::Less => CompareOp::Greater,
+        CompareOp::LessEqual => CompareOp::GreaterEqual,
+        CompareOp::Greater => CompareOp::Less,
+        CompareOp::GreaterEqual => CompareOp::LessEqual,
+        same => same,
+    }
+}
+
+fn measure(found: Quantity, limits: Vec<(CompareOp, Quantity)>) -> Option<Measure> {
+    let mut low = None;
+    let mut high = None;
+    let mut smallest: Option<(f64, bool)> = None;
+    for (op, limit) in limits {
+        let upper = match op {
+            CompareOp::Less | CompareOp::LessEqual => true,
+            CompareOp::Greater | CompareOp::GreaterEqual => false,
+            CompareOp::Equal | CompareOp::NotEqual => return None,
+        };
+        let difference = if upper { limit.si - found.si } else { found.si - limit.si };
+        let absolute = limit.si == 0.0 || limit.ty.scale == Scale::Level;
+        let margin = if absolute { difference } else { difference / limit.si.abs() };
+        if smallest.is_none_or(|(known, _)| margin < known) {
+            smallest = Some((margin, absolute));
+        }
+        *(if upper { &mut high } else { &mut low }) = Some(Datum::Quantity(limit));
+    }
+    let (margin, absolute) = smallest?;
+    // Beyond every limit there is no number to show; the remark says so.
+    if !margin.is_finite() {
+        return None;
+    }
+    Some(Measure { found: Datum::Quantity(found), low, high, margin, absolute })
+}

@@ -1,0 +1,169 @@
+//! Curves in CSV files.
+
+use std::rc::Rc;
+
+use layshaft_diagnostics::{Code, Diagnostic, FileSpan};
+use layshaft_mechanics::values::Table;
+use layshaft_syntax::Csv;
+
+use super::table::{Heads, MOST_ROWS, Reader, Rows, to_si};
+
+impl Reader<'_, '_> {
+    pub(super) fn csv(&self, csv: &Csv) -> Option<Table> {
+        let place = self.span(csv.path.span);
+        let from = &self.eval.shared.world.files[self.at.file as usize].path;
+        let path = match crate::load::beside(from, &csv.path.value) {
+            Ok(path) => path,
+            Err(why) => {
+                self.eval.report(Diagnostic::new(Code::MissingFile, place, why));
+                return None;
+            }
+        };
+        let rows = self.rows(&path, place)?;
+        let rows = match &*rows {
+            Ok(rows) => rows,
+            Err((line, why)) => {
+                let row = line.map(|line| format!(", line {line}")).unwrap_or_default();
+                self.eval.report(self.refuse(place, format!("`{path}`{row}: {why}")));
+                return None;
+            }
+        };
+        let (heads, from) = self.csv_heads(csv, rows, &path, place)?;
+        let mut table = self.empty(&heads, &csv.at)?;
+        let mut places = Vec::new();
+        for (line, row) in rows.iter().enumerate().skip(1) {
+            if row.iter().all(|cell| cell.trim().is_empty()) {
+                continue;
+            }
+            let named = format!("`{path}`, line {}", line + 1);
+            for (index, head) in heads.iter().enumerate() {
+                let cell = row.get(from[index]).map_or("", |cell| cell.trim());
+                let value = self.cell(cell, &named, head.0.name, place)?;
+                table.columns[index].1.push(to_si(head, value));
+            }
+            places.push((place, named));
+        }
+        self.sorted(table, &places)
+    }
+
+    fn cell(&self, cell: &str, named: &str, column: &str, place: FileSpan) -> Option<f64> {
+        let wrong = match cell.parse::<f64>() {
+            Ok(value) if value.is_finite() => return Some(value),
+            _ if cell.is_empty() => format!("{named}: the cell of `{column}` is empty"),
+            _ if cell.contains(',') => {
+                format!("{named}: `{}` has a comma; the decimal sign is the point", clipped(cell))
+            }
+            _ => format!("{named}: `{}` is not a number", clipped(cell)),
+        };
+        self.eval.report(self.refuse(place, wrong).help("mend the file, or leave the row out of it"));
+        None
+    }
+
+    /// The rows of a file, read once.
+    fn rows(&self, path: &str, place: FileSpan) -> Option<Rows> {
+        if let Some(rows) = self.eval.shared.tables.rows.borrow().get(path) {
+            return Some(Rc::clone(rows));
+        }
+        let text = match self.eval.shared.files.read(path) {
+            Ok(text) => text,
+            Err(why) => {
+                self.eval.report(crate::load::unreadable(place, path, &why));
+                return None;
+            }
+        };
+        let rows = Rc::new(parse_csv(&text));
+        self.eval.shared.tables.rows.borrow_mut().insert(path.to_owned(), Rc::clone(&rows));
+        Some(rows)
+    }
+
+    /// The columns wanted and where each stands in the file.
+    fn csv_heads(
+        &self,
+        csv: &Csv,
+        rows: &[Vec<String>],
+        path: &str,
+        place: FileSpan,
+    ) -> Option<(Heads, Vec<usize>)> {
+        let Some(first) = rows.first() else {
+            self.eval.report(self.refuse(place, format!("`{path}` is empty")));
+            return None;
+        };
+        if csv.columns.is_empty() {
+            let wanted: Vec<_> = self
+                .columns
+                .iter()
+                .filter(|row| !row.optional)
+                .map(|row| {
+                    let unit = layshaft_units::kind(row.kind).map_or("", |kind| kind.unit);
+                    format!("heading as {} [{unit}]", row.name)
+                })
+                .collect();
+            let message = "say which column of the file is what, and in which unit".to_owned();
+            self.eval.report(
+                self.refuse(place, message).help(format!("write `csv \"{path}\" ({})`", wanted.join(", "))),
+            );
+            return None;
+        }
+        let heads = self.heads(&csv.columns)?;
+        let mut from = Vec::new();
+        for column in &csv.columns {
+            let (heading, span) = match &column.heading {
+                Some(heading) => (&*heading.value, heading.span),
+                None => (&*column.name.text, column.name.span),
+            };
+            let at: Vec<usize> = (0..first.len()).filter(|index| first[*index].trim() == heading).collect();
+            let place = self.span(span);
+            match at[..] {
+                [index] => from.push(index),
+                [] => {
+                    let names: Vec<_> = first.iter().map(|name| clipped(name.trim())).collect();
+                    let message = format!("`{path}` has no column headed `{heading}`");
+                    self.eval.report(
+                        self.refuse(place, message).help(format!("its headings: {}", names.join(", "))),
+                    );
+                    return None;
+                }
+                _ => {
+                    let message = format!("`{path}` has several columns headed `{heading}`");
+                    self.eval.report(self.refuse(place, message));
+                    return None;
+                }
+            }
+        }
+        Some((heads, from))
+    }
+}
+
+/// A cell short enough for a message, its control characters taken out.
+fn clipped(cell: &str) -> String {
+    let clean: String = cell.chars().filter(|c| !c.is_control()).take(40).collect();
+    if clean.len() < cell.len() { format!("{clean}…") } else { clean }
+}
+
+/// The separator is the one the first line has most of: comma, semicolon or tab.
+fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, (Option<usize>, String)> {
+    let text = text.strip_prefix('\u{feff}').unwrap_or(text);
+    let first = text.lines().next().unwrap_or("");
+    let count = |mark: char| first.matches(mark).count();
+    let delimiter = [',', ';', '\t'].into_iter().max_by_key(|mark| count(*mark)).unwrap_or(',');
+    let mut reader = csv::ReaderBuilder::new()
+        .has_headers(false)
+        .flexible(true)
+        .delimiter(delimiter as u8)
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes());
+    let mut rows = Vec::new();
+    for record in reader.records() {
+        if rows.len() > MOST_ROWS {
+            return Err((None, format!("more than {MOST_ROWS} rows")));
+        }
+        match record {
+            Ok(record) => rows.push(record.iter().map(str::to_owned).collect()),
+            Err(error) => {
+                let line = error.position().map(|position| position.line() as usize);
+                return Err((line, "the row cannot be read as comma-separated values".to_owned()));
+            }
+        }
+    }
+    Ok(rows)
+}
