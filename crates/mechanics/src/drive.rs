@@ -4,7 +4,7 @@ use crate::registry::KindRow;
 use crate::values::{Duty, Values};
 
 /// A drive to be solved.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct DriveSpec {
     /// Every part that takes part, supplies included.
     pub parts: Vec<PartSpec>,
@@ -15,7 +15,7 @@ pub struct DriveSpec {
 }
 
 /// A part of a drive.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct PartSpec {
     /// Its name in the spec, for messages.
     pub name: String,
@@ -54,7 +54,7 @@ pub enum Direction {
 }
 
 /// The settings of a drive.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Settings {
     /// Which way.
     pub direction: Direction,

@@ -44,6 +44,13 @@ pub struct KindRow {
     pub given: fn(&Values) -> Vec<(&'static str, f64)>,
 }
 
+impl PartialEq for KindRow {
+    /// Rows are told apart by their place in the registry; no two are alike.
+    fn eq(&self, other: &Self) -> bool {
+        self.role == other.role && self.name == other.name
+    }
+}
+
 /// One field of a kind.
 #[derive(Debug)]
 pub struct Field {
