@@ -25,7 +25,11 @@ pub(crate) fn contradiction(
 }
 
 /// A value the law cannot take.
-pub(crate) fn bad_value(field: &'static str, template: &'static str, quantities: &[(f64, &'static str)]) -> Fault {
+pub(crate) fn bad_value(
+    field: &'static str,
+    template: &'static str,
+    quantities: &[(f64, &'static str)],
+) -> Fault {
     let why = Note { template, quantities: quantities.to_vec() };
     Fault { part: None, kind: FaultKind::Value { field, why } }
 }
@@ -71,7 +75,11 @@ pub(crate) fn only_one(
 }
 
 /// What happens when the load drives: `braking` of the source and `accepts_return` of its supply.
-pub(crate) fn braking(word: Option<&'static str>, feed: &Feed, hold: impl FnOnce() -> Box<dyn Curve>) -> Braking {
+pub(crate) fn braking(
+    word: Option<&'static str>,
+    feed: &Feed,
+    hold: impl FnOnce() -> Box<dyn Curve>,
+) -> Braking {
     match word {
         None => Braking::Unknown("braking"),
         Some(INTO_RESISTOR) => Braking::Can(hold()),

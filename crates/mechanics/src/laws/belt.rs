@@ -14,7 +14,7 @@ use super::Checked;
 use crate::registry::Formula;
 
 /// Speed of the driven pulley.
-pub const OUTPUT_SPEED: Formula = Formula {
+pub const SPEED: Formula = Formula {
     name: "speed",
     text: "w_in * (1 - s) / i",
     symbols: &[
@@ -40,7 +40,7 @@ pub const TOTAL_EFFICIENCY: Formula = Formula {
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
     Checked {
-        formula: &OUTPUT_SPEED,
+        formula: &SPEED,
         domain: &[(-400.0, 400.0), (0.0, 0.1), (0.1, 10.0)],
         kernel: |x| x[0] / speed_ratio(x[2], x[1]),
     },

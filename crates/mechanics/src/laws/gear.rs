@@ -15,17 +15,14 @@ use crate::registry::Formula;
 pub const REDUCTION: Formula = Formula {
     name: "reduction",
     text: "z_2 / z_1",
-    symbols: &[
-        ("z_2", "count", "teeth of the driven wheel"),
-        ("z_1", "count", "teeth of the driving wheel"),
-    ],
+    symbols: &[("z_2", "count", "teeth of the driven wheel"), ("z_1", "count", "teeth of the driving wheel")],
     validity: "positive drive without slip",
     source: "definition, ISO 1122-1 (from memory)",
     revision: 1,
 };
 
 /// Speed behind the gear.
-pub const OUTPUT_SPEED: Formula = Formula {
+pub const SPEED: Formula = Formula {
     name: "speed",
     text: "w_in / i",
     symbols: &[("w_in", "rotational_speed", "speed of the input shaft"), ("i", "number", "reduction")],
@@ -35,7 +32,7 @@ pub const OUTPUT_SPEED: Formula = Formula {
 };
 
 /// Torque behind the gear when the source drives.
-pub const OUTPUT_TORQUE: Formula = Formula {
+pub const TORQUE: Formula = Formula {
     name: "torque",
     text: "i * eta * T_in",
     symbols: &[
@@ -49,7 +46,7 @@ pub const OUTPUT_TORQUE: Formula = Formula {
 };
 
 /// Torque that reaches the source's side when the load drives.
-pub const INPUT_TORQUE_BACKWARD: Formula = Formula {
+pub const TORQUE_BACKWARD: Formula = Formula {
     name: "input_torque_backward",
     text: "eta_b * T_out / i",
     symbols: &[
@@ -65,14 +62,14 @@ pub const INPUT_TORQUE_BACKWARD: Formula = Formula {
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
     Checked { formula: &REDUCTION, domain: &[(5.0, 200.0), (5.0, 200.0)], kernel: |x| reduction(x[1], x[0]) },
-    Checked { formula: &OUTPUT_SPEED, domain: &[(-400.0, 400.0), (0.1, 100.0)], kernel: |x| x[0] / x[1] },
+    Checked { formula: &SPEED, domain: &[(-400.0, 400.0), (0.1, 100.0)], kernel: |x| x[0] / x[1] },
     Checked {
-        formula: &OUTPUT_TORQUE,
+        formula: &TORQUE,
         domain: &[(0.1, 100.0), (0.2, 1.0), (0.0, 1e3)],
         kernel: |x| torque_forward(x[2], x[0], x[1]),
     },
     Checked {
-        formula: &INPUT_TORQUE_BACKWARD,
+        formula: &TORQUE_BACKWARD,
         domain: &[(0.1, 1.0), (0.0, 1e5), (0.1, 100.0)],
         kernel: |x| torque_backward(x[1], x[2], x[0]),
     },

@@ -67,7 +67,6 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
     laws.into_iter().flatten()
 }
 
-
 #[cfg(test)]
 mod tests {
     use super::{Checked, checked};

@@ -18,10 +18,7 @@ use crate::scalar::Real;
 pub const TORQUE: Formula = Formula {
     name: "torque",
     text: "P / w",
-    symbols: &[
-        ("P", "mechanical_power", "sustained power"),
-        ("w", "rotational_speed", "speed of the crank"),
-    ],
+    symbols: &[("P", "mechanical_power", "sustained power"), ("w", "rotational_speed", "speed of the crank")],
     validity: "between lowest and highest cadence; below, the torque of the lowest; above, none",
     source: "common practice, no source",
     revision: 1,

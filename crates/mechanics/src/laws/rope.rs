@@ -16,9 +16,9 @@ use crate::registry::Formula;
 /// Pitch diameter of a layer.
 pub const LAYER_DIAMETER: Formula = Formula {
     name: "layer_diameter",
-    text: "D + 2 * (n - 1) * d",
+    text: "D_1 + 2 * (n - 1) * d",
     symbols: &[
-        ("D", "length", "pitch diameter of the first layer"),
+        ("D_1", "length", "pitch diameter of the first layer"),
         ("n", "count", "layer, counted from the barrel"),
         ("d", "length", "diameter of the rope"),
     ],

@@ -210,12 +210,17 @@ mod tests {
 
     #[test]
     fn rounding_of_a_catalogue_is_no_contradiction() {
-        assert!(read(&[("stall_torque", 10.0), ("no_load_speed", rpm(1910.0)), ("peak_power", 505.0)], &[]).is_ok());
+        assert!(
+            read(&[("stall_torque", 10.0), ("no_load_speed", rpm(1910.0)), ("peak_power", 505.0)], &[])
+                .is_ok()
+        );
     }
 
     #[test]
     fn too_little_and_too_much() {
-        let kind = |fields: &[(&'static str, f64)], points: &[(f64, f64)]| read(fields, points).unwrap_err().remove(0).kind;
+        let kind = |fields: &[(&'static str, f64)], points: &[(f64, f64)]| {
+            read(fields, points).unwrap_err().remove(0).kind
+        };
         assert!(matches!(kind(&[("stall_torque", 10.0)], &[]), FaultKind::Missing { .. }));
         assert!(matches!(kind(&[("peak_power", 10.0)], &[(1.0, 1.0)]), FaultKind::Missing { .. }));
         assert!(matches!(kind(&[("stall_torque", 10.0)], &[(1.0, 11.0)]), FaultKind::Contradiction { .. }));

@@ -3,7 +3,8 @@
 use crate::curve::Line as CurveLine;
 use crate::fault::Fault;
 use crate::kinds::fields::{
-    AS_GENERATOR, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, NO_BRAKING, RATED_DUTY, RATED_TORQUE, plain, positive, range,
+    AS_GENERATOR, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, NO_BRAKING, RATED_DUTY, RATED_TORQUE, plain, positive,
+    range,
 };
 use crate::kinds::reading::{HoldBack, done, inertia};
 use crate::laws::straight_line::{self as law, Line};
@@ -55,13 +56,23 @@ static FIELDS: &[Field] = &[
         range(0.05, 5e3),
         "speed of the peak power, half the no-load speed",
     ),
-    plain("point", Shape::Points(COLUMNS), Need::OneOf, "one or two measured points: torque or power at a speed"),
+    plain(
+        "point",
+        Shape::Points(COLUMNS),
+        Need::OneOf,
+        "one or two measured points: torque or power at a speed",
+    ),
     RATED_TORQUE,
     RATED_DUTY,
     MAX_SPEED,
     INERTIA,
     FLYWHEEL_EFFECT,
-    plain("braking", Shape::Choice(BRAKING), Need::Where("a load that drives"), "what it does while the load drives"),
+    plain(
+        "braking",
+        Shape::Choice(BRAKING),
+        Need::Where("a load that drives"),
+        "what it does while the load drives",
+    ),
 ];
 
 const COLUMNS: &[ColumnRow] = &[

@@ -44,7 +44,12 @@ static FIELDS: &[Field] = &[
         range(5e-5, 50.0),
         "speed of the peak power, half the no-load speed",
     ),
-    plain("point", Shape::Points(COLUMNS), Need::OneOf, "one or two measured points: force or power at a speed"),
+    plain(
+        "point",
+        Shape::Points(COLUMNS),
+        Need::OneOf,
+        "one or two measured points: force or power at a speed",
+    ),
     positive(
         "rated_force",
         "force",
@@ -53,7 +58,13 @@ static FIELDS: &[Field] = &[
         "force it can give for the rated duty without growing too warm",
     ),
     RATED_DUTY,
-    positive("max_speed", "speed", Need::Optional, range(1e-4, 1e3), "highest speed it may run at, driven or driving"),
+    positive(
+        "max_speed",
+        "speed",
+        Need::Optional,
+        range(1e-4, 1e3),
+        "highest speed it may run at, driven or driving",
+    ),
     not_negative(
         "moving_mass",
         "mass",
@@ -61,7 +72,12 @@ static FIELDS: &[Field] = &[
         range(0.0, 1e6),
         "mass of its moving part",
     ),
-    plain("braking", Shape::Choice(BRAKING), Need::Where("a load that drives"), "what it does while the load drives"),
+    plain(
+        "braking",
+        Shape::Choice(BRAKING),
+        Need::Where("a load that drives"),
+        "what it does while the load drives",
+    ),
 ];
 
 const COLUMNS: &[ColumnRow] = &[

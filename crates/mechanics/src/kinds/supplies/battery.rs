@@ -122,8 +122,7 @@ mod tests {
 
     #[test]
     fn sags_under_load() {
-        let values =
-            Values::default().with("open_circuit_voltage", Si(37.0)).with("resistance", Si(0.110));
+        let values = Values::default().with("open_circuit_voltage", Si(37.0)).with("resistance", Si(0.110));
         let Ok(Model::Supply(pack)) = build(&values) else { panic!("no battery") };
         close(pack.terminal(29.2), 33.788, 1e-12);
         assert_eq!(pack.data().accepts_return, None);

@@ -25,7 +25,13 @@ pub static ROW: KindRow = KindRow {
 };
 
 static FIELDS: &[Field] = &[
-    positive("voltage", "voltage", Need::Required, range(90.0, 15e3), "voltage between two lines, at the machine"),
+    positive(
+        "voltage",
+        "voltage",
+        Need::Required,
+        range(90.0, 15e3),
+        "voltage between two lines, at the machine",
+    ),
     positive("frequency", "frequency", Need::Required, range(10.0, 500.0), "frequency"),
     ACCEPTS_RETURN,
 ];
