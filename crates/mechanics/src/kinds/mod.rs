@@ -27,5 +27,13 @@ pub static ROWS: &[&KindRow] = &[
     &transmissions::brake::ROW,
     &transmissions::freewheel::ROW,
     &transmissions::coupling::ROW,
+    &loads::constant::ROW,
+    &loads::viscous::ROW,
     &loads::quadratic::ROW,
+    &loads::polynomial::ROW,
+    &loads::measured_curve::ROW,
+    &loads::hoist::ROW,
+    &loads::incline::ROW,
+    &loads::vehicle::ROW,
+    &loads::flywheel::ROW,
 ];

@@ -4,9 +4,10 @@ use crate::curve::{Curve, Law};
 use crate::fault::{Fault, FaultKind, Note};
 use crate::kinds::fields::{AS_GENERATOR, INTO_RESISTOR};
 use crate::laws::inertia::from_flywheel_effect;
-use crate::model::{Braking, Feed, Known, Limit, LimitOn};
+use crate::laws::table::{Table, TableError};
+use crate::model::{Braking, Feed, Known, Limit, LimitOn, Motion};
 use crate::scalar::Real;
-use crate::values::Values;
+use crate::values::{FieldValue, Table as Given, Values};
 
 /// Groups of fields of which one must be given.
 pub(crate) fn missing(any_of: &[&[&'static str]], why: &'static str) -> Fault {
@@ -115,6 +116,56 @@ impl<L: Law> Law for HoldBack<L> {
     fn kinks(&self) -> Vec<f64> {
         self.0.kinks()
     }
+}
+
+/// Points (speed, effort) of a table with columns `speed` and an effort or `power`.
+pub(crate) fn points(
+    table: &Given,
+    field: &'static str,
+    effort_column: &str,
+    speed_kind: &'static str,
+    faults: &mut Vec<Fault>,
+) -> Vec<(f64, f64)> {
+    let speeds = table.column("speed").unwrap_or_default();
+    if let Some(efforts) = table.column(effort_column) {
+        return speeds.iter().copied().zip(efforts.iter().copied()).collect();
+    }
+    let Some(powers) = table.column("power") else {
+        faults.push(bad_value(field, "every point needs its torque, force or power beside its speed", &[]));
+        return Vec::new();
+    };
+    if let Some(speed) = speeds.iter().find(|speed| **speed <= 0.0) {
+        let template = "power over speed says nothing at {0}: give the effort at this point instead";
+        faults.push(bad_value(field, template, &[(*speed, speed_kind)]));
+        return Vec::new();
+    }
+    speeds.iter().zip(powers).map(|(speed, power)| (*speed, power / speed)).collect()
+}
+
+/// The measured curve of a field, with a fault for what makes it none.
+pub(crate) fn table(
+    values: &Values,
+    field: &'static str,
+    effort_column: &str,
+    motion: Motion,
+    faults: &mut Vec<Fault>,
+) -> Option<Table> {
+    let Some(FieldValue::Points(given)) = values.get(field) else { return None };
+    let before = faults.len();
+    let points = points(given, field, effort_column, motion.speed_kind(), faults);
+    if faults.len() > before {
+        return None;
+    }
+    match Table::new(points) {
+        Ok(table) => return Some(table),
+        Err(TableError::TooFew) => faults.push(bad_value(field, "a curve needs two points at least", &[])),
+        Err(TableError::NotFinite) => faults.push(bad_value(field, "a point is not a finite number", &[])),
+        Err(TableError::Twice(speed)) => {
+            let template = "two different values at {0}: keep one";
+            faults.push(bad_value(field, template, &[(speed, motion.speed_kind())]));
+        }
+    }
+    None
 }
 
 /// The limits of a part that are given.

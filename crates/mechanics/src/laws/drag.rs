@@ -10,7 +10,19 @@
 //! Revision: 1
 
 use super::Checked;
+use crate::curve::Law;
 use crate::registry::Formula;
+use crate::scalar::Real;
+
+/// Resistance that does not change with speed.
+pub const CONSTANT: Formula = Formula {
+    name: "torque",
+    text: "T",
+    symbols: &[("T", "torque", "torque it takes at every speed; a force for a load that runs straight")],
+    validity: "moving; at rest the breakaway ratio times as much sets it moving",
+    source: "Coulomb's law of friction",
+    revision: 1,
+};
 
 /// Resistance that grows evenly with speed.
 pub const VISCOUS: Formula = Formula {
@@ -36,8 +48,28 @@ pub const QUADRATIC: Formula = Formula {
     revision: 1,
 };
 
+/// A polynomial in speed.
+pub const POLYNOMIAL: Formula = Formula {
+    name: "torque",
+    text: "c_0 + c_1 * w + c_2 * w^2",
+    symbols: &[
+        ("c_0", "torque", "constant part"),
+        ("c_1", "viscous_torque_coefficient", "torque per speed"),
+        ("w", "rotational_speed", "speed"),
+        ("c_2", "quadratic_torque_coefficient", "torque per square of the speed"),
+    ],
+    validity: "a fit holds in the range of speeds it was made for",
+    source: "closed form",
+    revision: 1,
+};
+
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
+    Checked {
+        formula: &CONSTANT,
+        domain: &[(0.0, 1e4)],
+        kernel: |x| Powers { coefficients: [x[0], 0.0, 0.0, 0.0] }.at(12.0),
+    },
     Checked {
         formula: &VISCOUS,
         domain: &[(1e-5, 10.0), (0.0, 500.0)],
@@ -47,6 +79,11 @@ pub const CHECKED: &[Checked] = &[
         formula: &QUADRATIC,
         domain: &[(0.1, 1e4), (0.0, 500.0), (1.0, 500.0)],
         kernel: |x| Powers::through(2, x[2], x[0]).at(x[1]),
+    },
+    Checked {
+        formula: &POLYNOMIAL,
+        domain: &[(0.0, 100.0), (0.0, 10.0), (0.0, 500.0), (0.0, 0.1)],
+        kernel: |x| Powers { coefficients: [x[0], x[1], x[3], 0.0] }.at(x[2]),
     },
 ];
 
@@ -72,15 +109,38 @@ impl Powers {
 
     /// Effort at a speed of zero or above.
     #[must_use]
-    pub fn at(&self, speed: f64) -> f64 {
-        self.coefficients.iter().rev().fold(0.0, |sum, c| sum * speed + c)
+    pub fn at<R: Real>(&self, speed: R) -> R {
+        let [constant, viscous, quadratic, cubic] = self.coefficients;
+        let mut sum = R::of(0.0);
+        // Leading powers that are not there would only widen an enclosure.
+        for coefficient in [cubic, quadratic, viscous] {
+            sum = if coefficient == 0.0 { sum * speed } else { (sum + coefficient) * speed };
+        }
+        sum + constant
+    }
+}
+
+/// Against motion in either direction.
+impl Law for Powers {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        speed.piecewise(&[0.0], |piece, speed| if piece == 0 { -self.at(-speed) } else { self.at(speed) })
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        if self.coefficients[0] == 0.0 { Vec::new() } else { vec![0.0] }
+    }
+
+    fn kinks(&self) -> Vec<f64> {
+        vec![0.0]
     }
 }
 
 #[cfg(test)]
 mod tests {
     use super::Powers;
-    use crate::laws::testing::{close, rpm};
+    use crate::curve::Curve;
+    use crate::laws::testing::{close, encloses, rpm};
+    use proptest::prelude::*;
 
     #[test]
     fn a_fifth_more_speed_asks_half_as_much_torque_again() {
@@ -88,6 +148,30 @@ mod tests {
         let fan = Powers::through(2, rpm(1000.0), 30.0);
         close(fan.at(rpm(1200.0)), 30.0 * 1.44, 1e-14);
         close(fan.at(rpm(1200.0)) * 1.2 / 30.0, 1.728, 1e-14);
+    }
+
+    #[test]
+    fn friction_turns_over_with_motion() {
+        let load = Powers { coefficients: [5.0, 0.1, 0.02, 0.003] };
+        for speed in [0.1, 3.0, 40.0] {
+            assert_eq!(Curve::at(&load, -speed), -Curve::at(&load, speed));
+            let direct = 5.0 + 0.1 * speed + 0.02 * speed * speed + 0.003 * speed * speed * speed;
+            close(Curve::at(&load, speed), direct, 1e-14);
+        }
+        assert_eq!(Curve::jumps(&load), [0.0]);
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(200))]
+        #[test]
+        fn bounds_hold(
+            c in proptest::array::uniform4(-2.0..5.0f64),
+            lo in -20.0..20.0f64, width in 0.0..10.0f64, t in 0.0..1.0f64,
+        ) {
+            let smooth = Powers { coefficients: [0.0, c[1], c[2], c[3]] };
+            encloses(&smooth, lo, width, t);
+            encloses(&Powers { coefficients: c }, lo.abs() + 0.1, width, t);
+        }
     }
 
     #[test]

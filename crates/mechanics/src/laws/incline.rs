@@ -8,7 +8,9 @@
 //! Revision: 1
 
 use super::{Checked, G_N};
+use crate::curve::Law;
 use crate::registry::Formula;
+use crate::scalar::Real;
 
 /// Slope of a grade.
 pub const SLOPE: Formula = Formula {
@@ -34,6 +36,20 @@ pub const UPHILL_FORCE: Formula = Formula {
     revision: 1,
 };
 
+/// Effort on a rope of what hangs on it.
+pub const LIFTING_FORCE: Formula = Formula {
+    name: "force",
+    text: "(m - m_c) * (9.80665 m/s²) + F_f",
+    symbols: &[
+        ("m", "mass", "mass that is lifted, hook and block included"),
+        ("m_c", "mass", "mass of the counterweight"),
+        ("F_f", "force", "friction of guides and bearings, opposing motion"),
+    ],
+    validity: "steady motion upward; downward the friction has the other sign; the rope's own weight left aside",
+    source: "Newton's laws of motion",
+    revision: 1,
+};
+
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
     Checked { formula: &SLOPE, domain: &[(-2.0, 2.0)], kernel: |x| libm::atan(x[0]) },
@@ -42,7 +58,33 @@ pub const CHECKED: &[Checked] = &[
         domain: &[(0.1, 1e5), (-1.5, 1.5), (0.0, 1.0)],
         kernel: |x| weight(x[0]) * (libm::sin(x[1]) + x[2] * libm::cos(x[1])),
     },
+    Checked {
+        formula: &LIFTING_FORCE,
+        domain: &[(0.0, 1e5), (0.0, 1e5), (0.0, 1e3)],
+        kernel: |x| Pull { pull: weight(x[0] - x[1]), friction: x[2] }.eval(1.0),
+    },
 ];
+
+/// A steady pull with friction that opposes motion, and turns over with it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Pull {
+    /// Effort without friction, against the sense counted positive.
+    pub pull: f64,
+    /// Size of the friction while moving.
+    pub friction: f64,
+}
+
+impl Law for Pull {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        speed.piecewise(&[0.0], |piece, _| {
+            R::of(if piece == 0 { self.pull - self.friction } else { self.pull + self.friction })
+        })
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        if self.friction == 0.0 { Vec::new() } else { vec![0.0] }
+    }
+}
 
 /// Weight (N) of a mass (kg) under standard gravity.
 #[must_use]

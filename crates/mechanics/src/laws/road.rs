@@ -11,7 +11,9 @@
 
 use super::Checked;
 use super::incline::{cosine_of_grade, sine_of_grade, weight};
+use crate::curve::Law;
 use crate::registry::Formula;
+use crate::scalar::Real;
 
 /// Force at the rim of a vehicle moving forward.
 pub const ROAD_LOAD: Formula = Formula {
@@ -44,7 +46,7 @@ pub const CHECKED: &[Checked] = &[Checked {
             drag_area: x[4],
             headwind: x[6],
         };
-        road.grade_force() + road.rolling_force() + road.air_force(x[5])
+        road.eval(x[5])
     },
 }];
 
@@ -92,16 +94,37 @@ impl RoadLoad {
 
     /// The force (N) of the air at a speed over ground (m/s).
     #[must_use]
-    pub fn air_force(&self, speed: f64) -> f64 {
-        let through_air = speed + self.headwind;
-        self.air_coefficient() * through_air * through_air.abs()
+    pub fn air_force<R: Real>(&self, speed: R) -> R {
+        let coefficient = self.air_coefficient();
+        (speed + self.headwind).piecewise(&[0.0], |piece, through_air| {
+            through_air.square() * if piece == 0 { -coefficient } else { coefficient }
+        })
+    }
+}
+
+/// The whole force over speed; rolling resistance opposes motion and turns over with it.
+impl Law for RoadLoad {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        let (grade, rolling) = (self.grade_force(), self.rolling_force());
+        let ground = speed
+            .piecewise(&[0.0], |piece, _| R::of(if piece == 0 { grade - rolling } else { grade + rolling }));
+        ground + self.air_force(speed)
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        if self.rolling_resistance == 0.0 { Vec::new() } else { vec![0.0] }
+    }
+
+    fn kinks(&self) -> Vec<f64> {
+        vec![-self.headwind]
     }
 }
 
 #[cfg(test)]
 mod tests {
     use super::RoadLoad;
-    use crate::laws::testing::close;
+    use crate::laws::testing::{close, encloses};
+    use proptest::prelude::*;
 
     #[test]
     fn hill_with_wind() {
@@ -136,6 +159,21 @@ mod tests {
         };
         close(road.rolling_force() * speed / horsepower, 8.917_333_333_33, 1e-9);
         close(road.air_force(speed) * speed / horsepower, 1.850_966_339_67, 1e-9);
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(200))]
+        #[test]
+        fn bounds_hold(
+            headwind in -20.0..20.0f64, grade in -0.2..0.2f64,
+            lo in 0.0..30.0f64, width in 0.0..20.0f64, t in 0.0..1.0f64,
+        ) {
+            let road = RoadLoad {
+                mass: 240.0, grade, rolling_resistance: 0.008, air_density: 1.2, drag_area: 0.9, headwind,
+            };
+            encloses(&road, lo, width, t);
+            encloses(&road, -lo - width - 1e-9, width, t);
+        }
     }
 
     #[test]

@@ -83,6 +83,14 @@ impl Table {
         (self.points[0].0, self.points[self.points.len() - 1].0)
     }
 
+    /// The symbols of the formula at a place.
+    #[must_use]
+    pub fn symbols(&self, x: f64) -> Vec<(&'static str, f64)> {
+        let piece = self.breaks.partition_point(|b| *b <= x);
+        let (from, to) = (self.points[piece], self.points[piece + 1]);
+        vec![("w", x), ("w_1", from.0), ("T_1", from.1), ("w_2", to.0), ("T_2", to.1)]
+    }
+
     /// The points, in rising order.
     #[must_use]
     pub fn points(&self) -> &[(f64, f64)] {

@@ -1,9 +1,9 @@
 //! Reads a straight line from any two things that settle it, and checks the rest against it.
 
 use crate::fault::Fault;
-use crate::kinds::reading::{bad_value, contradiction, differ, missing};
+use crate::kinds::reading::{bad_value, contradiction, differ, missing, points};
 use crate::laws::straight_line::Line;
-use crate::values::{FieldValue, Table, Values};
+use crate::values::{FieldValue, Values};
 
 /// Numbers that say the same thing may differ by this share, the rounding of catalogues.
 const ROUNDING: f64 = 0.02;
@@ -24,30 +24,6 @@ pub(super) struct Names {
     pub effort_column: &'static str,
     /// The kind of the speed.
     pub speed_kind: &'static str,
-}
-
-/// Points (speed, effort) of a table with columns `speed` and an effort or `power`.
-pub(in crate::kinds) fn points(
-    table: &Table,
-    field: &'static str,
-    effort_column: &str,
-    speed_kind: &'static str,
-    faults: &mut Vec<Fault>,
-) -> Vec<(f64, f64)> {
-    let speeds = table.column("speed").unwrap_or_default();
-    if let Some(efforts) = table.column(effort_column) {
-        return speeds.iter().copied().zip(efforts.iter().copied()).collect();
-    }
-    let Some(powers) = table.column("power") else {
-        faults.push(bad_value(field, "every point needs its torque, force or power beside its speed", &[]));
-        return Vec::new();
-    };
-    if let Some(speed) = speeds.iter().find(|speed| **speed <= 0.0) {
-        let template = "power over speed says nothing at {0}: give the effort at this point instead";
-        faults.push(bad_value(field, template, &[(*speed, speed_kind)]));
-        return Vec::new();
-    }
-    speeds.iter().zip(powers).map(|(speed, power)| (*speed, power / speed)).collect()
 }
 
 /// The line; `None` with a fault for every reason against it.
