@@ -9,6 +9,7 @@
 
 pub mod analysis;
 pub mod files;
+pub mod index;
 pub mod quantity;
 pub mod say;
 
@@ -30,9 +31,22 @@ use std::sync::Arc;
 
 pub use analysis::Analysis;
 pub use files::{Files, MemoryFiles, NoFiles, ReadError};
-pub use layshaft_syntax::Memo;
 
 use eval::Shared;
+
+/// The trees of the texts analyzed before, so that an edit costs the items it touches. A memo skips work and never
+/// changes an answer.
+#[derive(Debug, Default)]
+pub struct Memo {
+    texts: std::collections::BTreeMap<String, layshaft_syntax::Memo>,
+}
+
+impl Memo {
+    fn parse(&mut self, path: &str, text: &str) -> Arc<layshaft_syntax::File> {
+        let memo = self.texts.entry(path.to_owned()).or_default();
+        Arc::new(layshaft_syntax::parse_with(text, memo))
+    }
+}
 
 /// Analyzes the spec `path` with the text `text`; `files` hands out what it uses.
 ///

@@ -17,11 +17,11 @@ pub(crate) fn load(
     path: &str,
     text: Arc<str>,
     files: &dyn Files,
-    memo: &mut layshaft_syntax::Memo,
+    memo: &mut crate::Memo,
     sink: &Sink,
 ) -> World {
     let mut world = World::default();
-    let tree = Arc::new(layshaft_syntax::parse_with(&text, memo));
+    let tree = memo.parse(path, &text);
     world.push(path.to_owned(), text, tree);
     let mut next = 0;
     while next < world.files.len() {
@@ -69,7 +69,7 @@ fn cook(problem: &Problem, file: u32, offset: u32) -> Diagnostic {
 }
 
 /// Fills the scope of a file; a `use` takes up a further file.
-fn declare(world: &mut World, file: u32, files: &dyn Files, memo: &mut layshaft_syntax::Memo, sink: &Sink) {
+fn declare(world: &mut World, file: u32, files: &dyn Files, memo: &mut crate::Memo, sink: &Sink) {
     let tree = Arc::clone(&world.files[file as usize].tree);
     for (index, item) in tree.items.iter().enumerate() {
         let at = ItemRef { file, item: index as u32 };
@@ -114,7 +114,7 @@ fn doubled(world: &World, name: &str, place: FileSpan, first: ItemRef) -> Diagno
 }
 
 /// The name of a file without folders and ending.
-fn stem(path: &str) -> &str {
+pub(crate) fn stem(path: &str) -> &str {
     let file = path.rsplit('/').next().unwrap_or(path);
     file.split('.').next().unwrap_or(file)
 }
@@ -125,7 +125,7 @@ fn used(
     at: ItemRef,
     path: &layshaft_syntax::Text,
     files: &dyn Files,
-    memo: &mut layshaft_syntax::Memo,
+    memo: &mut crate::Memo,
     sink: &Sink,
 ) -> Option<u32> {
     let place = world.place(at, path.span);
@@ -146,7 +146,7 @@ fn used(
     }
     match files.read(&full) {
         Ok(text) => {
-            let tree = Arc::new(layshaft_syntax::parse_with(&text, memo));
+            let tree = memo.parse(&full, &text);
             Some(world.push(full, text, tree))
         }
         Err(why) => {

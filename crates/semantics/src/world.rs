@@ -40,6 +40,35 @@ pub(crate) struct World {
 }
 
 impl World {
+    /// The world of texts already loaded, their scopes filled again; of a doubled name the first counts.
+    pub fn of_files(files: &[SourceFile]) -> Self {
+        let mut world = Self { files: files.to_vec(), scopes: Vec::new() };
+        for file in 0..files.len() as u32 {
+            let mut scope = Scope::default();
+            for (at, tree) in world.items(file) {
+                let declared = match &tree.kind {
+                    ItemKind::Let { name, .. } => (name.text.clone(), Declared::Let),
+                    ItemKind::Part { name, .. } => (name.text.clone(), Declared::Part),
+                    ItemKind::Drive { name, .. } => (name.text.clone(), Declared::Drive),
+                    ItemKind::Case { name, .. } => (name.text.clone(), Declared::Case),
+                    ItemKind::Use { path, alias } => {
+                        let target = crate::load::beside(&files[file as usize].path, &path.value)
+                            .ok()
+                            .and_then(|full| files.iter().position(|file| file.path == full))
+                            .map(|index| index as u32);
+                        let stem = || crate::load::stem(&path.value).into();
+                        let name = alias.as_ref().map_or_else(stem, |alias| alias.text.clone());
+                        (name, Declared::File(target))
+                    }
+                    _ => continue,
+                };
+                scope.names.entry(declared.0).or_insert((declared.1, at));
+            }
+            world.scopes.push(scope);
+        }
+        world
+    }
+
     /// Takes up a text; its scope is filled by the caller.
     pub fn push(&mut self, path: String, text: Arc<str>, tree: Arc<layshaft_syntax::File>) -> u32 {
         let lines = Arc::new(LineIndex::new(&text));

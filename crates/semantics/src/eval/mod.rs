@@ -25,7 +25,7 @@ use crate::world::{ItemRef, World};
 
 pub(crate) use compare::compare_words;
 pub(crate) use expr::is_literal;
-pub(crate) use path::Station;
+pub(crate) use path::{Station, is_constant};
 
 /// A place that a case can override.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord)]
