@@ -162,6 +162,7 @@ pub(super) fn shows(analysis: &Analysis, habits: &Habits) -> Vec<ShowLine> {
     let outcome = |outcome: &layshaft_semantics::analysis::ShowOutcome| ShowOutcomeLine {
         case: outcome.case,
         label: label(analysis, outcome.case, outcome.gear.as_deref()),
+        gear: outcome.gear.clone(),
         value: outcome.value.as_ref().map(|datum| result(datum, usual(datum, habits).as_deref(), DIGITS)),
         remark: outcome.remark.clone(),
     };

@@ -1,6 +1,7 @@
 //! Drives: in every case what becomes of them from rest, where they run, what their sources give there.
 
 use layshaft_mechanics::drive::{Chain, DriveSpec, Port};
+use layshaft_mechanics::fault::Fault;
 use layshaft_mechanics::registry::{self, ResultRow, Role};
 use layshaft_mechanics::solution::Answer;
 use layshaft_mechanics::solve::Solution;
@@ -120,7 +121,7 @@ fn units(drive: &DriveRecord, habits: &Habits) -> DriveUnits {
         speed: unit(of_drive("speed")),
         source_speed: unit(of_sources(&["speed"])),
         effort: unit(of_sources(EFFORT)),
-        power: unit(of_sources(&["power"])),
+        power: unit([of_sources(&["power"]), of_sources(&["peak_power"])].concat()),
         current: unit(of_sources(&["current"])),
     }
 }
@@ -152,6 +153,7 @@ impl Row<'_> {
             case: self.case.case,
             label: String::new(),
             gear: self.case.gear.clone(),
+            solved: solved.is_some(),
             outcome,
             moves,
             speed: solved
@@ -162,7 +164,7 @@ impl Row<'_> {
                 (Some((spec, of)), Detail::Everything) => self.everything(spec, of),
                 _ => Vec::new(),
             },
-            faults: self.faults(),
+            faults: self.sentences(&self.case.faults),
             governs: Vec::new(),
         }
     }
@@ -178,6 +180,7 @@ impl Row<'_> {
                 speed: ask(&["speed"], &self.units.source_speed),
                 effort: ask(EFFORT, &self.units.effort),
                 power: ask(&["power"], &self.units.power),
+                peak_power: ask(&["peak_power"], &self.units.power),
                 power_share: ask(&["power_share"], "%"),
                 current: ask(&["current"], &self.units.current),
                 mode: ask(&["mode"], ""),
@@ -238,15 +241,17 @@ impl Row<'_> {
             Answer::Word(word) => Entry::Word(word),
             Answer::Unbounded(why) => Entry::Unbounded(note::fill(&why, self.habits)),
             Answer::Absent(why) => Entry::Absent(note::fill(&why, self.habits)),
+            Answer::Refused(faults) => Entry::Absent(self.sentences(&faults).join("; ")),
             Answer::NoSuch => Entry::None,
         }
     }
 
-    fn faults(&self) -> Vec<String> {
+    /// Why something could not be had, a sentence each.
+    fn sentences(&self, faults: &[Fault]) -> Vec<String> {
         let name = |part: Option<usize>| {
             let parts = &self.case.spec.as_deref()?.parts;
             parts.get(part?).map(|part| part.name.as_str())
         };
-        self.case.faults.iter().map(|fault| note::fault(fault, name(fault.part), self.habits)).collect()
+        faults.iter().map(|fault| note::fault(fault, name(fault.part), self.habits)).collect()
     }
 }

@@ -97,7 +97,9 @@ pub struct DriveRow {
     pub label: String,
     /// The gear, where the spec gives none and all are solved.
     pub gear: Option<String>,
-    /// What becomes of the drive from rest, in words: `starts, runs up`.
+    /// Whether the solver had an answer.
+    pub solved: bool,
+    /// What becomes of the drive from rest, in words: `runs up`, `stalls`.
     pub outcome: String,
     /// Whether that is what a drive is for.
     pub moves: bool,
@@ -128,7 +130,9 @@ pub struct SourceRow {
     pub effort: Entry,
     /// Power of one.
     pub power: Entry,
-    /// Power over the most it can give.
+    /// The most power one can give along its curve.
+    pub peak_power: Entry,
+    /// Power over that.
     pub power_share: Entry,
     /// Current of one.
     pub current: Entry,
@@ -273,6 +277,8 @@ pub struct ShowOutcomeLine {
     pub case: usize,
     /// Label of the case, with the gear where the spec gives none.
     pub label: String,
+    /// The gear, where the spec gives none.
+    pub gear: Option<String>,
     /// The value.
     pub value: Option<Shown>,
     /// Why there is none, or a mark.

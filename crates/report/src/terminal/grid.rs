@@ -102,7 +102,8 @@ impl Grid {
             if total <= limit {
                 return Some(widths);
             }
-            let widest = (0..widths.len()).filter(|&at| widths[at] > floor(at)).max_by_key(|&at| (widths[at], at))?;
+            let widest =
+                (0..widths.len()).filter(|&at| widths[at] > floor(at)).max_by_key(|&at| (widths[at], at))?;
             let next = widths.iter().enumerate().filter(|&(at, _)| at != widest && widths[at] > floor(at));
             let second = next.map(|(_, w)| *w).max().unwrap_or(0).min(widths[widest] - 1);
             let wanted = widths[widest].saturating_sub(total - limit).max(second).max(floor(widest));
@@ -162,7 +163,8 @@ impl Grid {
     /// A block of lines for each row: `head  cell`.
     fn as_blocks(&self, style: Style) -> String {
         let mut out = String::new();
-        let heads: Vec<String> = self.columns.iter().map(|column| column.head.join(" ").trim().to_string()).collect();
+        let heads: Vec<String> =
+            self.columns.iter().map(|column| column.head.join(" ").trim().to_string()).collect();
         let widest = heads.iter().map(|head| width(head)).max().unwrap_or(0);
         for (at, row) in self.rows.iter().enumerate() {
             if at > 0 {
@@ -171,7 +173,8 @@ impl Grid {
             for (head, cell) in heads.iter().zip(row).filter(|(_, cell)| !cell.text.is_empty()) {
                 let blanks = " ".repeat(widest - width(head) + GAP);
                 let head = style.paint(Tone::Faint, head);
-                let line = format!("{}{head}{blanks}{}", " ".repeat(INDENT), style.paint(cell.tone, &cell.text));
+                let line =
+                    format!("{}{head}{blanks}{}", " ".repeat(INDENT), style.paint(cell.tone, &cell.text));
                 out.push_str(line.trim_end());
                 out.push('\n');
             }
@@ -266,7 +269,10 @@ mod tests {
     #[test]
     fn a_very_narrow_terminal_gets_blocks() {
         let got = grid().render(12, NO);
-        assert!(got.starts_with("  case         plain\n  speed m/min  14.90\n  verdict      holds\n\n"), "{got}");
+        assert!(
+            got.starts_with("  case         plain\n  speed m/min  14.90\n  verdict      holds\n\n"),
+            "{got}"
+        );
     }
 
     #[test]
