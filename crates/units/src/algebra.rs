@@ -7,6 +7,7 @@ use crate::refusal::{Operation, Refusal};
 
 /// One over time, whose roots are told apart by the context.
 const PER_TIME: Dim = Dim::whole(0, 0, -1, 0, 0);
+const TIME: Dim = Dim::whole(0, 0, 1, 0, 0);
 
 /// The type of `a * b`.
 ///
@@ -50,7 +51,7 @@ pub fn power(a: &Type, num: i32, den: i32) -> Result<Type, Refusal> {
     match (a.dim.times(num, den), a.angle.times(num, den)) {
         (Some(dim), Some(angle)) => {
             let root = num.checked_rem(den).is_some_and(|rest| rest != 0);
-            let angle = if root && dim == PER_TIME { root_of_rate(angle) } else { angle };
+            let angle = if root && (dim == PER_TIME || dim == TIME) { root_of_rate(angle) } else { angle };
             Ok(Type { dim, angle, turns, ..Type::number() })
         }
         // A plain number may be raised to anything: nothing is counted in it that could break.
@@ -63,9 +64,10 @@ pub fn power(a: &Type, num: i32, den: i32) -> Result<Type, Refusal> {
 }
 
 /// The root of 1/s² is a rotational speed (`sqrt(k/m)`, `sqrt(c/J)`) or a rate, and its radians do not say
-/// which, unless they come out as exactly one: `sqrt(2*E/J)`.
+/// which, unless they come out as exactly one: `sqrt(2*E/J)`. The root of s² is the inverse of such a root.
 fn root_of_rate(angle: Angle) -> Angle {
-    if angle == Angle::exactly(WHOLE) { angle } else { Angle::Free }
+    let certain = angle == Angle::exactly(WHOLE) || angle == Angle::exactly(-WHOLE);
+    if certain { angle } else { Angle::Free }
 }
 
 /// The type of the `degree`-th root of `a`.
@@ -152,6 +154,7 @@ fn sum_tag(a: &Type, b: &Type, operation: Operation) -> Result<Option<Tag>, Refu
         (Some(Tag::Gauge), Some(Tag::Gauge)) | (Some(Tag::Absolute), Some(Tag::Absolute)) if minus => {
             Ok(None)
         }
+        (Some(Tag::Heat), None) | (None, Some(Tag::Heat)) => Ok(None),
         (one, None) | (None, one) => Ok(one),
         (Some(x), Some(y)) if x == y => Ok(Some(x)),
         (Some(Tag::Electrical), Some(Tag::Mechanical)) | (Some(Tag::Mechanical), Some(Tag::Electrical))

@@ -80,15 +80,18 @@ fn tag_fits(tag: Tag, maybe_heat: bool, wanted: &Kind) -> bool {
 /// With p the exponent of π and a the radians that are certain, what is left to explain, wanted − a − p, must
 /// be something the lengths in the formula can hide: a length above the line may be a length per radian, one
 /// below a radian per length.
+///
+/// A π that goes with a frequency makes radians of its cycles and is no turn counted twice: `2*pi*f` is as good
+/// as a rotational speed in `m * (2*pi*f)^2 * r`.
 fn counts_turn_twice(found: &Type, wanted: &Kind) -> bool {
     let turns = found.turns;
-    if turns.pi == 0 {
+    let paired =
+        if turns.pi > 0 { turns.frequency.clamp(0, turns.pi) } else { turns.frequency.clamp(turns.pi, 0) };
+    let lengths = turns.up != 0 || turns.down != 0;
+    if turns.pi == 0 || (turns.pi == paired && lengths) {
         return false;
     }
-    let takes_part = match wanted.angle {
-        Some(_) => turns.rotates || turns.up != 0 || turns.down != 0,
-        None => turns.rotates,
-    };
+    let takes_part = turns.rotates || (lengths && wanted.angle.is_some());
     let wanted_angle = i32::from(wanted.angle.unwrap_or(0) * WHOLE);
     let left = wanted_angle - i32::from(turns.angle) - i32::from(turns.pi);
     takes_part && !(-i32::from(turns.up) <= left && left <= i32::from(turns.down))

@@ -79,14 +79,20 @@ impl Kind {
 
     /// The type of a value of this kind.
     pub fn ty(&self) -> Type {
+        let per_time = self.dim == Dim::whole(0, 0, -1, 0, 0);
         let length = self.dim.0[0];
-        let up = if self.angle.is_none() { length } else { 0 };
+        let up = match self.angle {
+            Some(_) => 0,
+            None if self.dim == Dim([length, 0, 0, 0, 0, 0, 0]) => length,
+            // An inductance is volts per change of current, by the radian of a phase or not.
+            None => WHOLE,
+        };
         let turns = Turns {
-            pi: 0,
             angle: self.angle.unwrap_or(0) * WHOLE,
             up,
-            down: 0,
-            rotates: self.dim == Dim::whole(0, 0, -1, 0, 0),
+            frequency: if per_time && self.angle == Some(0) { WHOLE } else { 0 },
+            rotates: per_time || per_turn(self.dim, self.angle),
+            ..Turns::default()
         };
         let angle = self.angle.map_or(Angle::Free, |a| Angle::exactly(a * WHOLE));
         Type { dim: self.dim, angle, tag: self.tag, scale: self.scale, turns, ..Type::number() }
@@ -104,4 +110,10 @@ impl Kind {
             Some(whole) => state.allows(whole * WHOLE),
         }
     }
+}
+
+/// True for a lead and a displacement, lengths and volumes that say they are per turn.
+pub(crate) fn per_turn(dim: Dim, angle: Option<i16>) -> bool {
+    let length = dim.0[0];
+    dim == Dim([length, 0, 0, 0, 0, 0, 0]) && length > 0 && angle == Some(-1)
 }

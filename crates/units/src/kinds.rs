@@ -166,10 +166,10 @@ pub static KINDS: &[Kind] = &[
     Kind::new("resistance", "resistance", Dim::whole(2, 1, -3, -2, 0), Some(0))
         .units("Ω", &["Ω", "mΩ", "kΩ"])
         .means("electrical resistance"),
-    Kind::new("inductance", "inductance", Dim::whole(2, 1, -2, -2, 0), Some(0))
+    Kind::new("inductance", "inductance", Dim::whole(2, 1, -2, -2, 0), None)
         .units("H", &["mH", "H", "μH"])
         .means("electrical inductance"),
-    Kind::new("capacitance", "capacitance", Dim::whole(-2, -1, 4, 2, 0), Some(0))
+    Kind::new("capacitance", "capacitance", Dim::whole(-2, -1, 4, 2, 0), None)
         .units("F", &["μF", "mF", "F"])
         .means("electrical capacitance"),
     Kind::new("charge", "charge", Dim::whole(0, 0, 1, 1, 0), Some(0))

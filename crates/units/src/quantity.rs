@@ -59,11 +59,13 @@ pub(crate) struct Turns {
     pub pi: i16,
     /// Sum of the radians that the factors count for certain.
     pub angle: i16,
-    /// Powers of lengths above the line.
+    /// Powers of lengths, and of what else leaves radians free, above the line.
     pub up: i16,
-    /// Powers of lengths below the line.
+    /// The same below the line.
     pub down: i16,
-    /// A rotational speed or a frequency takes part.
+    /// Powers of frequencies, which π turns into radians per time.
+    pub frequency: i16,
+    /// A rotational speed, a frequency, a lead or a displacement takes part.
     pub rotates: bool,
 }
 
@@ -74,6 +76,7 @@ impl Turns {
             angle: self.angle.saturating_add(other.angle),
             up: self.up.saturating_add(other.up),
             down: self.down.saturating_add(other.down),
+            frequency: self.frequency.saturating_add(other.frequency),
             rotates: self.rotates || other.rotates,
         }
     }
@@ -82,6 +85,7 @@ impl Turns {
         Turns {
             pi: self.pi.saturating_neg(),
             angle: self.angle.saturating_neg(),
+            frequency: self.frequency.saturating_neg(),
             up: self.down,
             down: self.up,
             ..self
@@ -92,9 +96,12 @@ impl Turns {
     pub(crate) fn power(self, num: i32, den: i32) -> Turns {
         let base = if (num < 0) == (den < 0) { self } else { self.inverse() };
         let (num, den) = (num.saturating_abs(), den.saturating_abs());
-        let all = [base.pi, base.angle, base.up, base.down].map(|fact| scaled(fact, num, den));
+        let all =
+            [base.pi, base.angle, base.up, base.down, base.frequency].map(|fact| scaled(fact, num, den));
         match all {
-            [Some(pi), Some(angle), Some(up), Some(down)] => Turns { pi, angle, up, down, ..self },
+            [Some(pi), Some(angle), Some(up), Some(down), Some(frequency)] => {
+                Turns { pi, angle, up, down, frequency, ..self }
+            }
             _ => Turns { rotates: self.rotates, ..Turns::default() },
         }
     }
@@ -131,7 +138,7 @@ impl Type {
             angle: Angle::exactly(0),
             tag: None,
             scale: Scale::Ratio,
-            turns: Turns { pi: 0, angle: 0, up: 0, down: 0, rotates: false },
+            turns: Turns { pi: 0, angle: 0, up: 0, down: 0, frequency: 0, rotates: false },
             literal: false,
             zero: false,
             maybe_heat: false,

@@ -44,3 +44,8 @@ fn check(corpus: &str, least: [usize; 3]) {
 fn first_corpus() {
     check(include_str!("corpus/first.txt"), [128, 55, 10]);
 }
+
+#[test]
+fn second_corpus() {
+    check(include_str!("corpus/second.txt"), [150, 90, 20]);
+}

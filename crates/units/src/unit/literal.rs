@@ -4,6 +4,7 @@ use super::rows::Role;
 use super::symbols::Symbol;
 use crate::angle::Angle;
 use crate::dimension::{Dim, WHOLE};
+use crate::kind::per_turn;
 use crate::kinds::KINDS;
 use crate::quantity::{Scale, Turns, Type};
 
@@ -11,6 +12,7 @@ use crate::quantity::{Scale, Turns, Type};
 #[derive(Default)]
 struct Sums {
     length: i32,
+    reactance: i32,
     force: i32,
     mass: i32,
     angle: i32,
@@ -24,6 +26,7 @@ pub(crate) fn literal_type(parts: &[(Symbol, i32)], dim: Dim) -> Option<Type> {
     for (symbol, power) in parts {
         match symbol.row.role {
             Role::Length(n) => sums.length += n * power,
+            Role::Reactance => sums.reactance += power,
             Role::Force => sums.force += power,
             Role::Mass => sums.mass += power,
             Role::Angle => {
@@ -37,19 +40,26 @@ pub(crate) fn literal_type(parts: &[(Symbol, i32)], dim: Dim) -> Option<Type> {
         [(symbol, 1)] => Some(symbol.row),
         _ => None,
     };
-    let angle = match counted(&sums, dim) {
+    let counted = counted(&sums, dim);
+    let angle = match counted {
         Some(radians) => Angle::exactly(i16::try_from(radians).ok()?.checked_mul(WHOLE)?),
         None => Angle::Free,
     };
     let certain = if let Angle::Range(low, _) = angle { low } else { 0 };
-    let lengths =
-        if angle == Angle::Free { i16::try_from(sums.length).ok()?.checked_mul(WHOLE)? } else { 0 };
+    let lengths = if angle == Angle::Free {
+        i16::try_from(sums.length.saturating_add(sums.reactance)).ok()?.checked_mul(WHOLE)?
+    } else {
+        0
+    };
+    let per_time = dim == Dim::whole(0, 0, -1, 0, 0);
+    let whole = counted.and_then(|radians| i16::try_from(radians).ok());
     let turns = Turns {
         pi: 0,
         angle: certain,
         up: lengths.max(0),
         down: lengths.saturating_neg().max(0),
-        rotates: dim == Dim::whole(0, 0, -1, 0, 0),
+        frequency: if per_time && whole == Some(0) { WHOLE } else { 0 },
+        rotates: per_time || per_turn(dim, whole),
     };
     let level = alone.is_some_and(|row| row.offset != 0.0);
     Some(Type {
@@ -81,6 +91,9 @@ fn counted(sums: &Sums, dim: Dim) -> Option<i32> {
     }
     if mass_length && sums.mass == 1 && !sums.has_other {
         return Some(-2);
+    }
+    if sums.reactance != 0 {
+        return None;
     }
     if sums.length == 0 {
         return Some(0);

@@ -25,6 +25,8 @@ pub(crate) enum Role {
     Length(i32),
     Force,
     Mass,
+    /// Leaves radians free as a length does: the henry and the farad.
+    Reactance,
     /// Counts one radian: the turn itself, or turns per time.
     Angle,
     Other,
@@ -129,7 +131,7 @@ pub(crate) static ROWS: &[UnitRow] = &[
     UnitRow::new("rev", "revolution, a full turn", Exact::of_pi(2, 1), NUMBER).also(&["r"]).role(Role::Angle),
     // Length, area, volume
     UnitRow::new("m", "metre", ONE, LENGTH).si().role(Role::Length(1)),
-    UnitRow::new("in", "inch, 25.4 mm", INCH, LENGTH).role(Role::Length(1)),
+    UnitRow::new("in", "inch, 25.4 mm", INCH, LENGTH).also(&["inch"]).role(Role::Length(1)),
     UnitRow::new("ft", "foot, 12 in", FOOT, LENGTH).role(Role::Length(1)),
     UnitRow::new("yd", "yard, 3 ft", FOOT.times(r(3, 1)), LENGTH).role(Role::Length(1)),
     UnitRow::new("mi", "mile, 5280 ft", MILE, LENGTH).role(Role::Length(1)),
@@ -207,8 +209,8 @@ pub(crate) static ROWS: &[UnitRow] = &[
     UnitRow::new("V", "volt", ONE, VOLTAGE).si(),
     UnitRow::new("Ω", "ohm", ONE, Dim::whole(2, 1, -3, -2, 0)).also(&["Ohm", "ohm"]).si(),
     UnitRow::new("S", "siemens", ONE, Dim::whole(-2, -1, 3, 2, 0)).only(&["m", "μ"]),
-    UnitRow::new("H", "henry", ONE, Dim::whole(2, 1, -2, -2, 0)).si(),
-    UnitRow::new("F", "farad", ONE, Dim::whole(-2, -1, 4, 2, 0)).si(),
+    UnitRow::new("H", "henry", ONE, Dim::whole(2, 1, -2, -2, 0)).si().role(Role::Reactance),
+    UnitRow::new("F", "farad", ONE, Dim::whole(-2, -1, 4, 2, 0)).si().role(Role::Reactance),
     UnitRow::new("C", "coulomb", ONE, CHARGE).si(),
     UnitRow::new("Ah", "ampere-hour, 3600 C", r(3600, 1), CHARGE).si(),
     UnitRow::new("Wb", "weber", ONE, Dim::whole(2, 1, -2, -1, 0)).si(),

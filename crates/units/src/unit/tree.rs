@@ -174,7 +174,7 @@ impl Reader<'_> {
                 self.skip(sign);
                 digits.push('-');
             }
-            while let Some(digit) = self.peek().filter(char::is_ascii_digit) {
+            while let Some(digit) = self.peek().filter(|c| c.is_ascii_digit() || *c == '.') {
                 self.at += 1;
                 digits.push(digit);
             }

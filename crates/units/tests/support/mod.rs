@@ -3,8 +3,8 @@
 //! them.
 
 use layshaft_units::{
-    Function, Refusal, TurnWarning, Type, add, apply, compare, demand, divide, interpret_unit, kind,
-    multiply, negate, parse_unit, raise, subtract,
+    Function, Refusal, TurnWarning, Type, add, apply, compare, demand, divide, kind, multiply, negate,
+    parse_unit, raise, subtract,
 };
 
 /// What became of a formula in its place.
@@ -50,16 +50,6 @@ pub fn judge(formula: &str, wanted: &str, names: &[(&str, &str)]) -> Outcome {
         Ok(None) => Outcome::Fits,
         Ok(Some(warning)) => Outcome::Warned(warning),
         Err(Fault::Refused(refusal)) => Outcome::Refused(refusal.message()),
-        Err(Fault::Text(text)) => panic!("{formula}: {text}"),
-    }
-}
-
-/// The type of `formula`, if the algebra allows it.
-pub fn type_of(formula: &str, names: &[(&str, &str)]) -> Result<Type, Refusal> {
-    let mut reader = Reader { text: formula, at: 0, names };
-    match reader.comparison() {
-        Ok(value) => Ok(value.ty),
-        Err(Fault::Refused(refusal)) => Err(refusal),
         Err(Fault::Text(text)) => panic!("{formula}: {text}"),
     }
 }
@@ -206,11 +196,4 @@ impl<'a> Reader<'a> {
 
 fn both(a: Value, b: Value, operation: impl Fn(f64, f64) -> f64) -> Option<f64> {
     Some(operation(a.constant?, b.constant?))
-}
-
-/// The type of a literal with this unit in a place that wants `wanted`.
-pub fn literal_for(unit: &str, wanted: &str) -> Result<Type, String> {
-    let place = kind(wanted).ok_or("no such kind")?;
-    let unit = parse_unit(unit).map_err(|error| error.message())?;
-    interpret_unit(&unit, &place.ty()).map(|unit| unit.ty).map_err(|error| error.message())
 }
