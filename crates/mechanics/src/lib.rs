@@ -13,5 +13,7 @@ pub mod model;
 pub mod registry;
 pub mod scalar;
 pub mod solution;
-mod solve;
+pub mod solve;
 pub mod values;
+
+pub use solve::{OperatingPoint, Solution, gears, solve, solve_at};

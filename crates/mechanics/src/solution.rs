@@ -1,6 +1,6 @@
 //! What the solver answers.
 
-use crate::fault::Note;
+use crate::fault::{Fault, Note};
 
 /// An answer to one question about a solved drive.
 #[derive(Clone, Debug, PartialEq)]
@@ -22,6 +22,8 @@ pub enum Answer {
     Unbounded(Note),
     /// There is such a result, but not here: the reason.
     Absent(Note),
+    /// It cannot be answered until these are mended: a field that only this question needs is not given.
+    Refused(Vec<Fault>),
     /// The part or the drive has no result of this name.
     NoSuch,
 }
@@ -85,4 +87,22 @@ pub struct Finding {
     pub part: Option<usize>,
     /// The sentence.
     pub note: Note,
+}
+
+impl Mode {
+    /// The word of the mode.
+    #[must_use]
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Motoring => "motoring",
+            Self::Braking => "braking",
+            Self::Standstill => "standstill",
+            Self::DrivenBack => "driven_back",
+            Self::Freewheeling => "freewheeling",
+        }
+    }
+
+    /// All words of modes.
+    pub const WORDS: &'static [&'static str] =
+        &["motoring", "braking", "standstill", "driven_back", "freewheeling"];
 }

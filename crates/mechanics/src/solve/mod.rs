@@ -1,4 +1,69 @@
 //! The solver: from parts in a chain to operating points and everything that is asked about them.
+//!
+//! A drive has one degree of freedom: every speed in it is a fixed multiple of the speed x of its root shaft.
+//! `net(x)`, the available less the required effort there, is evaluated in bounds, so that no operating point is
+//! missed; what a field would have to say and does not is refused by name, for the questions that need it.
 
+mod answers;
+mod assembly;
+mod bracket;
+mod chain;
 mod extreme;
+mod flow;
+mod motion;
+mod part_answers;
+mod points;
+mod quadrature;
+mod rest;
 mod roots;
+mod run_up;
+mod source;
+mod state;
+mod stated;
+mod stop;
+#[cfg(test)]
+mod testing;
+#[cfg(test)]
+mod tests;
+
+pub use answers::{OperatingPoint, Solution};
+
+use crate::drive::{DriveSpec, StatedSpeed};
+use crate::fault::Fault;
+use crate::registry::Role;
+
+/// How near to a jump, as a share, the two sides of it are evaluated.
+pub(crate) const BESIDE: f64 = 1e-13;
+
+/// Follows a drive from rest: all its operating points, the one it comes to, and what can be asked about it.
+///
+/// # Errors
+///
+/// Everything that keeps the drive from being solved at all: parts that cannot be built, a chain that does not fit,
+/// several gears and none engaged. What only one question needs is refused by that question alone.
+pub fn solve(spec: &DriveSpec) -> Result<Solution, Vec<Fault>> {
+    Solution::from_rest(assembly::Assembly::new(spec)?)
+}
+
+/// Takes a drive at a stated speed: the sources give what is required there, each the same share of what it can, if
+/// that lies within what they can give or hold back.
+///
+/// # Errors
+///
+/// As [`solve`]; a speed stated at a part that does not stand in the drive, or not above zero.
+pub fn solve_at(spec: &DriveSpec, speed: StatedSpeed) -> Result<Solution, Vec<Fault>> {
+    let drive = assembly::Assembly::new(spec)?;
+    let x = drive.coordinate(&speed)?;
+    Ok(Solution::at_speed(drive, x))
+}
+
+/// The gears a drive can be in: the names all its gearboxes have; empty without a gearbox, or when it cannot be built.
+#[must_use]
+pub fn gears(spec: &DriveSpec) -> Vec<String> {
+    let built: Result<Vec<_>, _> = spec.parts.iter().map(|part| (part.row.build)(&part.values)).collect();
+    let Ok(models) = built else { return Vec::new() };
+    let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
+    chain::tree(&spec.chain, &roles, &models)
+        .map(|tree| assembly::gear_names(&tree, &models))
+        .unwrap_or_default()
+}

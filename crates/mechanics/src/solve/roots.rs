@@ -71,11 +71,14 @@ impl Task<'_> {
         self.curve.at(x).abs() <= TOUCH * (self.size)(x)
     }
 
-    /// All zeros on `from ..= to`.
-    pub fn roots(&self, from: f64, to: f64) -> Found {
+    /// All zeros on `from ..= to`, looked for first between these cuts, in any order.
+    pub fn roots_cut(&self, from: f64, to: f64, cuts: &[f64]) -> Found {
         let mut found = Found::default();
         let mut open: Vec<(f64, f64)> = Vec::new();
-        let mut stack = vec![(from, to)];
+        let mut borders: Vec<f64> = cuts.iter().copied().filter(|c| *c > from && *c < to).collect();
+        borders.extend([from, to]);
+        borders.sort_by(f64::total_cmp);
+        let mut stack: Vec<(f64, f64)> = borders.windows(2).map(|w| (w[0], w[1])).rev().collect();
         let mut left = BUDGET;
         while let Some((lo, hi)) = stack.pop() {
             if left == 0 {

@@ -1,0 +1,498 @@
+//! A drive put together: models, shafts with their fixed speed ratios, what each source gives on its supply.
+
+use super::chain::{Between, Hung, Tree, tree};
+use super::source::{SourceAt, sources};
+use crate::curve::Curve;
+use crate::drive::{Direction, DriveSpec, Port, StatedSpeed};
+use crate::fault::{Fault, FaultKind, Note};
+use crate::model::{Coupling, Known, Load, Model, Motion, Transmission};
+use crate::registry::Role;
+use crate::scalar::Real;
+
+/// A shaft.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Shaft {
+    /// Its motion.
+    pub motion: Motion,
+    /// Its speed per speed of the root, above 0.
+    pub speed: f64,
+    /// Inertia of everything on it.
+    pub inertia: f64,
+    /// 1 where the direction of motion is the positive sense of what hangs on it, else -1.
+    pub sense: f64,
+}
+
+/// Which end of a stage is away from the root.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum Far {
+    /// Its input: it stands on the side of the sources.
+    Input,
+    /// Its output: it stands on the side of the loads.
+    Output,
+}
+
+/// A transmission in place.
+pub(crate) struct Stage {
+    /// Where.
+    pub at: Between,
+    /// Index of the gear engaged.
+    pub gear: usize,
+    /// How it couples in this gear.
+    pub coupling: Coupling,
+    /// Its drag.
+    pub drag: Option<Box<dyn Curve>>,
+    /// Whether it can be left behind.
+    pub one_way: bool,
+    /// Which end is away from the root.
+    pub far: Far,
+}
+
+impl Stage {
+    /// Efficiency while power flows back; where it is not given, what holds until the question is refused.
+    fn backward(&self) -> f64 {
+        match self.coupling.backward {
+            Known::Value(value) => value,
+            Known::Missing(_) => 1.0,
+        }
+    }
+
+    /// Output effort per input effort while that is not below zero, and while it is.
+    pub fn gains(&self, back: bool) -> (f64, f64) {
+        let forth = self.coupling.effort * self.coupling.forward;
+        let returned = self.coupling.effort / self.backward();
+        if back { (returned, forth) } else { (forth, returned) }
+    }
+
+    /// Input effort per output effort while that is not below zero, and while it is.
+    pub fn needs(&self, back: bool) -> (f64, f64) {
+        let forth = 1.0 / (self.coupling.effort * self.coupling.forward);
+        let returned = self.backward() / self.coupling.effort;
+        if back { (returned, forth) } else { (forth, returned) }
+    }
+}
+
+/// A load in place.
+pub(crate) struct LoadAt {
+    /// Where.
+    pub at: Hung,
+    /// Effort over its own speed, in its own sense.
+    pub demand: Box<dyn Curve>,
+    /// 1 where the direction of motion is its positive sense, else -1.
+    pub sense: f64,
+}
+
+impl LoadAt {
+    /// Effort against the direction of motion at the speed in that direction.
+    pub fn effort<R: Real>(&self, speed: R) -> R {
+        if self.sense > 0.0 { speed.on(self.demand.as_ref()) } else { -(-speed).on(self.demand.as_ref()) }
+    }
+}
+
+/// A drive put together.
+pub(crate) struct Assembly {
+    /// What was asked.
+    pub spec: DriveSpec,
+    /// The models, one a part.
+    pub models: Vec<Model>,
+    /// Where everything stands.
+    pub tree: Tree,
+    /// The shafts.
+    pub shafts: Vec<Shaft>,
+    /// The transmissions.
+    pub stages: Vec<Stage>,
+    /// The sources.
+    pub sources: Vec<SourceAt>,
+    /// The loads.
+    pub loads: Vec<LoadAt>,
+    /// The shaft where everything is balanced.
+    pub root: usize,
+    /// Stages from the ends of the tree to the root.
+    pub order: Vec<usize>,
+    /// The set speed, as a speed of the root.
+    pub set: Option<f64>,
+    /// A speed of the root of the order of the highest useful one.
+    pub scale: f64,
+    /// Inertias that are not given.
+    pub missing_inertia: Vec<Fault>,
+}
+
+impl Assembly {
+    /// Puts a drive together.
+    pub fn new(spec: &DriveSpec) -> Result<Self, Vec<Fault>> {
+        let models = models(spec)?;
+        let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
+        let tree = tree(&spec.chain, &roles, &models)?;
+        let gears = gears_engaged(spec, &tree, &models)?;
+        let root = root(&tree, &models);
+        let (far, order) = directed(&tree, root);
+        let stages = stages(&tree, &models, &gears, &far);
+        self_locking_in_branch(&stages, &models)?;
+        let mut shafts = shafts(&tree, &stages, &order, root);
+        turn(&mut shafts, &tree, spec.settings.direction);
+        let missing_inertia = inertias(&mut shafts, &tree, &models);
+        let loads: Vec<LoadAt> = tree
+            .loads
+            .iter()
+            .filter_map(|at| {
+                let Model::Load(load) = &models[at.part] else { return None };
+                Some(LoadAt { at: *at, demand: load.demand(), sense: shafts[at.shaft].sense })
+            })
+            .collect();
+        let mut drive = Self {
+            spec: spec.clone(),
+            models,
+            tree,
+            shafts,
+            stages,
+            sources: Vec::new(),
+            loads,
+            root,
+            order,
+            set: None,
+            scale: 1.0,
+            missing_inertia,
+        };
+        drive.set = match &spec.settings.set_speed {
+            Some(stated) => Some(drive.coordinate(stated)?),
+            None => None,
+        };
+        drive.sources = sources(&drive)?;
+        drive.scale = drive.natural_scale();
+        Ok(drive)
+    }
+
+    /// The transmission of a stage.
+    pub fn transmission(&self, stage: &Stage) -> Option<&dyn Transmission> {
+        match &self.models[stage.at.part] {
+            Model::Transmission(model) => Some(model.as_ref()),
+            _ => None,
+        }
+    }
+
+    /// The model of a load.
+    pub fn load(&self, load: &LoadAt) -> Option<&dyn Load> {
+        match &self.models[load.at.part] {
+            Model::Load(model) => Some(model.as_ref()),
+            _ => None,
+        }
+    }
+
+    /// The shaft at a side of a part; the usual side of its role when none is named, the first load for the drive.
+    pub fn shaft_of(&self, part: Option<usize>, port: Option<Port>) -> Option<usize> {
+        let Some(part) = part else { return self.tree.loads.first().map(|load| load.shaft) };
+        if let Some(hung) = self.tree.sources.iter().chain(&self.tree.loads).find(|h| h.part == part) {
+            return Some(hung.shaft);
+        }
+        let stage = self.tree.stages.iter().find(|s| s.part == part)?;
+        Some(if port == Some(Port::Input) { stage.input } else { stage.output })
+    }
+
+    /// A stated speed as a speed of the root.
+    pub fn coordinate(&self, stated: &StatedSpeed) -> Result<f64, Vec<Fault>> {
+        let wrong = |how| vec![Fault { part: stated.part, kind: FaultKind::Chain { how: Note::plain(how) } }];
+        let shaft = match self.shaft_of(stated.part, stated.port) {
+            Some(shaft) => shaft,
+            None => return Err(wrong("a speed is stated at a part that does not stand in this drive")),
+        };
+        let x = stated.speed / self.shafts[shaft].speed;
+        if x > 0.0 && x.is_finite() {
+            Ok(x)
+        } else {
+            Err(wrong("a stated speed must be above zero: it is counted in the direction of motion"))
+        }
+    }
+
+    fn natural_scale(&self) -> f64 {
+        let mut scale = self.set.unwrap_or(0.0);
+        for source in &self.sources {
+            if let Some(character) = &source.character {
+                scale = f64::max(scale, character.top_speed / self.shafts[source.at.shaft].speed);
+            }
+        }
+        for load in &self.loads {
+            if let Some(usual) = self.load(load).and_then(|l| l.usual_speed()) {
+                scale = f64::max(scale, usual / self.shafts[load.at.shaft].speed);
+            }
+        }
+        if scale > 0.0 && scale.is_finite() { scale } else { 1000.0 }
+    }
+
+    /// Speeds of the root at which the net effort jumps, rising.
+    pub fn jumps(&self) -> Vec<f64> {
+        let mut jumps = Vec::new();
+        for source in &self.sources {
+            let speed = self.shafts[source.at.shaft].speed;
+            jumps.extend(source.jumps().into_iter().map(|w| w / speed));
+        }
+        for load in &self.loads {
+            let factor = load.sense / self.shafts[load.at.shaft].speed;
+            jumps.extend(load.demand.jumps().into_iter().map(|w| w * factor));
+        }
+        for stage in &self.stages {
+            let speed = self.shafts[stage.at.input].speed;
+            jumps.extend(stage.drag.iter().flat_map(|d| d.jumps()).map(|w| w / speed));
+        }
+        jumps.retain(|x| x.is_finite());
+        jumps.sort_by(f64::total_cmp);
+        jumps.dedup_by(|a, b| (*a - *b).abs() <= 4.0 * super::BESIDE * b.abs());
+        jumps
+    }
+
+    /// Speeds of the root at which the slope jumps, rising; not all.
+    pub fn kinks(&self) -> Vec<f64> {
+        let mut kinks = Vec::new();
+        for source in &self.sources {
+            let speed = self.shafts[source.at.shaft].speed;
+            kinks.extend(source.kinks().into_iter().map(|w| w / speed));
+        }
+        for load in &self.loads {
+            let factor = load.sense / self.shafts[load.at.shaft].speed;
+            kinks.extend(load.demand.kinks().into_iter().map(|w| w * factor));
+        }
+        kinks.retain(|x| x.is_finite());
+        kinks.sort_by(f64::total_cmp);
+        kinks
+    }
+}
+
+fn models(spec: &DriveSpec) -> Result<Vec<Model>, Vec<Fault>> {
+    let mut models = Vec::with_capacity(spec.parts.len());
+    let mut faults = Vec::new();
+    for (index, part) in spec.parts.iter().enumerate() {
+        match (part.row.build)(&part.values) {
+            Ok(model) => models.push(model),
+            Err(found) => {
+                faults.extend(found.into_iter().map(|f| Fault { part: f.part.or(Some(index)), ..f }));
+            }
+        }
+    }
+    if faults.is_empty() { Ok(models) } else { Err(faults) }
+}
+
+/// The names of the gears a drive can be in: those all its gearboxes have.
+pub(crate) fn gear_names(tree: &Tree, models: &[Model]) -> Vec<String> {
+    let mut common: Option<Vec<String>> = None;
+    for stage in &tree.stages {
+        let Model::Transmission(model) = &models[stage.part] else { continue };
+        let names = model.gears();
+        if names.is_empty() {
+            continue;
+        }
+        common = Some(match common {
+            None => names,
+            Some(so_far) => so_far.into_iter().filter(|name| names.contains(name)).collect(),
+        });
+    }
+    common.unwrap_or_default()
+}
+
+/// The gear of every stage.
+fn gears_engaged(spec: &DriveSpec, tree: &Tree, models: &[Model]) -> Result<Vec<usize>, Vec<Fault>> {
+    let mut engaged = Vec::new();
+    let mut faults = Vec::new();
+    for stage in &tree.stages {
+        let Model::Transmission(model) = &models[stage.part] else { continue };
+        let names = model.gears();
+        let kind = match (&spec.settings.gear, names.len()) {
+            (_, 0) | (None, 1) => {
+                engaged.push(0);
+                continue;
+            }
+            (Some(gear), _) => match names.iter().position(|name| name == gear) {
+                Some(index) => {
+                    engaged.push(index);
+                    continue;
+                }
+                None => FaultKind::Chain {
+                    how: Note::plain("this gearbox has no gear of the name the drive engages"),
+                },
+            },
+            (None, _) => FaultKind::Missing {
+                any_of: vec![vec!["gear"]],
+                why: Note::plain("the gearbox has several gears and none is chosen silently"),
+            },
+        };
+        faults.push(Fault { part: Some(stage.part), kind });
+    }
+    if faults.is_empty() { Ok(engaged) } else { Err(faults) }
+}
+
+/// The stages on the way from a shaft to the first load, or to the root of its part of the tree.
+fn way(tree: &Tree, from: usize, to: usize) -> Vec<usize> {
+    let mut came: Vec<Option<Option<usize>>> = vec![None; tree.shafts.len()];
+    came[from] = Some(None);
+    let mut queue = vec![from];
+    let mut next = 0;
+    while next < queue.len() {
+        let shaft = queue[next];
+        next += 1;
+        for (index, stage) in tree.stages.iter().enumerate() {
+            let other = if stage.input == shaft {
+                stage.output
+            } else if stage.output == shaft {
+                stage.input
+            } else {
+                continue;
+            };
+            if came[other].is_none() {
+                came[other] = Some(Some(index));
+                queue.push(other);
+            }
+        }
+    }
+    let mut path = Vec::new();
+    let mut at = to;
+    while let Some(Some(index)) = came[at] {
+        path.push(index);
+        let stage = &tree.stages[index];
+        at = if stage.input == at { stage.output } else { stage.input };
+    }
+    path.reverse();
+    path
+}
+
+/// Where to balance: on the shaft at which the ways of all sources to the first load have met, so that a single
+/// source is balanced at its own shaft; but behind the last freewheel on the common way.
+fn root(tree: &Tree, models: &[Model]) -> usize {
+    let goal = tree.loads[0].shaft;
+    let ways: Vec<Vec<usize>> = tree.sources.iter().map(|s| way(tree, s.shaft, goal)).collect();
+    let mut common = 0;
+    while ways
+        .iter()
+        .all(|w| w.len() > common && w[w.len() - 1 - common] == ways[0][ways[0].len() - 1 - common])
+    {
+        common += 1;
+    }
+    let shared = &ways[0][ways[0].len() - common..];
+    let mut root = shared.first().map_or(goal, |index| tree.stages[*index].input);
+    for index in shared {
+        let stage = &tree.stages[*index];
+        if matches!(&models[stage.part], Model::Transmission(t) if t.one_way()) {
+            root = stage.output;
+        }
+    }
+    root
+}
+
+/// Which end of each stage is away from the root, and the stages from the ends to the root.
+fn directed(tree: &Tree, root: usize) -> (Vec<Far>, Vec<usize>) {
+    let mut far = vec![Far::Output; tree.stages.len()];
+    let mut seen = vec![false; tree.stages.len()];
+    let mut order = Vec::with_capacity(tree.stages.len());
+    let mut touching: Vec<Vec<usize>> = vec![Vec::new(); tree.shafts.len()];
+    for (index, stage) in tree.stages.iter().enumerate() {
+        touching[stage.input].push(index);
+        touching[stage.output].push(index);
+    }
+    let mut queue = vec![root];
+    let mut next = 0;
+    while next < queue.len() {
+        let shaft = queue[next];
+        next += 1;
+        for index in &touching[shaft] {
+            if seen[*index] {
+                continue;
+            }
+            seen[*index] = true;
+            let stage = &tree.stages[*index];
+            far[*index] = if stage.input == shaft { Far::Output } else { Far::Input };
+            queue.push(if stage.input == shaft { stage.output } else { stage.input });
+            order.push(*index);
+        }
+    }
+    order.reverse();
+    (far, order)
+}
+
+fn stages(tree: &Tree, models: &[Model], gears: &[usize], far: &[Far]) -> Vec<Stage> {
+    let mut stages = Vec::with_capacity(tree.stages.len());
+    for (index, at) in tree.stages.iter().enumerate() {
+        let Model::Transmission(model) = &models[at.part] else { continue };
+        stages.push(Stage {
+            at: *at,
+            gear: gears[index],
+            coupling: model.coupling(gears[index]),
+            drag: model.drag(),
+            one_way: model.one_way(),
+            far: far[index],
+        });
+    }
+    stages
+}
+
+/// A self-locking stage between two sources cannot be solved from its source side.
+fn self_locking_in_branch(stages: &[Stage], models: &[Model]) -> Result<(), Vec<Fault>> {
+    let locked = |stage: &&Stage| {
+        stage.far == Far::Input
+            && matches!(stage.coupling.backward, Known::Value(value) if value <= 0.0)
+            && matches!(models[stage.at.part], Model::Transmission(_))
+    };
+    match stages.iter().find(locked) {
+        None => Ok(()),
+        Some(stage) => {
+            let how = "a self-locking stage in one of several joined branches is not covered: put it behind the \
+                       shaft where they meet";
+            Err(vec![Fault { part: Some(stage.at.part), kind: FaultKind::Chain { how: Note::plain(how) } }])
+        }
+    }
+}
+
+fn shafts(tree: &Tree, stages: &[Stage], order: &[usize], root: usize) -> Vec<Shaft> {
+    let blank = |motion: &Motion| Shaft { motion: *motion, speed: 1.0, inertia: 0.0, sense: 1.0 };
+    let mut shafts: Vec<Shaft> = tree.shafts.iter().map(blank).collect();
+    shafts[root].speed = 1.0;
+    for index in order.iter().rev() {
+        let stage = &stages[*index];
+        let flip = if stage.coupling.reverses { -1.0 } else { 1.0 };
+        match stage.far {
+            Far::Output => {
+                let near = shafts[stage.at.input];
+                let far = &mut shafts[stage.at.output];
+                far.speed = near.speed / stage.coupling.speed;
+                far.sense = near.sense * flip;
+            }
+            Far::Input => {
+                let near = shafts[stage.at.output];
+                let far = &mut shafts[stage.at.input];
+                far.speed = near.speed * stage.coupling.speed;
+                far.sense = near.sense * flip;
+            }
+        }
+    }
+    shafts
+}
+
+/// Turns all shafts so that the first load moves the way that is asked for.
+fn turn(shafts: &mut [Shaft], tree: &Tree, direction: Direction) {
+    let wanted = if direction == Direction::Forward { 1.0 } else { -1.0 };
+    let flip = wanted * shafts[tree.loads[0].shaft].sense;
+    for shaft in shafts {
+        shaft.sense *= flip;
+    }
+}
+
+fn inertias(shafts: &mut [Shaft], tree: &Tree, models: &[Model]) -> Vec<Fault> {
+    let mut faults = Vec::new();
+    let mut put = |shaft: usize, count: f64, part: usize, known: Known| match known {
+        Known::Value(value) => shafts[shaft].inertia += count * value,
+        Known::Missing(field) => {
+            let why = Note::plain("run-up and stop need every inertia; a missing one is not zero");
+            let kind = FaultKind::Missing { any_of: vec![vec![field]], why };
+            faults.push(Fault { part: Some(part), kind });
+        }
+    };
+    for hung in tree.sources.iter().chain(&tree.loads) {
+        match &models[hung.part] {
+            Model::Source(source) => put(hung.shaft, hung.count, hung.part, source.inertia()),
+            Model::Load(load) => put(hung.shaft, hung.count, hung.part, load.inertia()),
+            _ => {}
+        }
+    }
+    for stage in &tree.stages {
+        if let Model::Transmission(model) = &models[stage.part] {
+            put(stage.input, stage.count, stage.part, model.input_inertia());
+            put(stage.output, stage.count, stage.part, model.output_inertia());
+        }
+    }
+    faults
+}

@@ -1,0 +1,386 @@
+//! What a part of a solved drive answers: speeds, efforts and powers of its stations, and its own results.
+
+use super::answers::{Solution, absent};
+use super::assembly::{LoadAt, Stage};
+use super::extreme::greatest;
+use super::points::pieces;
+use super::source::SourceAt;
+use super::state::State;
+use crate::curve::Law;
+use crate::drive::Port;
+use crate::fault::{Fault, FaultKind, Note};
+use crate::model::{Drawn, Known, LoadState, Model, SourceState, TransmissionState};
+use crate::scalar::Real;
+use crate::solution::{Answer, Marks, Mode};
+
+impl Solution {
+    pub(super) fn of_part(&self, part: usize, port: Option<Port>, name: &str) -> Answer {
+        let Some(row) = self.drive.spec.parts.get(part).map(|p| p.row) else { return Answer::NoSuch };
+        let answer = if let Some(index) = self.drive.sources.iter().position(|s| s.at.part == part) {
+            self.of_source(index, name)
+        } else if let Some(index) = self.drive.stages.iter().position(|s| s.at.part == part) {
+            self.of_stage(index, port, name)
+        } else if let Some(index) = self.drive.loads.iter().position(|l| l.at.part == part) {
+            self.of_load(index, name)
+        } else if let Some(Model::Supply(_)) = self.drive.models.get(part) {
+            self.of_supply(part, name)
+        } else {
+            return Answer::NoSuch;
+        };
+        match answer {
+            Ok(Answer::NoSuch) => {
+                let given = (row.given)(&self.drive.spec.parts[part].values);
+                let kind = row.results.iter().find(|r| r.name == name).and_then(|r| match r.shape {
+                    crate::registry::ResultShape::Quantity(kind) => Some(kind),
+                    _ => None,
+                });
+                match (given.iter().find(|(n, _)| *n == name), kind) {
+                    (Some((_, si)), Some(kind)) => self.quantity(*si, kind, Marks::default()),
+                    _ => Answer::NoSuch,
+                }
+            }
+            Ok(answer) | Err(answer) => answer,
+        }
+    }
+
+    /// Whether a word names the effort of this motion; the other motion's word is no such result.
+    fn effort_word(&self, shaft: usize, name: &str) -> bool {
+        self.drive.shafts[shaft].motion.effort_kind() == name
+    }
+
+    fn effort(&self, shaft: usize, effort: f64, marks: Marks) -> Result<Answer, Answer> {
+        if effort.is_nan() {
+            return Err(absent(
+                "at rest the efforts behind a fork are not settled: friction holds part of them",
+            ));
+        }
+        Ok(self.quantity(effort.abs(), self.drive.shafts[shaft].motion.effort_kind(), marks))
+    }
+
+    fn of_source(&self, index: usize, name: &str) -> Result<Answer, Answer> {
+        let source = &self.drive.sources[index];
+        let shaft = source.at.shaft;
+        let kind = self.drive.shafts[shaft].motion.speed_kind();
+        match name {
+            "speed" => return self.speed(Some(source.at.part), None),
+            "highest_speed" => return self.highest_speed(Some(source.at.part), None),
+            "peak_power" => {
+                return Ok(self.quantity(self.source_peak(source)?.1, "mechanical_power", Marks::default()));
+            }
+            "peak_power_speed" => {
+                return Ok(self.quantity(self.source_peak(source)?.0, kind, Marks::default()));
+            }
+            _ => {}
+        }
+        if !self.known_of_source(source, name) {
+            return Ok(Answer::NoSuch);
+        }
+        let here = self.here()?;
+        let behind = here.behind[shaft];
+        let effort = if behind { 0.0 } else { here.flow.sources[index] };
+        let speed = here.x * self.drive.shafts[shaft].speed;
+        match name {
+            "power" => Ok(self.quantity((effort * speed).abs(), "mechanical_power", here.marks)),
+            "power_share" => {
+                let share = (effort * speed).abs() / self.source_peak(source)?.1;
+                Ok(self.quantity(share, "percentage", here.marks))
+            }
+            "mode" => Ok(Answer::Word(source_mode(here, source, effort, behind))),
+            "load_share" => self.load_share(here, effort * speed * source.at.count),
+            "torque_reserve" | "force_reserve" => self.reserve(here, source, effort, speed),
+            "current" | "voltage" | "input_power" | "efficiency" => {
+                if behind {
+                    return Err(absent("its freewheel leaves it behind: it gives nothing"));
+                }
+                self.electrical(here, source, effort, speed, name)
+            }
+            _ if self.effort_word(shaft, name) => self.effort(shaft, effort, here.marks),
+            _ => {
+                let Model::Source(model) = &self.drive.models[source.at.part] else {
+                    return Ok(Answer::NoSuch);
+                };
+                let state = SourceState { speed, effort, feed: &source.feed };
+                Ok(model.answer(name, &state).unwrap_or(Answer::NoSuch))
+            }
+        }
+    }
+
+    /// Whether a source has a result of this name at all.
+    fn known_of_source(&self, source: &SourceAt, name: &str) -> bool {
+        let own = self.drive.spec.parts[source.at.part].row.results.iter().any(|r| r.name == name);
+        let common = ["power", "power_share", "mode", "load_share"].contains(&name);
+        let reserve = match self.drive.shafts[source.at.shaft].motion {
+            crate::model::Motion::Rotary => "torque_reserve",
+            crate::model::Motion::Linear => "force_reserve",
+        };
+        let electrical = ["current", "voltage", "input_power", "efficiency"].contains(&name);
+        own || common || electrical || name == reserve || self.effort_word(source.at.shaft, name)
+    }
+
+    /// Speed and power of a source's peak.
+    fn source_peak(&self, source: &SourceAt) -> Result<(f64, f64), Answer> {
+        let Some(character) = &source.character else { return Err(absent("this source is off")) };
+        let mut jumps = character.drive.jumps();
+        jumps.extend(character.drive.kinks());
+        jumps.sort_by(f64::total_cmp);
+        match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, 4.0 * character.top_speed)) {
+            Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
+            _ => Err(absent("this source gives no power at any speed")),
+        }
+    }
+
+    /// Its share of the power of all sources.
+    fn load_share(&self, here: &State, power: f64) -> Result<Answer, Answer> {
+        let all = here.source_power(&self.drive);
+        if all == 0.0 || here.x == 0.0 {
+            return Err(absent("the sources give no power here"));
+        }
+        Ok(self.quantity(power / all, "percentage", here.marks))
+    }
+
+    /// The most it can give (or hold back) here over what it gives.
+    fn reserve(&self, here: &State, source: &SourceAt, effort: f64, speed: f64) -> Result<Answer, Answer> {
+        let most = if effort >= 0.0 { source.most(speed) } else { source.braking(speed) };
+        if effort == 0.0 || most == 0.0 {
+            return Err(absent("it gives nothing here"));
+        }
+        // Below zero speed the curve itself is what it pushes with.
+        let ratio = f64::max(most / effort.abs(), 1.0);
+        Ok(self.quantity(ratio, "number", here.marks))
+    }
+
+    fn drawn(&self, source: &SourceAt, effort: f64, speed: f64) -> Drawn<f64> {
+        source.draw.as_ref().map_or(Drawn::NOTHING, |draw| draw.at(speed, effort))
+    }
+
+    fn electrical(
+        &self,
+        here: &State,
+        source: &SourceAt,
+        effort: f64,
+        speed: f64,
+        name: &str,
+    ) -> Result<Answer, Answer> {
+        if source.character.is_none() {
+            return Err(absent("this source is off"));
+        }
+        let drawn = self.drawn(source, effort, speed);
+        let unknown = || absent("its data do not say it: no electrical side is made up from a torque curve");
+        let (value, kind) = match name {
+            "current" => (drawn.current.map(f64::abs), "current"),
+            "voltage" => (drawn.voltage, "voltage"),
+            "input_power" => (drawn.input_power.map(f64::abs), "electrical_power"),
+            _ => {
+                let input = drawn.input_power.ok_or_else(unknown)?;
+                let output = effort * speed;
+                let share = if input > 0.0 { output / input } else { input / output };
+                if !(share.is_finite() && share > 0.0) {
+                    return Err(absent("all the power put in is lost in the machine"));
+                }
+                (Some(share), "percentage")
+            }
+        };
+        Ok(self.quantity(value.ok_or_else(unknown)?, kind, here.marks))
+    }
+
+    fn of_supply(&self, part: usize, name: &str) -> Result<Answer, Answer> {
+        let Model::Supply(model) = &self.drive.models[part] else { return Ok(Answer::NoSuch) };
+        let own = self.drive.spec.parts[part].row.results.iter().any(|r| r.name == name);
+        if !own && !["current", "voltage", "power"].contains(&name) {
+            return Ok(Answer::NoSuch);
+        }
+        let here = self.here()?;
+        let mut current = 0.0;
+        for (source, effort) in self.drive.sources.iter().zip(&here.flow.sources) {
+            if source.supply != Some(part) || source.character.is_none() {
+                continue;
+            }
+            let behind = here.behind[source.at.shaft];
+            let speed = here.x * self.drive.shafts[source.at.shaft].speed;
+            let drawn = self.drawn(source, if behind { 0.0 } else { *effort }, speed);
+            let Some(each) = drawn.supply_current else {
+                return Err(absent("a source on this supply does not know its current"));
+            };
+            current += each * source.at.count;
+        }
+        let voltage = model.terminal(current);
+        match name {
+            "current" => Ok(self.quantity(current.abs(), "current", here.marks)),
+            "voltage" => Ok(self.quantity(voltage, "voltage", here.marks)),
+            "power" => Ok(self.quantity((voltage * current).abs(), "electrical_power", here.marks)),
+            _ => Ok(model.answer(name, current).unwrap_or(Answer::NoSuch)),
+        }
+    }
+
+    /// A transmission's place in the solved drive, of each of equal parts.
+    pub(super) fn stage_state(&self, here: &State, index: usize) -> TransmissionState {
+        let stage = &self.drive.stages[index];
+        let through = &here.flow.through[index];
+        let behind = here.behind[stage.at.input];
+        let count = stage.at.count;
+        TransmissionState {
+            input_speed: here.x * self.drive.shafts[stage.at.input].speed,
+            input_effort: if behind { 0.0 } else { (through.input + through.hold) / count },
+            output_speed: here.x * self.drive.shafts[stage.at.output].speed,
+            output_effort: if behind { 0.0 } else { through.output / count },
+            gear: stage.gear,
+        }
+    }
+
+    fn of_stage(&self, index: usize, port: Option<Port>, name: &str) -> Result<Answer, Answer> {
+        let stage = &self.drive.stages[index];
+        let part = Some(stage.at.part);
+        let input = port == Some(Port::Input);
+        let shaft = if input { stage.at.input } else { stage.at.output };
+        match name {
+            "speed" => return self.speed(part, port),
+            "highest_speed" => return self.highest_speed(part, port),
+            "holding_reserve" => return self.holding_reserve(stage),
+            "grip_reserve" => return self.grip_reserve(index),
+            _ => {}
+        }
+        let own = self.drive.spec.parts[stage.at.part].row.results.iter().any(|r| r.name == name);
+        if !own && !["power", "efficiency"].contains(&name) && !self.effort_word(shaft, name) {
+            return Ok(Answer::NoSuch);
+        }
+        let here = self.here()?;
+        let state = self.stage_state(here, index);
+        let (speed, effort) = if input {
+            (state.input_speed, state.input_effort)
+        } else {
+            (state.output_speed, state.output_effort)
+        };
+        match name {
+            "power" => Ok(self.quantity((speed * effort).abs(), "mechanical_power", here.marks)),
+            "efficiency" => {
+                let (given, taken) =
+                    (state.input_speed * state.input_effort, state.output_speed * state.output_effort);
+                let share = if given > 0.0 { taken / given } else { given / taken };
+                if share.is_finite() && share > 0.0 {
+                    Ok(self.quantity(share, "percentage", here.marks))
+                } else {
+                    Err(absent("no power passes through"))
+                }
+            }
+            _ if self.effort_word(shaft, name) => self.effort(shaft, effort, here.marks),
+            _ => Ok(self
+                .drive
+                .transmission(stage)
+                .and_then(|model| model.answer(name, &state))
+                .unwrap_or(Answer::NoSuch)),
+        }
+    }
+
+    /// Static effort of the loads at a shaft, losses left out.
+    pub(super) fn static_effort(&self, shaft: usize) -> f64 {
+        let mut sum = 0.0;
+        for load in &self.drive.loads {
+            let Some(model) = self.drive.load(load) else { continue };
+            let ratio = self.drive.shafts[load.at.shaft].speed / self.drive.shafts[shaft].speed;
+            sum += load.sense * model.standstill().holding * load.at.count * ratio;
+        }
+        sum
+    }
+
+    /// Brake effort over the static effort there.
+    fn holding_reserve(&self, stage: &Stage) -> Result<Answer, Answer> {
+        let Some(brake) = self.drive.transmission(stage).and_then(|t| t.brake()) else {
+            return Ok(Answer::NoSuch);
+        };
+        let hold = self.static_effort(stage.at.input).abs();
+        if hold == 0.0 {
+            return Err(absent("the load does not pull at rest: there is nothing to hold"));
+        }
+        Ok(self.quantity(brake.effort * stage.at.count / hold, "number", Marks::default()))
+    }
+
+    /// The force the ground can take over the force at the wheel.
+    fn grip_reserve(&self, index: usize) -> Result<Answer, Answer> {
+        let stage = &self.drive.stages[index];
+        let Some(most) = self.grip_force(stage)? else { return Ok(Answer::NoSuch) };
+        let here = self.here()?;
+        let asked = here.flow.through[index].output.abs();
+        if asked == 0.0 || asked.is_nan() {
+            return Err(absent("the wheel passes no force here"));
+        }
+        Ok(self.quantity(most / asked, "number", here.marks))
+    }
+
+    /// The force the ground can take; none without a wheel.
+    pub(super) fn grip_force(&self, stage: &Stage) -> Result<Option<f64>, Answer> {
+        let Some(grip) = self.drive.transmission(stage).and_then(|t| t.grip()) else { return Ok(None) };
+        let share = match grip.share {
+            Known::Value(share) => share,
+            Known::Missing(field) => {
+                let why = Note::plain("the grip of a wheel needs the share of the weight that presses on it");
+                let kind = FaultKind::Missing { any_of: vec![vec![field]], why };
+                return Err(Answer::Refused(vec![Fault { part: Some(stage.at.part), kind }]));
+            }
+        };
+        let on_it = |load: &&LoadAt| load.at.shaft == stage.at.output;
+        let weight = self.drive.loads.iter().filter(on_it).filter_map(|load| {
+            self.drive.load(load).and_then(|l| l.weight_on_ground()).map(|w| w * load.at.count)
+        });
+        let weight: f64 = weight.sum();
+        if weight > 0.0 {
+            Ok(Some(grip.friction * share * weight))
+        } else {
+            Err(absent("nothing behind this wheel knows the weight it runs under"))
+        }
+    }
+
+    fn of_load(&self, index: usize, name: &str) -> Result<Answer, Answer> {
+        let load = &self.drive.loads[index];
+        let part = Some(load.at.part);
+        match name {
+            "speed" => return self.speed(part, None),
+            "highest_speed" => return self.highest_speed(part, None),
+            _ => {}
+        }
+        let own = self.drive.spec.parts[load.at.part].row.results.iter().any(|r| r.name == name);
+        let shaft = load.at.shaft;
+        if !own && name != "power" && !self.effort_word(shaft, name) {
+            return Ok(Answer::NoSuch);
+        }
+        let here = self.here()?;
+        let speed = here.x * self.drive.shafts[shaft].speed;
+        let effort = here.flow.loads[index];
+        match name {
+            "power" => Ok(self.quantity((speed * effort).abs(), "mechanical_power", here.marks)),
+            _ if self.effort_word(shaft, name) => self.effort(shaft, effort, here.marks),
+            _ => {
+                let state = LoadState { speed: load.sense * speed, effort: load.sense * effort };
+                Ok(self
+                    .drive
+                    .load(load)
+                    .and_then(|model| model.answer(name, &state))
+                    .unwrap_or(Answer::NoSuch))
+            }
+        }
+    }
+}
+
+/// How power flows at one source.
+fn source_mode(here: &State, source: &SourceAt, effort: f64, behind: bool) -> &'static str {
+    let mode = if here.x == 0.0 {
+        Mode::Standstill
+    } else if here.x < 0.0 {
+        Mode::DrivenBack
+    } else if behind || source.character.is_none() || effort == 0.0 {
+        Mode::Freewheeling
+    } else if effort > 0.0 {
+        Mode::Motoring
+    } else {
+        Mode::Braking
+    };
+    mode.word()
+}
+
+/// The most power of one source over its speed.
+struct SourcePeak<'a>(&'a SourceAt);
+
+impl Law for SourcePeak<'_> {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        self.0.most(speed) * speed
+    }
+}

@@ -1,0 +1,143 @@
+//! What a drive does when it is switched on at rest, and the point it comes to.
+
+use super::assembly::Assembly;
+use super::flow::{Acting, Flow, flow};
+use super::points::{Meet, Net, meets, range};
+use super::roots::Crossing;
+use super::state::unknowns;
+use crate::curve::Law;
+use crate::fault::{Fault, FaultKind, Note};
+use crate::scalar::Real;
+use crate::solution::Outcome;
+
+/// What happens from rest.
+pub(crate) struct Path {
+    /// What it does.
+    pub outcome: Outcome,
+    /// Whether it goes against the direction asked for.
+    pub back: bool,
+    /// All meetings in the direction it goes, rising in speed.
+    pub meets: Vec<Meet>,
+    /// The first one met from rest.
+    pub reached: Option<usize>,
+    /// The speed from which sources drive: zero, or that of an idling engine.
+    pub start: f64,
+    /// Fields without which this cannot be said.
+    pub refused: Vec<Fault>,
+    /// What the solver could not decide.
+    pub unsettled: Option<Fault>,
+}
+
+/// Everything about to move from rest: loads at breakaway, sources at full command or off.
+struct AtRest<'a> {
+    drive: &'a Assembly,
+    back: bool,
+    powered: bool,
+}
+
+impl<R: Real> Acting<R> for AtRest<'_> {
+    fn source(&self, index: usize, speed: R) -> R {
+        let source = &self.drive.sources[index];
+        if !self.powered {
+            return R::of(0.0);
+        }
+        // An idling engine pushes through its clutch with what it gives at idle.
+        match source.character.as_ref().and_then(|c| c.idle) {
+            Some(idle) => source.effort(R::of(idle)),
+            None => source.effort(speed),
+        }
+    }
+
+    fn load(&self, index: usize, _: R) -> R {
+        let load = &self.drive.loads[index];
+        let Some(model) = self.drive.load(load) else { return R::of(0.0) };
+        let rest = model.standstill();
+        R::of(match (load.sense > 0.0, self.back) {
+            (true, false) => rest.breakaway_forward,
+            (true, true) => rest.breakaway_reverse,
+            (false, false) => -rest.breakaway_reverse,
+            (false, true) => -rest.breakaway_forward,
+        })
+    }
+}
+
+/// Efforts at rest, about to move one way or the other.
+pub(crate) fn about_to_move(drive: &Assembly, back: bool, powered: bool) -> Flow<f64> {
+    let (near, _) = range(drive);
+    let x = if back { -near } else { near };
+    flow(drive, x, back, &AtRest { drive, back, powered })
+}
+
+/// Speed of the root at which an engine idles; zero without one.
+fn idle(drive: &Assembly) -> f64 {
+    let speed = |s: &super::source::SourceAt| {
+        s.character.as_ref().and_then(|c| c.idle).map(|idle| idle / drive.shafts[s.at.shaft].speed)
+    };
+    drive.sources.iter().filter_map(speed).fold(0.0, f64::max)
+}
+
+/// Follows the drive from rest.
+pub(crate) fn path(drive: &Assembly) -> Path {
+    let start = idle(drive);
+    let ahead = about_to_move(drive, false, true);
+    let net = Net { drive, back: false };
+    let (near, far) = range(drive);
+    let from = f64::max(start, near);
+    let forward = meets(drive, false, from);
+    let unsettled = forward.undecided.map(undecided);
+    let mut path = Path {
+        outcome: Outcome::Stalls,
+        back: false,
+        meets: forward.all,
+        reached: None,
+        start,
+        refused: Vec::new(),
+        unsettled,
+    };
+    if ahead.net > 0.0 && net.eval(from) > 0.0 {
+        let alone = about_to_move(drive, false, false);
+        let self_moving = alone.net > 0.0;
+        if self_moving {
+            path.refused = unknowns(drive, near, &alone);
+        }
+        path.reached = path.meets.iter().position(|m| m.crossing != Crossing::Rising);
+        path.outcome = match (path.reached, self_moving) {
+            (None, _) => Outcome::Runaway,
+            (Some(_), true) => Outcome::SelfMoving,
+            (Some(_), false) => Outcome::Starts,
+        };
+        if path.reached.is_none() {
+            let end = flow(drive, far, false, &super::points::Full(drive));
+            path.refused.extend(unknowns(drive, far, &end));
+        }
+        return path;
+    }
+    let behind = about_to_move(drive, true, true);
+    if behind.net < 0.0 {
+        driven_back(drive, &mut path, &behind);
+    }
+    path
+}
+
+/// The load wins: follows it backwards.
+fn driven_back(drive: &Assembly, path: &mut Path, behind: &Flow<f64>) {
+    let (near, far) = range(drive);
+    path.refused = unknowns(drive, -near, behind);
+    let found = meets(drive, true, 0.0);
+    path.unsettled = path.unsettled.take().or(found.undecided.map(undecided));
+    path.back = true;
+    path.meets = found.all;
+    path.reached = path.meets.iter().rposition(|m| m.crossing != Crossing::Rising);
+    path.outcome = if path.reached.is_some() { Outcome::DrivenBack } else { Outcome::Runaway };
+    if path.reached.is_none() {
+        let end = flow(drive, -far, true, &super::points::Full(drive));
+        path.refused.extend(unknowns(drive, -far, &end));
+    }
+}
+
+fn undecided((lo, hi): (f64, f64)) -> Fault {
+    let template = "between {0} and {1} at the shaft of the source the bounds on the efforts did not settle whether \
+                    there is an operating point";
+    let how = Note { template, quantities: vec![(lo, "rotational_speed"), (hi, "rotational_speed")] };
+    Fault { part: None, kind: FaultKind::Unsettled { how } }
+}

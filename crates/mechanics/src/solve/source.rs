@@ -1,0 +1,198 @@
+//! A source in its place: what it hangs on, what it gives at full command, and how a set speed bounds it.
+
+use super::assembly::Assembly;
+use super::chain::Hung;
+use crate::fault::{Fault, FaultKind, Note};
+use crate::model::{Braking, Characteristic, Draw, Feed, Model, Supply};
+use crate::scalar::Real;
+use crate::values::FieldValue;
+
+/// A source in place.
+pub(crate) struct SourceAt {
+    /// Where.
+    pub at: Hung,
+    /// Its supply, by part.
+    pub supply: Option<usize>,
+    /// What it hangs on.
+    pub feed: Feed,
+    /// What it gives; none when it is off.
+    pub character: Option<Characteristic>,
+    /// Its electrical side.
+    pub draw: Option<Box<dyn Draw>>,
+    /// How a set speed bounds it.
+    pub governor: Option<Governor>,
+}
+
+/// A set speed, at the source's shaft.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Governor {
+    /// The speed without load.
+    pub speed: f64,
+    /// Effort per speed below the set speed; none for a vertical line.
+    pub stiffness: Option<f64>,
+}
+
+impl SourceAt {
+    /// Effort at full command, bounded by the set speed.
+    pub fn effort<R: Real>(&self, speed: R) -> R {
+        let Some(character) = &self.character else { return R::of(0.0) };
+        match self.governor {
+            None => natural(character, speed),
+            Some(Governor { speed: set, stiffness: None }) => speed.piecewise(&[set], |piece, speed| {
+                if piece == 0 { natural(character, speed) } else { -self.braking(speed) }
+            }),
+            Some(Governor { speed: set, stiffness: Some(stiffness) }) => {
+                let line = (R::of(set) - speed) * stiffness;
+                natural(character, speed).min(line.max(-self.braking(speed)))
+            }
+        }
+    }
+
+    /// The most it gives in the direction of motion, 0 or above.
+    pub fn most<R: Real>(&self, speed: R) -> R {
+        match &self.character {
+            Some(character) => speed.on(character.drive.as_ref()).max(R::of(0.0)),
+            None => R::of(0.0),
+        }
+    }
+
+    /// The most it can hold back, 0 or above.
+    pub fn braking<R: Real>(&self, speed: R) -> R {
+        match self.character.as_ref().map(|c| &c.braking) {
+            Some(Braking::Can(curve)) => speed.on(curve.as_ref()).max(R::of(0.0)),
+            _ => R::of(0.0),
+        }
+    }
+
+    /// The field that would have to say how it brakes.
+    pub fn braking_unknown(&self) -> Option<&'static str> {
+        match self.character.as_ref().map(|c| &c.braking) {
+            Some(Braking::Unknown(field)) => Some(field),
+            _ => None,
+        }
+    }
+
+    /// Speeds at which its effort jumps.
+    pub fn jumps(&self) -> Vec<f64> {
+        let Some(character) = &self.character else { return Vec::new() };
+        let mut jumps = character.drive.jumps();
+        if let Some(governor) = self.governor {
+            if let Braking::Can(curve) = &character.braking {
+                jumps.extend(curve.jumps());
+            }
+            jumps.push(governor.speed);
+        }
+        jumps
+    }
+
+    /// Speeds at which its slope jumps.
+    pub fn kinks(&self) -> Vec<f64> {
+        self.character.as_ref().map(|c| c.drive.kinks()).unwrap_or_default()
+    }
+}
+
+/// Effort at full command without a set speed.
+fn natural<R: Real>(character: &Characteristic, speed: R) -> R {
+    let raw = speed.on(character.drive.as_ref());
+    match character.braking {
+        Braking::Can(_) => raw,
+        Braking::Cannot | Braking::Unknown(_) => raw.max(R::of(0.0)),
+    }
+}
+
+/// Places all sources of a drive.
+pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
+    let mut placed = Vec::new();
+    let mut faults = shared_supplies(drive);
+    let mut followed = drive.set.is_none();
+    for at in &drive.tree.sources {
+        let supply = supply_of(drive, at.part);
+        let feed = feed(drive, at, supply);
+        let mut source = SourceAt {
+            at: *at,
+            supply: supply.map(|(i, _)| i),
+            feed,
+            character: None,
+            draw: None,
+            governor: None,
+        };
+        let Model::Source(model) = &drive.models[at.part] else { continue };
+        if drive.spec.parts[at.part].on {
+            match model.characteristic(&feed) {
+                Ok(character) => {
+                    if !character.reversible && drive.shafts[at.shaft].sense < 0.0 {
+                        let how = "this source runs one way only, and the drive asks for the other: put a reversing \
+                                   stage behind it";
+                        faults.push(Fault {
+                            part: Some(at.part),
+                            kind: FaultKind::Chain { how: Note::plain(how) },
+                        });
+                    }
+                    source.draw = model.draw(&feed);
+                    source.governor = governor(drive, at, &character);
+                    followed |= character.follows_set_speed;
+                    source.character = Some(character);
+                }
+                Err(found) => {
+                    faults.extend(found.into_iter().map(|f| Fault { part: f.part.or(Some(at.part)), ..f }));
+                }
+            }
+        }
+        placed.push(source);
+    }
+    if !followed && faults.is_empty() {
+        let how = "a set speed is given, but no source of this drive follows one";
+        faults.push(Fault { part: None, kind: FaultKind::Chain { how: Note::plain(how) } });
+    }
+    if faults.is_empty() { Ok(placed) } else { Err(faults) }
+}
+
+/// The set speed at a source's shaft.
+fn governor(drive: &Assembly, at: &Hung, character: &Characteristic) -> Option<Governor> {
+    let set = drive.set.filter(|_| character.follows_set_speed)? * drive.shafts[at.shaft].speed;
+    let droop = drive.spec.settings.droop;
+    if droop <= 0.0 || droop.is_nan() {
+        return Some(Governor { speed: set, stiffness: None });
+    }
+    // The line falls from full effort at its foot to none at the set speed.
+    let full = character.drive.at(set * (1.0 - f64::min(droop, 1.0)));
+    (full > 0.0).then_some(Governor { speed: set, stiffness: Some(full / (droop * set)) })
+}
+
+/// The supply named in a source's field, and its model.
+fn supply_of(drive: &Assembly, part: usize) -> Option<(usize, &dyn Supply)> {
+    let Some(FieldValue::Part(index)) = drive.spec.parts[part].values.get("supply") else { return None };
+    match drive.models.get(*index)? {
+        Model::Supply(model) => Some((*index, model.as_ref())),
+        _ => None,
+    }
+}
+
+fn feed(drive: &Assembly, at: &Hung, supply: Option<(usize, &dyn Supply)>) -> Feed {
+    Feed {
+        supply: supply.map(|(_, model)| model.data()),
+        machines: at.count,
+        ambient: drive.spec.settings.ambient,
+        altitude: drive.spec.settings.altitude,
+    }
+}
+
+/// Different sources on one supply that sags would pull each other down; that is refused, not neglected.
+fn shared_supplies(drive: &Assembly) -> Vec<Fault> {
+    let mut faults = Vec::new();
+    let mut seen: Vec<usize> = Vec::new();
+    for at in &drive.tree.sources {
+        let Some((index, model)) = supply_of(drive, at.part).filter(|_| drive.spec.parts[at.part].on) else {
+            continue;
+        };
+        let data = model.data();
+        let stiff = data.resistance.unwrap_or(0.0) == 0.0 && data.current_limit.is_none();
+        if seen.contains(&index) && !stiff {
+            let how = "different sources hang on one supply that sags or limits its current; how they pull each \
+                       other down is not covered yet: give each its own supply, or declare this one stiff";
+            faults.push(Fault { part: Some(at.part), kind: FaultKind::Unsettled { how: Note::plain(how) } });
+        }
+        seen.push(index);
+    }
+    faults
+}

@@ -1,0 +1,6 @@
+//! The solver against closed forms and published checks.
+
+mod outcomes;
+mod published;
+mod random;
+mod transient;
