@@ -1,5 +1,7 @@
 //! Shared helpers of the tests that look at Layshaft as a whole.
 
+pub mod laws;
+
 use std::path::{Path, PathBuf};
 use std::process::Command;
 use std::sync::OnceLock;
