@@ -1,7 +1,11 @@
 //! The row of a kind: everything the rest of Layshaft knows about a motor, a gear or a load.
 
+mod common;
+
 use crate::fault::Fault;
 use crate::values::Values;
+
+pub use common::{DRIVE_FIELDS, DRIVE_RESULTS, LIMITS, common_fields, common_results};
 
 /// What a part is in a drive.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -29,7 +33,7 @@ pub struct KindRow {
     pub summary: &'static str,
     /// Its fields, the usual order of a spec.
     pub fields: &'static [Field],
-    /// What can be asked of it after the drive is solved, beyond [`COMMON_RESULTS`] of its role.
+    /// What can be asked of it after the drive is solved, beyond [`common_results`] of its role.
     pub results: &'static [ResultRow],
     /// The laws behind it.
     pub formulas: &'static [Formula],
@@ -185,6 +189,8 @@ pub enum ResultShape {
     Speed,
     /// The torque or force of a station, as its motion is.
     Effort,
+    /// An angle or a length, as the motion of the station is.
+    Way,
     /// Yes or no.
     Flag,
     /// One of these words.

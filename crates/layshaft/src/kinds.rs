@@ -1,0 +1,192 @@
+//! `layshaft kinds`: what a part can be, and what is asked of each.
+
+use layshaft_mechanics::registry::{self, Bounds, Field, Formula, KindRow, Need, ResultRow, ResultShape, Role, Shape};
+use layshaft_present::note::quantity;
+use layshaft_present::sheet::role_word;
+use layshaft_present::unit::Habits;
+use layshaft_report::terminal::{Align, Cell, Column, Grid, Tone, wrap};
+
+use crate::output::{Exit, Output};
+
+const ROLES: [Role; 4] = [Role::Supply, Role::Source, Role::Transmission, Role::Load];
+
+/// Runs the command.
+pub fn kinds(name: Option<&str>, out: &mut Output) -> Exit {
+    let Some(name) = name else {
+        out.result(&list(out));
+        return Exit::Holds;
+    };
+    let found: Vec<&KindRow> = registry::rows().iter().copied().filter(|row| row.name == name).collect();
+    if found.is_empty() {
+        let hint = match layshaft_units::closest(name, registry::rows().iter().map(|row| row.name)) {
+            Some(close) => format!("did you mean `{close}`?"),
+            None => String::from("`layshaft kinds` lists all"),
+        };
+        out.message(&format!("there is no kind of part `{name}`; {hint}"));
+        return Exit::Unusable;
+    }
+    let pages: Vec<String> = found.iter().map(|row| page(row, out)).collect();
+    out.result(&pages.join("\n"));
+    Exit::Holds
+}
+
+fn column(head: &str) -> Column {
+    Column { head: vec![head.into()], align: Align::Text }
+}
+
+fn list(out: &Output) -> String {
+    let mut text = String::new();
+    for role in ROLES {
+        let rows = registry::rows().iter().filter(|row| row.role == role);
+        let grid = Grid {
+            columns: vec![column(role_word(role)), column("")],
+            rows: rows.map(|row| vec![Cell::plain(row.name), Cell::plain(row.title)]).collect(),
+        };
+        if !grid.rows.is_empty() {
+            text.push_str(&grid.render(out.width(), out.style()));
+            text.push('\n');
+        }
+    }
+    text.push_str("`layshaft kinds NAME` shows the fields, results, formulas and an example of one.\n");
+    text
+}
+
+fn page(row: &KindRow, out: &Output) -> String {
+    let (width, style) = (out.width(), out.style());
+    let head = |text: &str| format!("\n{}\n", style.paint(Tone::Strong, text));
+    let mut page = format!(
+        "{} ({}): {}\n",
+        style.paint(Tone::Strong, row.name),
+        role_word(row.role),
+        row.title
+    );
+    page.push_str(&lines(row.summary, width));
+    page.push_str(&head("Fields"));
+    let fields = row.fields.iter().chain(registry::common_fields(row.role));
+    page.push_str(&field_table(fields).render(width, style));
+    page.push_str(&head("Results"));
+    let results = registry::common_results(row.role).iter().chain(row.results);
+    page.push_str(&result_table(results).render(width, style));
+    if !row.formulas.is_empty() {
+        page.push_str(&head("Formulas"));
+        row.formulas.iter().for_each(|formula| page.push_str(&formula_text(formula, width)));
+    }
+    if !row.cautions.is_empty() {
+        page.push_str(&head("Mind"));
+        row.cautions.iter().for_each(|caution| page.push_str(&lines(caution, width)));
+    }
+    page.push_str(&head("Example"));
+    page.push_str(&format!("  {} part: {} {}\n", role_word(row.role), row.name, row.example));
+    page
+}
+
+/// A paragraph with an indent.
+fn lines(text: &str, width: usize) -> String {
+    wrap(text, width.saturating_sub(2).max(20)).iter().map(|line| format!("  {line}\n")).collect()
+}
+
+fn field_table<'f>(fields: impl Iterator<Item = &'f Field>) -> Grid {
+    let row = |field: &Field| {
+        let meaning = match need_reason(field) {
+            Some(reason) => format!("{}; {reason}", field.meaning),
+            None => field.meaning.to_string(),
+        };
+        [field.name.to_string(), shape(field), need(field).to_string(), range(field), meaning]
+    };
+    let heads = ["field", "what stands there", "needed", "range", "meaning"];
+    Grid {
+        columns: heads.into_iter().map(column).collect(),
+        rows: fields.map(|field| row(field).map(Cell::plain).to_vec()).collect(),
+    }
+}
+
+fn shape(field: &Field) -> String {
+    match field.shape {
+        Shape::Quantity(kind) => kind.to_string(),
+        Shape::OfRated(kind) => format!("{kind}, or a multiple of `rated`"),
+        Shape::Interval(kind) => format!("{kind}, lo .. hi"),
+        Shape::Choice(words) => words.iter().map(|(word, _)| *word).collect::<Vec<_>>().join(" | "),
+        Shape::Flag => String::from("yes | no"),
+        Shape::Part(role) => format!("name of a {}", role_word(role)),
+        Shape::Points(columns) => {
+            let name = |column: &registry::ColumnRow| {
+                if column.optional { format!("{} (may be missing)", column.name) } else { column.name.to_string() }
+            };
+            format!("points of {}", columns.iter().map(name).collect::<Vec<_>>().join(", "))
+        }
+        Shape::Ratio { diameters: true } => String::from("length drives length"),
+        Shape::Ratio { diameters: false } => String::from("teeth drives teeth"),
+        Shape::Gears => String::from("named gears, each a reduction or an increase"),
+        Shape::Duty => String::from("duty type: S1, S3 40 %"),
+    }
+}
+
+const fn need(field: &Field) -> &'static str {
+    match field.need {
+        Need::Required => "always",
+        Need::Optional => "no",
+        Need::Default { .. } => "no",
+        Need::Where(_) => "where asked",
+        Need::OneOf => "one of several",
+    }
+}
+
+fn need_reason(field: &Field) -> Option<String> {
+    match field.need {
+        Need::Default { si, why } => Some(format!("taken as {}: {why}", value(field, si))),
+        Need::Where(question) => Some(format!("needed for {question}")),
+        _ => None,
+    }
+}
+
+/// An SI value of a field in its usual unit.
+fn value(field: &Field, si: f64) -> String {
+    match field.shape {
+        Shape::Quantity(kind) | Shape::OfRated(kind) | Shape::Interval(kind) => quantity(si, kind, &Habits::default()),
+        Shape::Flag => String::from(if si == 0.0 { "no" } else { "yes" }),
+        _ => layshaft_present::number::written(si),
+    }
+}
+
+fn range(field: &Field) -> String {
+    let Bounds { low, low_in, high, high_in } = field.hard;
+    let (below, above) = (low.is_finite(), high.is_finite());
+    match (below, above) {
+        (false, false) => String::new(),
+        (true, false) if low == 0.0 => String::from(if low_in { "0 or above" } else { "above 0" }),
+        (true, false) => format!("{} {}", if low_in { "from" } else { "above" }, value(field, low)),
+        (false, true) => format!("{} {}", if high_in { "up to" } else { "below" }, value(field, high)),
+        (true, true) => {
+            let word = if low_in { "" } else { "above " };
+            let end = if high_in { "" } else { " (not itself)" };
+            format!("{word}{} .. {}{end}", value(field, low), value(field, high))
+        }
+    }
+}
+
+fn result_table<'r>(results: impl Iterator<Item = &'r ResultRow>) -> Grid {
+    let row = |result: &ResultRow| {
+        let shape = match result.shape {
+            ResultShape::Quantity(kind) => kind.to_string(),
+            ResultShape::Speed => String::from("speed, of its motion"),
+            ResultShape::Effort => String::from("torque or force, of its motion"),
+            ResultShape::Way => String::from("angle or length, of its motion"),
+            ResultShape::Flag => String::from("yes | no"),
+            ResultShape::Word(words) => words.join(" | "),
+        };
+        [result.name.to_string(), shape, result.meaning.to_string()].map(Cell::plain).to_vec()
+    };
+    Grid { columns: ["result", "what it is", "meaning"].into_iter().map(column).collect(), rows: results.map(row).collect() }
+}
+
+fn formula_text(formula: &Formula, width: usize) -> String {
+    let mut text = format!("  {} = {}\n", formula.name, formula.text);
+    for (symbol, kind, meaning) in formula.symbols {
+        text.push_str(&format!("    {symbol}: {meaning} ({kind})\n"));
+    }
+    let about = format!("valid for {}; source: {}; revision {}", formula.validity, formula.source, formula.revision);
+    for line in wrap(&about, width.saturating_sub(4).max(20)) {
+        text.push_str(&format!("    {line}\n"));
+    }
+    text
+}
