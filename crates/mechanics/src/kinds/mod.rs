@@ -17,6 +17,7 @@ pub static ROWS: &[&KindRow] = &[
     &supplies::dc_bus::ROW,
     &sources::straight_line::ROW,
     &sources::straight_line_force::ROW,
+    &sources::dc_motor::ROW,
     &transmissions::gear::ROW,
     &transmissions::gearbox::ROW,
     &transmissions::belt::ROW,

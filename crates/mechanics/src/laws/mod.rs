@@ -7,6 +7,7 @@ use crate::registry::Formula;
 pub mod battery;
 pub mod belt;
 pub mod brake;
+pub mod dc_envelope;
 pub mod dc_machine;
 pub mod drag;
 pub mod gear;
@@ -43,10 +44,11 @@ pub struct Checked {
 
 /// Every formula with its kernel.
 pub fn checked() -> impl Iterator<Item = &'static Checked> {
-    let laws: [&'static [Checked]; 19] = [
+    let laws: [&'static [Checked]; 20] = [
         battery::CHECKED,
         belt::CHECKED,
         brake::CHECKED,
+        dc_envelope::CHECKED,
         dc_machine::CHECKED,
         drag::CHECKED,
         gear::CHECKED,
