@@ -8,7 +8,9 @@ mod answers;
 mod assembly;
 mod bracket;
 mod chain;
+mod drive_answers;
 mod extreme;
+mod findings;
 mod flow;
 mod motion;
 mod part_answers;
@@ -17,6 +19,7 @@ mod quadrature;
 mod rest;
 mod roots;
 mod run_up;
+mod shafts;
 mod source;
 mod state;
 mod stated;
@@ -64,6 +67,6 @@ pub fn gears(spec: &DriveSpec) -> Vec<String> {
     let Ok(models) = built else { return Vec::new() };
     let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
     chain::tree(&spec.chain, &roles, &models)
-        .map(|tree| assembly::gear_names(&tree, &models))
+        .map(|tree| shafts::gear_names(&tree, &models))
         .unwrap_or_default()
 }

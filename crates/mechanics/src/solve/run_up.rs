@@ -84,7 +84,7 @@ pub(crate) fn run_up(drive: &Assembly, path: &Path, reached: &State) -> Result<R
 }
 
 /// Required over available effort at the root.
-struct Loading<'a>(&'a Assembly);
+pub(super) struct Loading<'a>(pub &'a Assembly);
 
 impl Law for Loading<'_> {
     fn eval<R: Real>(&self, x: R) -> R {
