@@ -15,7 +15,8 @@ fn seconds(mut run: impl FnMut()) -> f64 {
 }
 
 fn main() {
-    let specs = [include_str!("../tests/data/mill_hoist.shaft"), include_str!("../tests/data/bakery_trike.shaft")];
+    let specs =
+        [include_str!("../tests/data/mill_hoist.shaft"), include_str!("../tests/data/bakery_trike.shaft")];
     let mut text = String::new();
     while text.len() < 1_000_000 {
         text.push_str(specs[0]);

@@ -119,9 +119,12 @@ impl Cutter<'_> {
             return;
         }
         let text = if open.bracket.is_brace() { "\n}" } else { closing };
-        let problem = Problem::new(Code::UnclosedBracket, open.span, format!("`{shown}` is never closed"))
-            .related(Span::new(end, end), format!("`{closing}` is missed here"))
-            .fix(format!("write `{closing}` here"), Span::new(end, end), text);
+        let mut problem =
+            Problem::new(Code::UnclosedBracket, open.span, format!("`{shown}` is never closed"))
+                .related(Span::new(end, end), format!("`{closing}` is missed here"));
+        if !before.is_some_and(|token| token.kind.leaves_line_open()) {
+            problem = problem.fix(format!("write `{closing}` here"), Span::new(end, end), text);
+        }
         self.item.problems.push(problem);
     }
 

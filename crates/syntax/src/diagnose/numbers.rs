@@ -2,7 +2,7 @@
 
 use layshaft_diagnostics::{Code, Span};
 
-use super::View;
+use super::{Place, View};
 use crate::token::TokenKind as K;
 use crate::tree::Problem;
 
@@ -13,6 +13,7 @@ pub(super) fn rules(view: &View<'_, '_>) -> Option<Problem> {
         .or_else(|| hexadecimal(view))
         .or_else(|| behind_number(view))
         .or_else(|| behind_unit(view))
+        .or_else(|| bracketed_unit(view))
         .or_else(|| lone_unit(view))
 }
 
@@ -78,10 +79,14 @@ fn blank(view: &View<'_, '_>) -> Option<Problem> {
     )
 }
 
-/// `5.`, `.5`, `1.2.3`
+/// `5.`, `.5`, `1.2.3`, `1 ... 2`
 fn dot(view: &View<'_, '_>) -> Option<Problem> {
     if !view.is(0, K::Dot) {
         return None;
+    }
+    if view.is(-1, K::DotDot) && view.tight(0) {
+        let span = view.spans(-1, 0);
+        return Some(view.syntax(span, "a range is written `..`").fix("write `..`", span, ".."));
     }
     if view.is_number(-1) && view.tight(0) {
         if view.is(1, K::Number) && view.tight(1) {
@@ -114,8 +119,12 @@ fn hexadecimal(view: &View<'_, '_>) -> Option<Problem> {
     Some(problem.fix(format!("write `{value}`"), span, value.to_string()))
 }
 
-/// `5 m2`, `5 foo_bar`, `5 min(3, 4)`
+/// `5 m2`, `5 foo_bar`, `5 min(3, 4)`, `2.3 rated`
 fn behind_number(view: &View<'_, '_>) -> Option<Problem> {
+    if view.is_number(-1) && view.is(0, K::Rated) {
+        let problem = view.syntax(view.span(0), "a multiple of the rated value is written with `×` or `*`");
+        return Some(problem.fix("put `×` between", view.gap(0), " × "));
+    }
     if !(view.is_number(-1) && view.is(0, K::Name)) || view.entry_begins(0) {
         return None;
     }
@@ -151,6 +160,14 @@ fn behind_unit(view: &View<'_, '_>) -> Option<Problem> {
         let problem = view.syntax(view.spans(-2, 0), "two quantities stand side by side");
         return Some(problem.help("an operator is missing between them").fix("add them", view.gap(0), " + "));
     }
+    if view.text(-1) == "in" && matches!(view.place, Place::Condition | Place::Tail) && view.is(0, K::Name) {
+        let problem = view.syntax(view.span(-1), "cases are named behind `only in` or `not in`");
+        return Some(problem.help("`in` directly after a number is the inch").fix(
+            "write `only in`",
+            view.span(-1),
+            "only in",
+        ));
+    }
     let letters = view.text(0).chars().all(|c| c.is_alphabetic() || c == '²' || c == '³');
     if !view.is(0, K::Name) || !letters || view.entry_begins(0) || is_word_of_the_line(view.text(0)) {
         return None;
@@ -160,6 +177,25 @@ fn behind_unit(view: &View<'_, '_>) -> Option<Problem> {
         .syntax(view.spans(-1, 0), "a unit has no blanks")
         .help("inside a unit the signs stand tight: `N·m`, `kg/m³`");
     Some(problem.fix(format!("write `{} {joined}`", view.text(-2)), view.gap(0), "·"))
+}
+
+/// `[N m]`, `[m2]`, `speed rpm`: the unit of a column.
+fn bracketed_unit(view: &View<'_, '_>) -> Option<Problem> {
+    if view.wanted.kind(K::LeftSquare) && view.is(-1, K::Name) && view.is(0, K::Name) {
+        let unit = format!("[{}]", view.text(0));
+        let problem = view.syntax(view.span(0), "the unit of a column stands between `[` and `]`");
+        return Some(problem.fix(format!("write `{unit}`"), view.span(0), unit));
+    }
+    if !view.wanted.kind(K::Unit) || !view.is(-1, K::LeftSquare) {
+        return None;
+    }
+    if view.is(0, K::Name) && view.is(1, K::Name) && view.is(2, K::RightSquare) {
+        let joined = format!("{}·{}", view.text(0), view.text(1));
+        let problem = view.syntax(view.spans(0, 1), "a unit has no blanks");
+        return Some(problem.fix(format!("write `{joined}`"), view.spans(0, 1), joined));
+    }
+    let problem = view.syntax(view.here(), "the unit of a column is missing or cannot be read");
+    Some(problem.help("`[N·m]`, `[1/min]`; a column of plain numbers has no brackets"))
 }
 
 /// Words that readers of other notations put behind a value.

@@ -94,10 +94,12 @@ fn comparison(view: &View<'_, '_>) -> Option<Problem> {
     let compares = |kind: K| {
         matches!(kind, K::Less | K::LessEqual | K::Greater | K::GreaterEqual | K::EqualEqual | K::NotEqual)
     };
-    if view.is(-1, K::Equal) && view.tight(0) && matches!(view.kind(0), Some(K::Greater | K::Less)) {
-        let right = if view.is(0, K::Greater) { ">=" } else { "<=" };
-        let span = view.spans(-1, 0);
-        let problem = view.syntax(span, format!("`={}` is written `{right}`", view.text(0)));
+    let reversed =
+        view.is(0, K::Equal) && view.tight(1) && matches!(view.kind(1), Some(K::Greater | K::Less));
+    if reversed && view.place != Place::Drive {
+        let right = if view.is(1, K::Greater) { ">=" } else { "<=" };
+        let span = view.spans(0, 1);
+        let problem = view.syntax(span, format!("`={}` is written `{right}`", view.text(1)));
         return Some(problem.fix(format!("write `{right}`"), span, right));
     }
     let kind = view.kind(0)?;
@@ -129,6 +131,9 @@ fn basis(view: &View<'_, '_>) -> Option<Problem> {
         return Some(problem.help(format!("`{word} \"…\"` says where the value comes from")));
     }
     let kind = view.kind(0)?;
+    if view.is(-1, K::String) && view.kind(-2).is_some_and(is_basis) && kind.is_operator() {
+        return Some(view.syntax(view.span(0), "where a value comes from is said at its end"));
+    }
     if !is_basis(kind) {
         return None;
     }
@@ -171,6 +176,10 @@ fn text(view: &View<'_, '_>) -> Option<Problem> {
 fn brackets(view: &View<'_, '_>) -> Option<Problem> {
     match view.kind(0)? {
         K::PairParen => {
+            let message = "a group of quantities stands alone as a value, not inside an expression";
+            Some(view.syntax(view.span(0), message))
+        }
+        kind if kind.is_operator() && view.is(-1, K::RightParen) && view.group_stands_first() => {
             let message = "a group of quantities stands alone as a value, not inside an expression";
             Some(view.syntax(view.span(0), message))
         }
@@ -226,6 +235,7 @@ fn foreign_word(view: &View<'_, '_>) -> Option<Problem> {
     }
     let shows = view.ctx.tokens.first().is_some_and(|token| token.kind == K::Show);
     let (message, write) = match (view.text(0), view.place) {
+        ("in", _) if view.is(-1, K::Only) => return None,
         ("in", Place::Condition | Place::Tail) if shows => ("a unit to show in stands behind `as`", "as"),
         ("in", Place::Condition | Place::Tail) => ("cases are named behind `only in` or `not in`", "only in"),
         ("relative", _) => ("a tolerance relative to a percentage is `of value`", "of value"),

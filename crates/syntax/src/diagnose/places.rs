@@ -23,6 +23,25 @@ pub(super) fn rules(view: &View<'_, '_>) -> Option<Problem> {
     own.or_else(|| declaration(view)).or_else(|| side_by_side(view))
 }
 
+/// A word that was read as a unit because it follows a number, and begins something new: `{ a = 1 b = 2 }`,
+/// `let a = 5 let b = 6`.
+pub(super) fn run_together(view: &View<'_, '_>) -> Option<Problem> {
+    if !(view.is(-1, K::Unit) && view.is_number(-2)) {
+        return None;
+    }
+    if view.is(0, K::Equal) && view.place == Place::Entry {
+        let problem = view.syntax(view.span(-1), "a `;` or a new line is missing before the next entry");
+        return Some(problem.fix("write `;`", view.gap(-1), "; "));
+    }
+    if word_kind(view.text(-1)).is_some_and(K::is_declaration)
+        && matches!(view.kind(0), Some(K::Name | K::String | K::Number))
+    {
+        let problem = view.syntax(view.span(-1), "a declaration begins on a line of its own");
+        return Some(problem.fix("begin a new line", view.gap(-1), "\n"));
+    }
+    None
+}
+
 fn before(span: Span) -> Span {
     Span::new(span.start, span.start)
 }
@@ -89,9 +108,29 @@ fn short_declaration(view: &View<'_, '_>) -> Option<Problem> {
             view.syntax(view.here(), format!("{what} is missing behind `{}`", super::clipped(behind)));
         return Some(problem.help(example(word)));
     }
+    if let Some(problem) = allowed(view) {
+        return Some(problem);
+    }
     let ended = view.ended() || view.at >= view.ctx.tokens.len();
     let problem = view.syntax(view.here(), format!("{} is not complete here", first.kind.describe()));
     ended.then(|| problem.help(example(word)))
+}
+
+/// `allow` on a line of its own or in a block.
+fn allowed(view: &View<'_, '_>) -> Option<Problem> {
+    if view.ctx.tokens.get(view.start)?.kind != K::Allow {
+        return None;
+    }
+    if view.wanted.kind(K::Because) && view.is(0, K::Name) {
+        let problem = view.syntax(view.spans(-1, 0), "the words of a code are joined by `-`");
+        return Some(problem.fix("write `-`", view.gap(0), "-"));
+    }
+    let missing = match (view.wanted.kind(K::Because), view.wanted.kind(K::String)) {
+        (true, _) => "`because` and the reason are missing here",
+        (_, true) => "the reason is missing behind `because`",
+        _ => return None,
+    };
+    view.ended().then(|| view.syntax(view.here(), missing).help(example("allow")))
 }
 
 /// `=` where a colon or nothing stands.
@@ -104,6 +143,10 @@ fn equal(view: &View<'_, '_>, message: &str) -> Option<Problem> {
         let span = if colon { view.spans(0, 1) } else { view.span(0) };
         let text = if view.tight(0) { " =" } else { "=" };
         return Some(view.syntax(span, message).fix("write `=`", span, text));
+    }
+    // `x 5` and `x 5 m`: the number was taken as the member of a key such as `gear 1`.
+    if view.is_number(-1) && view.is(-2, K::Name) && (view.ended() || view.is(0, K::Unit)) {
+        return Some(view.syntax(view.span(-1), "`=` is missing here").fix("write `=`", view.gap(-1), " = "));
     }
     let problem = view.syntax(view.here(), "`=` and a value are missing here");
     if view.ended() {
@@ -150,8 +193,16 @@ fn drive(view: &View<'_, '_>) -> Option<Problem> {
         let problem = view.syntax(view.span(0), "a number of equal parts is a whole number from 1 on");
         return Some(problem.help("`2 * motor`"));
     }
+    if view.wanted.kind(K::Equal) && view.ended() {
+        let problem = view.syntax(view.here(), "`=` and the chain of the drive are missing here");
+        return Some(problem.help(example("drive")));
+    }
     if view.wanted.kind(K::Equal) {
         return equal(view, "the chain of a drive stands behind `=`");
+    }
+    if view.is(0, K::Equal) && view.is(1, K::Greater) && view.tight(1) {
+        let span = view.spans(0, 1);
+        return Some(view.syntax(span, "parts are joined by `->`").fix("write `->`", span, "->"));
     }
     if view.wanted.sort(Sort::Name) {
         let behind = view.text(-1);
@@ -175,6 +226,9 @@ fn case(view: &View<'_, '_>) -> Option<Problem> {
         let fixed = problem.clone().fix("write `with`", view.end(), " with");
         return Some(if view.is(0, K::LeftBrace) { fixed } else { problem.help(example("case")) });
     }
+    if view.is(-1, K::Plus) || view.is(-1, K::Equal) {
+        return Some(view.syntax(view.here(), format!("a case is missing behind `{}`", view.text(-1))));
+    }
     if view.wanted.kind(K::LeftBrace) {
         let problem = view.syntax(view.here(), "a case names what it changes between `{` and `}`");
         return Some(problem.help(example("case")));
@@ -193,6 +247,9 @@ fn row(view: &View<'_, '_>) -> Option<Problem> {
 }
 
 fn entry(view: &View<'_, '_>) -> Option<Problem> {
+    if let Some(problem) = allowed(view) {
+        return Some(problem);
+    }
     if view.at == view.start {
         let problem =
             view.syntax(view.here(), format!("a line of a block does not begin with {}", view.found()));
@@ -213,11 +270,6 @@ fn entry(view: &View<'_, '_>) -> Option<Problem> {
             ),
         );
     }
-    // `a = 1 b = 2`: `b` was read as a unit.
-    if view.is(0, K::Equal) && view.is(-1, K::Unit) && view.is_number(-2) {
-        let problem = view.syntax(view.span(-1), "a `;` is missing before the next entry");
-        return Some(problem.fix("write `;`", view.gap(-1), "; "));
-    }
     if view.entry_begins(0) {
         let problem = view.syntax(view.here(), "a `;` or a new line is missing before the next entry");
         return Some(problem.fix("write `;`", view.end(), ";"));
@@ -236,7 +288,14 @@ fn tail(view: &View<'_, '_>) -> Option<Problem> {
     if view.wanted.kind(K::Unit) && view.is(-1, K::As) {
         return Some(view.syntax(view.here(), "a unit is missing behind `as`"));
     }
-    if view.wanted.kind(K::Equal) && view.ctx.tokens[view.start..view.at].iter().any(|t| t.kind == K::At) {
+    if view.at == view.start && view.place == Place::Condition {
+        let problem = view.syntax(
+            view.here(),
+            if view.ended() { "the condition is missing" } else { "a value is missing here" },
+        );
+        return Some(problem.help(example("require")));
+    }
+    if view.is(-1, K::At) || (view.wanted.kind(K::Equal) && view.before().iter().any(|t| t.kind == K::At)) {
         let problem = view.syntax(view.here(), "behind `at` stands a speed and its value");
         return Some(problem.help("such as `at ride.speed = 15 km/h`"));
     }

@@ -13,6 +13,7 @@ use crate::token::{Token, TokenKind as K};
 use crate::tree::{Allow, Block, Entry, Name, Path, Problem, Text, Value};
 
 /// A line of a block.
+#[allow(clippy::large_enum_variant, reason = "moved once, from the rule to the list")]
 pub(super) enum Line {
     Entry(Entry),
     Allow(Allow),

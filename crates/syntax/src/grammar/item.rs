@@ -10,7 +10,7 @@ use super::recover::{
     broken_case, broken_chain, broken_let, broken_part, broken_rest, broken_start, broken_value, misspelt,
 };
 use super::require::{require, show};
-use super::terms::{maybe, name, path, peek, position, take_number, text, token};
+use super::terms::{maybe, miss, name, path, peek, position, take_number, text, token};
 use super::value::{not_at_end, value};
 use super::{Extra, In, Input, ItemRule, Parsed, Rule};
 use crate::lexer::name_text;
@@ -45,10 +45,10 @@ pub(crate) fn item<'s>() -> ItemRule<'s> {
         }
         inp.skip();
         match kind {
-            K::Language => inp.parse(&language),
-            K::Title => inp.parse(&title),
-            K::Revision => inp.parse(&revision),
-            K::Use => inp.parse(&used),
+            K::Language => inp.parse(language),
+            K::Title => inp.parse(title),
+            K::Revision => inp.parse(revision),
+            K::Use => inp.parse(used),
             K::Let => inp.parse(&settled),
             K::Drive => inp.parse(&drive),
             K::Case => inp.parse(&case),
@@ -80,8 +80,13 @@ fn settled<'s>(value: Rule<'s, Value>) -> Rule<'s, ItemKind> {
 
 /// The rest of `source name: kind { … }` or `source name = base with { … }`.
 fn part<'s>(block: Rule<'s, Block>) -> impl Fn(&mut In<'s, '_>, K, Span) -> Parsed<ItemKind> + Clone + 's {
+    let opens = custom(|inp| if peek(inp) == Some(K::LeftBrace) { Ok(()) } else { miss(inp, K::LeftBrace) });
     let kind = token(K::Colon).ignore_then(name()).map(PartBase::Kind);
-    let base = token(K::Equal).ignore_then(path()).then_ignore(token(K::With)).map(PartBase::Variant);
+    let base = token(K::Equal)
+        .ignore_then(path())
+        .then_ignore(token(K::With))
+        .then_ignore(opens)
+        .map(PartBase::Variant);
     let opens = custom(|inp| match peek(inp) {
         None | Some(K::LeftBrace) => Ok(()),
         _ => not_at_end(inp),
@@ -96,10 +101,7 @@ fn part<'s>(block: Rule<'s, Block>) -> impl Fn(&mut In<'s, '_>, K, Span) -> Pars
             _ => RoleWord::Load,
         };
         let (name, base) = inp.parse(&head)?;
-        let block = match (peek(inp), &base) {
-            (None, PartBase::Kind(_)) => empty_block(inp),
-            _ => inp.parse(&block)?,
-        };
+        let block = if peek(inp).is_none() { empty_block(inp) } else { inp.parse(&block)? };
         Ok(ItemKind::Part { role, role_span, name, base, block })
     }
 }
@@ -139,18 +141,14 @@ fn case<'s>(block: Rule<'s, Block>) -> Rule<'s, ItemKind> {
     let bases = name().separated_by(token(K::Plus)).at_least(1).collect::<Vec<_>>();
     let opens = custom(|inp| {
         if maybe(inp, K::With).is_some() {
-            return if peek(inp) == Some(K::LeftBrace) {
-                Ok(())
-            } else {
-                super::terms::miss(inp, K::LeftBrace)
-            };
+            return if peek(inp) == Some(K::LeftBrace) { Ok(()) } else { miss(inp, K::LeftBrace) };
         }
-        if peek(inp).is_none() { Ok(()) } else { super::terms::miss(inp, K::With) }
+        if peek(inp).is_none() { Ok(()) } else { miss(inp, K::With) }
     });
     let composed = token(K::Equal).ignore_then(bases).then_ignore(opens);
     let plain = custom(|inp| match peek(inp) {
         Some(K::LeftBrace) => Ok(Vec::new()),
-        _ => super::terms::miss(inp, K::LeftBrace),
+        _ => miss(inp, K::LeftBrace),
     });
     let head = name().then(composed.or(plain)).recover_with(via_parser(custom(broken_case)));
     head.then(optional(block)).map(|((name, bases), block)| ItemKind::Case { name, bases, block }).boxed()

@@ -6,7 +6,7 @@ use super::block::{Line, key, some_name};
 use super::require::ends_condition;
 use super::terms::{maybe, peek, peek_at, peek_text, position, take_path};
 use super::value::span_since;
-use super::{Ctx, EmptyErr, In, Parsed};
+use super::{Ctx, In, Parsed};
 use crate::diagnose::{self, Place};
 use crate::token::TokenKind as K;
 use crate::tree::{
@@ -56,7 +56,11 @@ pub(super) fn broken_entry(inp: &mut In<'_, '_>) -> Parsed<Line> {
     let start = position(inp);
     let before = inp.save();
     let missed = (inp.state().missed, inp.state().wanted);
-    let head = key(inp).ok().filter(|_| maybe(inp, K::Equal).is_some());
+    let head = key(inp).ok().filter(|(_, member)| {
+        // `x: 5` and `x 5`: only the sign is wrong.
+        let meant = member.is_some() || peek(inp) == Some(K::Colon);
+        maybe(inp, K::Equal).is_some() || meant
+    });
     // Looking for the key again must not change what was missed.
     (inp.state().missed, inp.state().wanted) = missed;
     let behind_key = position(inp);
@@ -124,7 +128,12 @@ pub(super) fn broken_value(inp: &mut In<'_, '_>) -> Parsed<Value> {
     let start = position(inp);
     skip_to(inp, |_, _| false);
     let stop = position(inp);
-    inp.state().fail(start, stop, Place::Let);
+    // Without `=` the whole `let` was reported.
+    let set =
+        start.checked_sub(1).and_then(|at| inp.state().tokens.get(at)).is_some_and(|t| t.kind == K::Equal);
+    if set {
+        inp.state().fail(start, stop, Place::Let);
+    }
     Ok(missing_value(inp, start))
 }
 
@@ -158,17 +167,20 @@ pub(super) fn broken_let(inp: &mut In<'_, '_>) -> Parsed<Name> {
     let start = position(inp);
     let name = meant_name(inp);
     skip_to(inp, |_, kind| kind == K::Equal);
-    let found = maybe(inp, K::Equal).is_some();
+    maybe(inp, K::Equal);
     let stop = position(inp);
     inp.state().fail(start, stop, Place::Name);
-    if found { Ok(name) } else { Err(EmptyErr::default()) }
+    Ok(name)
 }
 
 /// The head of a part, up to its block.
 pub(super) fn broken_part(inp: &mut In<'_, '_>) -> Parsed<(Name, PartBase)> {
     let start = position(inp);
-    let name = meant_name(inp);
+    // `source motor dc_motor {`: the colon is missing.
+    let colonless = peek_at(inp, 1) == Some(K::Name) && matches!(peek_at(inp, 2), None | Some(K::LeftBrace));
+    let name = if colonless { some_name(inp).unwrap_or_else(|| nameless(inp)) } else { meant_name(inp) };
     let base = match peek(inp) {
+        Some(K::Name) if colonless => some_name(inp).map(PartBase::Kind),
         Some(K::Equal) => {
             inp.skip();
             take_path(inp).ok().map(PartBase::Variant)

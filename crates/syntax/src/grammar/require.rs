@@ -84,7 +84,7 @@ fn tail<'s>(
     let unit = token(K::As).ignore_then(unit());
     let part = custom(move |inp| {
         let part = match peek(inp) {
-            Some(K::As) if show => Part::Unit(inp.parse(&unit)?),
+            Some(K::As) if show => Part::Unit(inp.parse(unit)?),
             Some(K::At) => Part::At(inp.parse(&at)?),
             Some(K::Probability) if !show => {
                 inp.skip();

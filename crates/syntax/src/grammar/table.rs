@@ -87,7 +87,7 @@ fn rows<'s>() -> impl Parser<'s, Input<'s>, Rows, Extra<'s>> + Clone {
             while maybe(inp, K::Newline).is_some() || maybe(inp, K::Semicolon).is_some() {}
             match peek(inp) {
                 None | Some(K::RightBrace) => break,
-                _ => rows.extend(inp.parse(&row)?),
+                _ => rows.extend(inp.parse(row)?),
             }
         }
         let close = take(inp, K::RightBrace)?;

@@ -251,11 +251,11 @@ impl<'a> Lexer<'a> {
             Problem::new(Code::BadText, span, format!("`{shown}` has no meaning in the language"));
         for (word, meaning) in words {
             let word_shown = word.trim();
-            problem = problem.help(format!("{meaning} are joined by words: `{word_shown}`"));
+            problem = problem.help(format!("{meaning}: `{word_shown}`"));
             problem = problem.fix(format!("write `{word_shown}`"), span, *word);
         }
         if byte == b'\'' {
-            problem = problem.help("texts stand between double quotes: `\"…\"`");
+            return self.single_quotes();
         }
         self.report(problem);
         // `a && b` reads as `a and b`, so that the rest of the line is still looked at.

@@ -86,7 +86,7 @@ impl Lexer<'_> {
                 Some((c, Role::Fraction(decimal))) => return self.mixed_fraction(start, end, c, decimal),
                 _ => {}
             },
-            Some(b'\'' | b'"') => {}
+            Some(b'\'') => return self.prime(start, end, '\''),
             _ => {}
         }
         let at = self.after_blanks(end);
@@ -104,7 +104,7 @@ impl Lexer<'_> {
         let stop = end + c.len_utf8();
         let span = Span::new(start as u32, stop as u32);
         let number = &self.text[start..end];
-        let (choices, unit) = if matches!(role(c), Role::Prime) {
+        let (choices, unit) = if matches!(role(c), Role::Prime) || c == '\'' {
             ("minutes of arc or feet", "ft")
         } else {
             ("seconds of arc or inches", "in")

@@ -50,19 +50,39 @@ impl Lexer<'_> {
         }
     }
 
+    /// `'text'`
+    pub(super) fn single_quotes(&mut self) {
+        let start = self.at;
+        let line = self.text[start + 1..].split(['\n', '\r']).next().unwrap_or("");
+        let Some(length) = line.find('\'') else { return self.foreign_char('\'') };
+        let end = start + length + 2;
+        let span = Span::new(start as u32, end as u32);
+        let inner = line[..length].replace('\\', "\\\\").replace('"', "\\\"");
+        let problem = Problem::new(Code::BadText, span, "a text stands between double quotes").fix(
+            format!("write `\"{inner}\"`"),
+            span,
+            format!("\"{inner}\""),
+        );
+        self.report(problem);
+        self.push(TokenKind::Bad, start, end);
+    }
+
     /// No closing quote before the end of the line: the text ends where the line does.
     fn unclosed(&mut self, start: usize, quote: usize, line_end: usize) {
-        let end = start + self.text[start..line_end].trim_end().len();
+        let line = self.text[start..line_end].trim_end();
+        // A brace behind a blank is the block's: the rest of the block is still read.
+        let inner = line.strip_suffix('}').filter(|inner| inner.ends_with([' ', '\t'])).unwrap_or(line);
+        let end = start + inner.trim_end().len();
         let end = end.max(start + quote);
         let opened = Span::new(start as u32, (start + quote) as u32);
         let close = Span::new(end as u32, end as u32);
         let problem =
             Problem::new(Code::UnclosedBracket, opened, "the closing quote is missing on this line")
                 .help("a text ends on the line it begins on")
-                .fix("close the text at the end of the line", close, "\"");
+                .fix("close the text here", close, "\"");
         self.report(problem);
         self.push(TokenKind::String, start, end);
-        self.at = line_end;
+        self.at = start + inner.len();
     }
 
     fn check_escapes(&mut self, from: usize, to: usize) {

@@ -48,7 +48,10 @@ impl Lexer<'_> {
     /// Whether a declaring word declares here: first of a statement, with a name, a text or a number behind it.
     fn declares(&self, kind: TokenKind, end: usize) -> bool {
         use TokenKind as K;
-        if !matches!(self.last, K::Newline | K::Semicolon | K::RightBrace) {
+        let first =
+            matches!(self.last, K::Newline | K::Semicolon | K::RightBrace | K::RightParen | K::RightSquare)
+                || (kind == K::Allow && self.last == K::LeftBrace);
+        if !first {
             return false;
         }
         let next = self.after_blanks(end);
