@@ -181,11 +181,12 @@ pub(crate) fn solve(eval: &Eval<'_>, at: ItemRef) -> Solved {
         Ok(solution) => (Some(solution), Vec::new()),
         Err(faults) => (None, faults),
     };
-    for fault in &faults {
-        let owner = fault.part.and_then(|part| items.get(part)).copied().unwrap_or(at);
-        crate::faults::report(eval, owner, fault);
+    let solved = Solved { spec: Some(spec), solution, faults, items };
+    solved.report(eval, at, &solved.faults);
+    if let Some(solution) = &solved.solution {
+        solved.report(eval, at, &solution.faults());
     }
-    Solved { spec: Some(spec), solution, faults, items }
+    solved
 }
 
 fn lowered(eval: &Eval<'_>, at: ItemRef, def: &DriveDef<'_>) -> Option<(DriveSpec, Vec<ItemRef>)> {
@@ -283,6 +284,14 @@ fn set_speed(eval: &Eval<'_>, speed: f64, datum: Option<&Datum>, items: &[ItemRe
 }
 
 impl Solved {
+    /// Reports faults at the parts they are about, else at the drive.
+    pub fn report(&self, eval: &Eval<'_>, drive: ItemRef, faults: &[Fault]) {
+        for fault in faults {
+            let owner = fault.part.and_then(|part| self.items.get(part)).copied().unwrap_or(drive);
+            crate::faults::report(eval, owner, fault);
+        }
+    }
+
     /// The answer to a question about this drive; `None` where the spec stands in the way (which has been reported).
     pub fn answer(
         &self,

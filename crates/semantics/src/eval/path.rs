@@ -173,6 +173,10 @@ impl Eval<'_> {
             self.remark(crate::say::note(note));
             return solved.unbounded(&station);
         }
+        if let Answer::Refused(faults) = &answer {
+            solved.report(self, at, faults);
+            return None;
+        }
         self.answer(path, answer, reading)
     }
 
@@ -228,6 +232,7 @@ impl Eval<'_> {
                 self.remark(crate::say::note(&note));
                 return None;
             }
+            Answer::Refused(_) => return None,
             Answer::NoSuch => format!("there is no result `{}`", path_text(path)),
         };
         self.report(Diagnostic::new(Code::UnknownName, self.place(reading.at, path.span), found));
