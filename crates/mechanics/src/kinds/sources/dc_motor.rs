@@ -346,7 +346,8 @@ impl Source for DcMotor {
             Ok(envelope) if envelope.motor_limit.is_some_and(|limit| envelope.current(speed) >= limit) => {
                 "current"
             }
-            _ => "supply",
+            Ok(envelope) if speed < envelope.supply_speed() => "supply",
+            _ => "voltage",
         }
     }
 

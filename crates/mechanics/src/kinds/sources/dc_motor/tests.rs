@@ -130,7 +130,10 @@ fn results_of_its_own() {
     close(si, motor.characteristic(&feed).unwrap().drive.at(0.0), 1e-14);
     assert!(motor.answer("flow", &state).is_none());
     assert_eq!(motor.limited_by(&feed, 0.0), "current");
-    assert_eq!(motor.limited_by(&feed, rpm(2700.0)), "supply");
+    assert_eq!(motor.limited_by(&feed, rpm(2700.0)), "voltage");
+    let mut seen: Vec<&str> = (0..60).map(|i| motor.limited_by(&feed, f64::from(i) * 5.0)).collect();
+    seen.dedup();
+    assert_eq!(seen, ["current", "supply", "voltage"]);
 }
 
 #[test]

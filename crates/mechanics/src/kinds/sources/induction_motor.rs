@@ -1,0 +1,315 @@
+//! A three-phase cage motor from its name plate and its catalogue.
+
+use super::plate_reading::{PULL_UP_SPEED, Plate, plate};
+use super::straight_line::ratings;
+use crate::fault::{Fault, Note};
+use crate::kinds::fields::{
+    FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, SUPPLY, default, positive, quantity, range,
+};
+use crate::kinds::reading::{HoldBack, bad_value, differ, done, inertia, missing, returning};
+use crate::laws::induction_curve::{self, InductionCurve, flux_factor};
+use crate::laws::{kloss, synchronous};
+use crate::model::{Characteristic, Feed, Known, Model, Motion, Ratings, Source, SourceState};
+use crate::registry::{Bounds, Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
+use crate::solution::{Answer, Marks};
+use crate::values::{Duty, Values};
+
+/// The row.
+pub static ROW: KindRow = KindRow {
+    role: Role::Source,
+    name: "induction_motor",
+    title: "three-phase induction motor",
+    summary: "A cage motor switched directly on the mains, from its name plate and the torque ratios of its catalogue. \
+              Torque goes by the square of the voltage; above its synchronous speed it brakes. A name plate gives no \
+              current away from the rated point.",
+    fields: FIELDS,
+    results: RESULTS,
+    formulas: &[
+        synchronous::SYNCHRONOUS_SPEED,
+        synchronous::SLIP,
+        synchronous::RATED_TORQUE,
+        kloss::BREAKDOWN_SLIP,
+        kloss::TORQUE,
+        induction_curve::STRETCHED,
+        induction_curve::VOLTAGE,
+    ],
+    cautions: &[
+        "Locked-rotor, pull-up and breakdown torque are for seconds: the rated torque at its duty is what the motor can \
+         do for long.",
+        "The shape between the catalogue's points is an assumption; where a start is close, ask for the measured curve.",
+        "Work on mains is for licensed electricians; motor protection follows the local code.",
+    ],
+    example: "supply works: mains { voltage = 400 V; frequency = 50 Hz; accepts_return = yes }\n\
+              source motor: induction_motor { supply = works; rated_power = 4 kW; rated_speed = 1440 rpm; \
+              rated_voltage = 400 V; rated_frequency = 50 Hz; poles = 4; locked_rotor_torque = 2.3 × rated; \
+              pull_up_torque = 1.9 × rated; breakdown_torque = 2.9 × rated; inertia = 0.019 kg·m² }",
+    build,
+    given,
+};
+
+static FIELDS: &[Field] = &[
+    SUPPLY,
+    positive(
+        "rated_power",
+        "mechanical_power",
+        Need::Required,
+        range(10.0, 1e8),
+        "power at the shaft on the name plate; not the electrical power",
+    ),
+    positive(
+        "rated_speed",
+        "rotational_speed",
+        Need::Required,
+        range(10.0, 2000.0),
+        "speed at rated power, a few percent below the synchronous speed",
+    ),
+    positive(
+        "rated_voltage",
+        "voltage",
+        Need::Required,
+        range(24.0, 15e3),
+        "voltage between lines on the name plate",
+    ),
+    positive(
+        "rated_frequency",
+        "frequency",
+        Need::Required,
+        range(10.0, 500.0),
+        "frequency on the name plate",
+    ),
+    RATED_DUTY,
+    quantity(
+        "poles",
+        "count",
+        Need::Optional,
+        range(2.0, 120.0),
+        range(2.0, 24.0),
+        "number of poles, even; by rated speed and frequency when not given",
+    ),
+    starting("locked_rotor_torque", Need::Optional, "torque at standstill; Kloss's formula when not given"),
+    starting(
+        "pull_up_torque",
+        Need::Optional,
+        "lowest torque between standstill and breakdown; no dip when not given",
+    ),
+    starting("breakdown_torque", Need::Required, "highest torque on the way up to rated speed"),
+    quantity(
+        "pull_up_speed_ratio",
+        "percentage",
+        default(
+            PULL_UP_SPEED,
+            "catalogues give no speed for the pull-up torque; cage motors dip at low speed",
+        ),
+        Bounds { low: 0.0, low_in: false, high: 1.0, high_in: false },
+        range(0.05, 0.6),
+        "speed of the pull-up torque over synchronous speed",
+    ),
+    positive(
+        "rated_torque",
+        "torque",
+        Need::Optional,
+        range(1e-2, 1e7),
+        "torque on the name plate; it follows from power and speed and is checked against them",
+    ),
+    positive(
+        "rated_current",
+        "current",
+        Need::Optional,
+        range(0.05, 1e5),
+        "current in each line at rated power",
+    ),
+    MAX_SPEED,
+    INERTIA,
+    FLYWHEEL_EFFECT,
+];
+
+/// A torque of the catalogue, usually a multiple of the rated one.
+const fn starting(name: &'static str, need: Need, meaning: &'static str) -> Field {
+    Field {
+        name,
+        shape: Shape::OfRated("torque"),
+        need,
+        hard: Bounds::POSITIVE,
+        plausible: range(1e-2, 1e8),
+        meaning,
+    }
+}
+
+static RESULTS: &[ResultRow] = &[
+    result("rated_torque", "torque", "torque at rated power and speed"),
+    result("synchronous_speed", "rotational_speed", "speed of the field at the supply's frequency"),
+    result("slip", "percentage", "how far the shaft lags behind the field; below zero it brakes"),
+    result("locked_rotor_torque", "torque", "torque at standstill at the supply's voltage"),
+    result("pull_up_torque", "torque", "lowest torque on the way up at the supply's voltage"),
+    result("breakdown_torque", "torque", "highest torque at the supply's voltage"),
+    result("breakdown_speed", "rotational_speed", "speed of the breakdown torque"),
+];
+
+const fn result(name: &'static str, kind: &'static str, meaning: &'static str) -> ResultRow {
+    ResultRow { name, shape: ResultShape::Quantity(kind), meaning }
+}
+
+/// Frequencies of the supply, over the rated one, within which the law holds.
+const FREQUENCIES: (f64, f64) = (0.8, 1.25);
+
+#[derive(Debug)]
+struct InductionMotor {
+    plate: Plate,
+    rated_current: Option<f64>,
+    inertia: Known,
+    ratings: Ratings,
+}
+
+fn build(values: &Values) -> Result<Model, Vec<Fault>> {
+    let mut faults = Vec::new();
+    let inertia = inertia(values, &mut faults);
+    let Some(plate) = plate(values, &mut faults) else { return Err(faults) };
+    let rated_current = values.si("rated_current");
+    let ratings = Ratings {
+        effort: Some(plate.torque),
+        power: Some(plate.power),
+        current: rated_current,
+        ..ratings(values, "rated_torque")
+    };
+    done(Model::Source(Box::new(InductionMotor { plate, rated_current, inertia, ratings })), faults)
+}
+
+fn given(values: &Values) -> Vec<(&'static str, f64)> {
+    match plate(values, &mut Vec::new()) {
+        Some(plate) => vec![("rated_torque", plate.torque)],
+        None => Vec::new(),
+    }
+}
+
+impl InductionMotor {
+    fn curve(&self, feed: &Feed) -> Result<InductionCurve, Vec<Fault>> {
+        let Some(supply) = feed.supply else {
+            return Err(vec![missing(&[&["supply"]], "voltage and frequency of the mains it hangs on")]);
+        };
+        let (Some(voltage), Some(frequency)) = (supply.voltage, supply.frequency) else {
+            let why = "an induction motor needs a supply with voltage and frequency: mains";
+            return Err(vec![bad_value("supply", why, &[])]);
+        };
+        let plate = &self.plate;
+        let ratio = frequency / plate.frequency;
+        if !(FREQUENCIES.0..=FREQUENCIES.1).contains(&ratio) {
+            let why = "at {0} a plate for {1} says too little: the law leaves the stator's resistance aside";
+            let quantities = [(frequency, "frequency"), (plate.frequency, "frequency")];
+            return Err(vec![bad_value("supply", why, &quantities)]);
+        }
+        Ok(InductionCurve {
+            field_speed: synchronous::synchronous_speed(frequency, plate.poles),
+            rated_field_speed: plate.field_speed,
+            breakdown: plate.breakdown,
+            locked_rotor: plate.locked_rotor,
+            pull_up: plate.pull_up,
+            factor: flux_factor(voltage, plate.voltage, frequency, plate.frequency),
+        })
+    }
+
+    /// Whether the supply is another than the plate's.
+    fn scaled(&self, feed: &Feed) -> bool {
+        let other = |value: Option<f64>, rated| value.is_some_and(|value| differ(value, rated, 1e-3));
+        feed.supply.is_some_and(|supply| {
+            other(supply.voltage, self.plate.voltage) || other(supply.frequency, self.plate.frequency)
+        })
+    }
+
+    /// The current, which only the rated point has.
+    fn current(&self, state: &SourceState<'_>) -> Answer {
+        let at_rated = !differ(state.effort, self.plate.torque, 0.005)
+            && !differ(state.speed, self.plate.speed, 0.002)
+            && !self.scaled(state.feed);
+        match self.rated_current.filter(|_| at_rated) {
+            Some(si) => Answer::Quantity { si, kind: "current", marks: Marks::default() },
+            None => Answer::Absent(NO_CURRENT),
+        }
+    }
+}
+
+/// Why there is no current.
+const NO_CURRENT: Note = Note::plain(
+    "a name plate gives the current of the rated point alone: elsewhere it needs the equivalent circuit or the maker's \
+     curve",
+);
+
+impl Source for InductionMotor {
+    fn motion(&self) -> Motion {
+        Motion::Rotary
+    }
+
+    fn inertia(&self) -> Known {
+        self.inertia
+    }
+
+    fn characteristic(&self, feed: &Feed) -> Result<Characteristic, Vec<Fault>> {
+        let curve = self.curve(feed)?;
+        let top_speed = curve.field_speed;
+        let braking = returning(feed, || Box::new(HoldBack(curve.clone())));
+        let mut character = Characteristic::new(Box::new(curve), braking, top_speed);
+        character.scaled = self.scaled(feed);
+        character.follows_set_speed = false;
+        Ok(character)
+    }
+
+    fn ratings(&self, _duty: Option<Duty>) -> Ratings {
+        self.ratings
+    }
+
+    fn answer(&self, name: &str, state: &SourceState<'_>) -> Option<Answer> {
+        if name == "current" {
+            return Some(self.current(state));
+        }
+        if matches!(name, "input_power" | "efficiency" | "voltage" | "supply_current") {
+            return Some(Answer::Absent(NO_CURRENT));
+        }
+        let curve = self.curve(state.feed).ok()?;
+        let torque = |torque: f64| (torque * curve.factor, "torque");
+        let (si, kind) = match name {
+            "synchronous_speed" => (curve.field_speed, "rotational_speed"),
+            "slip" => (synchronous::slip(curve.field_speed, state.speed), "percentage"),
+            "locked_rotor_torque" => torque(curve.over_slip(curve.field_speed / curve.rated_field_speed)),
+            "pull_up_torque" => match curve.pull_up {
+                Some(point) => torque(point.torque),
+                None => return Some(Answer::Absent(Note::plain("no pull-up torque is given"))),
+            },
+            "breakdown_torque" => torque(curve.breakdown.torque),
+            "breakdown_speed" => (curve.speed_at(curve.breakdown.slip), "rotational_speed"),
+            _ => return None,
+        };
+        let marks = Marks { outside: false, scaled: self.scaled(state.feed) && kind == "torque" };
+        Some(Answer::Quantity { si, kind, marks })
+    }
+
+    fn symbols(&self, state: &SourceState<'_>) -> Vec<(&'static str, f64)> {
+        let plate = &self.plate;
+        let Ok(curve) = self.curve(state.feed) else { return Vec::new() };
+        let slip = (curve.field_speed - state.speed) / curve.rated_field_speed;
+        let kloss = |slip| kloss::torque(plate.breakdown.torque, plate.breakdown.slip, slip);
+        let supply = state.feed.supply.unwrap_or_default();
+        let mut out = vec![
+            ("p", plate.poles),
+            ("w_s", curve.field_speed),
+            ("w", state.speed),
+            ("P_n", plate.power),
+            ("w_n", plate.speed),
+            ("s_n", synchronous::slip(plate.field_speed, plate.speed)),
+            ("k", plate.breakdown.torque / plate.torque),
+            ("T_b", plate.breakdown.torque),
+            ("s_b", plate.breakdown.slip),
+            ("s", slip),
+            ("K", kloss(slip)),
+            ("T", curve.over_slip(slip)),
+            ("U_n", plate.voltage),
+        ];
+        out.extend(supply.frequency.map(|f| ("f", f)));
+        out.extend(supply.voltage.map(|u| ("U", u)));
+        if let Some(low) = plate.pull_up {
+            out.extend([("T_u", low.torque), ("K_u", kloss(low.slip))]);
+        }
+        out
+    }
+}
+
+#[cfg(test)]
+mod tests;
