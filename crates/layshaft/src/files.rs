@@ -83,7 +83,8 @@ pub fn read(path: &Path) -> Result<String, ReadError> {
     if !about.is_file() {
         return Err(ReadError::Other(String::from("it is not a regular file")));
     }
-    let limit = if path.extension().is_some_and(|ending| ending == SPEC_ENDING) { SPEC_LIMIT } else { TABLE_LIMIT };
+    let limit =
+        if path.extension().is_some_and(|ending| ending == SPEC_ENDING) { SPEC_LIMIT } else { TABLE_LIMIT };
     let file = fs::File::open(path).map_err(failure)?;
     take(file, limit, about.len())
 }
@@ -154,7 +155,8 @@ fn collect(folder: &Path, top: &Path, depth: usize, found: &mut Vec<PathBuf>) ->
                 collect(&path, top, depth + 1, found)?;
             }
         } else if path.extension().is_some_and(|ending| ending == SPEC_ENDING) {
-            let leads_inside = || fs::canonicalize(&path).is_ok_and(|real| real.starts_with(top) && real.is_file());
+            let leads_inside =
+                || fs::canonicalize(&path).is_ok_and(|real| real.starts_with(top) && real.is_file());
             if kind.is_file() || (kind.is_symlink() && leads_inside()) {
                 found.push(path);
             }

@@ -1,10 +1,12 @@
 //! `layshaft kinds`: what a part can be, and what is asked of each.
 
-use layshaft_mechanics::registry::{self, Bounds, Field, Formula, KindRow, Need, ResultRow, ResultShape, Role, Shape};
+use layshaft_mechanics::registry::{
+    self, Bounds, Field, Formula, KindRow, Need, ResultRow, ResultShape, Role, Shape,
+};
 use layshaft_present::note::quantity;
 use layshaft_present::sheet::role_word;
 use layshaft_present::unit::Habits;
-use layshaft_report::terminal::{Align, Cell, Column, Grid, Tone, wrap};
+use layshaft_report::terminal::{Align, Cell, Column, Grid, Style, Tone, wrap};
 
 use crate::output::{Exit, Output};
 
@@ -54,16 +56,12 @@ fn list(out: &Output) -> String {
 fn page(row: &KindRow, out: &Output) -> String {
     let (width, style) = (out.width(), out.style());
     let head = |text: &str| format!("\n{}\n", style.paint(Tone::Strong, text));
-    let mut page = format!(
-        "{} ({}): {}\n",
-        style.paint(Tone::Strong, row.name),
-        role_word(row.role),
-        row.title
-    );
+    let mut page =
+        format!("{} ({}): {}\n", style.paint(Tone::Strong, row.name), role_word(row.role), row.title);
     page.push_str(&lines(row.summary, width));
     page.push_str(&head("Fields"));
     let fields = row.fields.iter().chain(registry::common_fields(row.role));
-    page.push_str(&field_table(fields).render(width, style));
+    fields.for_each(|field| page.push_str(&field_text(field, width, style)));
     page.push_str(&head("Results"));
     let results = registry::common_results(row.role).iter().chain(row.results);
     page.push_str(&result_table(results).render(width, style));
@@ -76,8 +74,16 @@ fn page(row: &KindRow, out: &Output) -> String {
         row.cautions.iter().for_each(|caution| page.push_str(&lines(caution, width)));
     }
     page.push_str(&head("Example"));
-    page.push_str(&format!("  {} part: {} {}\n", role_word(row.role), row.name, row.example));
+    page.push_str(&example(row));
     page
+}
+
+/// The example as a declaration; one that brings its own supply is a declaration already.
+fn example(row: &KindRow) -> String {
+    if row.example.starts_with('{') {
+        return format!("  {} part: {} {}\n", role_word(row.role), row.name, row.example);
+    }
+    row.example.lines().map(|line| format!("  {line}\n")).collect()
 }
 
 /// A paragraph with an indent.
@@ -85,19 +91,19 @@ fn lines(text: &str, width: usize) -> String {
     wrap(text, width.saturating_sub(2).max(20)).iter().map(|line| format!("  {line}\n")).collect()
 }
 
-fn field_table<'f>(fields: impl Iterator<Item = &'f Field>) -> Grid {
-    let row = |field: &Field| {
-        let meaning = match need_reason(field) {
-            Some(reason) => format!("{}; {reason}", field.meaning),
-            None => field.meaning.to_string(),
-        };
-        [field.name.to_string(), shape(field), need(field).to_string(), range(field), meaning]
+/// A field: what stands there, whether it is needed, its range; below it, what it means.
+fn field_text(field: &Field, width: usize, style: Style) -> String {
+    let facts = [shape(field), need(field).to_string(), range(field)];
+    let facts: Vec<String> = facts.into_iter().filter(|fact| !fact.is_empty()).collect();
+    let meaning = match need_reason(field) {
+        Some(reason) => format!("{}; {reason}", field.meaning),
+        None => field.meaning.to_string(),
     };
-    let heads = ["field", "what stands there", "needed", "range", "meaning"];
-    Grid {
-        columns: heads.into_iter().map(column).collect(),
-        rows: fields.map(|field| row(field).map(Cell::plain).to_vec()).collect(),
+    let mut text = format!("  {}: {}\n", style.paint(Tone::Strong, field.name), facts.join(", "));
+    for line in wrap(&meaning, width.saturating_sub(6).max(20)) {
+        text.push_str(&format!("      {line}\n"));
     }
+    text
 }
 
 fn shape(field: &Field) -> String {
@@ -110,7 +116,11 @@ fn shape(field: &Field) -> String {
         Shape::Part(role) => format!("name of a {}", role_word(role)),
         Shape::Points(columns) => {
             let name = |column: &registry::ColumnRow| {
-                if column.optional { format!("{} (may be missing)", column.name) } else { column.name.to_string() }
+                if column.optional {
+                    format!("{} (may be missing)", column.name)
+                } else {
+                    column.name.to_string()
+                }
             };
             format!("points of {}", columns.iter().map(name).collect::<Vec<_>>().join(", "))
         }
@@ -123,10 +133,9 @@ fn shape(field: &Field) -> String {
 
 const fn need(field: &Field) -> &'static str {
     match field.need {
-        Need::Required => "always",
-        Need::Optional => "no",
-        Need::Default { .. } => "no",
-        Need::Where(_) => "where asked",
+        Need::Required => "required",
+        Need::Optional | Need::Default { .. } => "may be left out",
+        Need::Where(_) => "required where it is asked for",
         Need::OneOf => "one of several",
     }
 }
@@ -142,7 +151,9 @@ fn need_reason(field: &Field) -> Option<String> {
 /// An SI value of a field in its usual unit.
 fn value(field: &Field, si: f64) -> String {
     match field.shape {
-        Shape::Quantity(kind) | Shape::OfRated(kind) | Shape::Interval(kind) => quantity(si, kind, &Habits::default()),
+        Shape::Quantity(kind) | Shape::OfRated(kind) | Shape::Interval(kind) => {
+            quantity(si, kind, &Habits::default())
+        }
         Shape::Flag => String::from(if si == 0.0 { "no" } else { "yes" }),
         _ => layshaft_present::number::written(si),
     }
@@ -176,7 +187,10 @@ fn result_table<'r>(results: impl Iterator<Item = &'r ResultRow>) -> Grid {
         };
         [result.name.to_string(), shape, result.meaning.to_string()].map(Cell::plain).to_vec()
     };
-    Grid { columns: ["result", "what it is", "meaning"].into_iter().map(column).collect(), rows: results.map(row).collect() }
+    Grid {
+        columns: ["result", "what it is", "meaning"].into_iter().map(column).collect(),
+        rows: results.map(row).collect(),
+    }
 }
 
 fn formula_text(formula: &Formula, width: usize) -> String {
@@ -184,7 +198,8 @@ fn formula_text(formula: &Formula, width: usize) -> String {
     for (symbol, kind, meaning) in formula.symbols {
         text.push_str(&format!("    {symbol}: {meaning} ({kind})\n"));
     }
-    let about = format!("valid for {}; source: {}; revision {}", formula.validity, formula.source, formula.revision);
+    let about =
+        format!("valid for {}; source: {}; revision {}", formula.validity, formula.source, formula.revision);
     for line in wrap(&about, width.saturating_sub(4).max(20)) {
         text.push_str(&format!("    {line}\n"));
     }

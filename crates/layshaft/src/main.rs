@@ -1,2 +1,54 @@
-//! The command.
-fn main() {}
+//! The command. It alone reads the command line, touches files (with [`files`]) and writes to standard output.
+
+mod args;
+mod check;
+mod explain;
+mod files;
+mod fmt;
+mod inputs;
+mod kinds;
+mod new;
+mod output;
+mod shell;
+mod units;
+
+use std::process::ExitCode;
+
+use clap::Parser;
+
+use args::{Args, Command};
+use output::{Exit, Output};
+
+fn main() -> ExitCode {
+    std::panic::set_hook(Box::new(|panic| {
+        eprintln!("layshaft: internal error: {panic}");
+        eprintln!(
+            "This is a mistake in layshaft, not in your spec. Please report it with the spec that shows it."
+        );
+    }));
+    // The unwinding value says nothing that the hook has not said.
+    std::panic::catch_unwind(run).unwrap_or(Exit::Internal).into()
+}
+
+fn run() -> Exit {
+    let args = match Args::try_parse() {
+        Ok(args) => args,
+        Err(error) => {
+            // Nothing is left to be said where even the message cannot be written.
+            let _ = error.print();
+            return if error.use_stderr() { Exit::Unusable } else { Exit::Holds };
+        }
+    };
+    let mut out = Output::new(args.color);
+    let exit = match args.command {
+        Command::Check { paths, format } => check::check(&paths, format, &mut out),
+        Command::Fmt { paths, check } => fmt::fmt(&paths, check, &mut out),
+        Command::Explain { code } => explain::explain(code.as_deref(), &mut out),
+        Command::Units { kind } => units::units(kind.as_deref(), &mut out),
+        Command::Kinds { name } => kinds::kinds(name.as_deref(), &mut out),
+        Command::New { name } => new::new(&name, &mut out),
+        Command::Completions { shell } => shell::completions(shell, &mut out),
+        Command::Man { command } => shell::man(command.as_deref(), &mut out),
+    };
+    exit.max(out.finish())
+}

@@ -146,7 +146,7 @@ impl Row<'_> {
     fn build(&self) -> DriveRow {
         let solved = self.case.spec.as_deref().zip(self.case.solution.as_deref());
         let (outcome, moves) = match solved {
-            Some((_, solution)) => super::outcome::words(solution),
+            Some((_, solution)) => super::outcome::words(solution, &self.units.speed),
             None => (String::from("not solved"), false),
         };
         DriveRow {
@@ -158,6 +158,8 @@ impl Row<'_> {
             moves,
             speed: solved
                 .map_or(Entry::None, |(_, of)| self.entry(of.answer(None, None, "speed"), &self.units.speed)),
+            limited_by: solved
+                .map_or(Entry::None, |(_, of)| self.entry(of.answer(None, None, "limited_by"), "")),
             sources: solved.map_or_else(Vec::new, |(spec, of)| self.sources(spec, of)),
             points: solved.map_or_else(Vec::new, |(_, of)| super::outcome::points(of, &self.units.speed)),
             results: match (solved, self.detail) {
@@ -184,7 +186,6 @@ impl Row<'_> {
                 power_share: ask(&["power_share"], "%"),
                 current: ask(&["current"], &self.units.current),
                 mode: ask(&["mode"], ""),
-                limited_by: ask(&["limited_by"], ""),
             }
         };
         sources(spec).map(row).collect()

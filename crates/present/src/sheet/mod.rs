@@ -8,6 +8,8 @@ mod drives;
 mod outcome;
 mod record;
 
+pub use record::role_word;
+
 use layshaft_semantics::Analysis;
 use layshaft_semantics::analysis::Verdict;
 
@@ -105,6 +107,8 @@ pub struct DriveRow {
     pub moves: bool,
     /// The drive's own speed at the reached point.
     pub speed: Entry,
+    /// What bounds the drive there: `torque`, `current`, `supply`, `governor`, `braking`.
+    pub limited_by: Entry,
     /// Each source.
     pub sources: Vec<SourceRow>,
     /// All operating points, slowest first.
@@ -138,8 +142,6 @@ pub struct SourceRow {
     pub current: Entry,
     /// `motoring`, `braking` …
     pub mode: Entry,
-    /// What bounds it, if anything.
-    pub limited_by: Entry,
 }
 
 /// An operating point.

@@ -1,47 +1,47 @@
 //! What becomes of a drive from rest, and all its operating points.
 
 use layshaft_mechanics::solution::{Answer, Mode, Outcome, Stability};
-use layshaft_mechanics::solve::Solution;
+use layshaft_mechanics::solve::{OperatingPoint, Solution};
 
 use super::PointRow;
 use crate::number::DIGITS;
 use crate::shown::Number;
 
-/// The outcome in words, and whether the drive comes to run.
-pub(super) fn words(solution: &Solution) -> (String, bool) {
-    let flag = |name: &str| solution.answer(None, None, name) == Answer::Flag(true);
-    match solution.outcome {
-        Outcome::Starts if flag("runs_up") => (String::from("runs up"), true),
-        Outcome::Starts => (String::from("starts, hangs below its highest point"), true),
-        Outcome::Stalls => (String::from("stalls"), false),
-        Outcome::DrivenBack => (String::from("driven back"), false),
-        Outcome::Runaway => (String::from("runs away"), false),
+/// The outcome in words, and whether the drive comes to run the way it is asked to.
+pub(super) fn words(solution: &Solution, unit: &str) -> (String, bool) {
+    let Some(outcome) = solution.outcome() else { return (String::from("not known"), false) };
+    let back = solution.reached().filter(|point| point.mode == Mode::DrivenBack);
+    let runs_up = || solution.answer(None, None, "runs_up") == Answer::Flag(true);
+    match outcome {
+        Outcome::Starts if runs_up() => (String::from("runs up"), true),
+        Outcome::Starts => (String::from("hangs below its highest point"), false),
         Outcome::SelfMoving => (String::from("moved by its load"), true),
+        Outcome::Stalls => (String::from("stalls"), false),
+        Outcome::Runaway => (String::from("runs away"), false),
+        Outcome::DrivenBack => match back {
+            Some(point) => (format!("driven back at {}", speed(&point, -1.0, unit).text), false),
+            None => (String::from("driven back"), false),
+        },
     }
 }
 
 /// All operating points, slowest first.
 pub(super) fn points(solution: &Solution, unit: &str) -> Vec<PointRow> {
-    let point = |(at, point): (usize, &layshaft_mechanics::solve::OperatingPoint)| PointRow {
-        speed: Number::computed(point.speed, solution.speed_kind, unit, DIGITS),
+    let row = |point: &OperatingPoint| PointRow {
+        speed: speed(point, 1.0, unit),
         stability: match point.stability {
             Stability::Stable => "stable",
             Stability::Unstable => "unstable",
             Stability::Marginal => "marginal",
         },
-        mode: mode(point.mode),
-        reached: solution.reached == Some(at),
+        mode: point.mode.word(),
+        reached: point.reached,
     };
-    solution.points.iter().enumerate().map(point).collect()
+    solution.points().iter().map(row).collect()
 }
 
-/// The language's word for a mode.
-pub const fn mode(mode: Mode) -> &'static str {
-    match mode {
-        Mode::Motoring => "motoring",
-        Mode::Braking => "braking",
-        Mode::Standstill => "standstill",
-        Mode::DrivenBack => "driven_back",
-        Mode::Freewheeling => "freewheeling",
-    }
+fn speed(point: &OperatingPoint, sign: f64, unit: &str) -> Number {
+    let kind = point.motion.speed_kind();
+    let usual = if unit.is_empty() { crate::unit::usual_unit(kind, [point.speed]) } else { unit.to_string() };
+    Number::computed(sign * point.speed, kind, &usual, DIGITS)
 }

@@ -220,6 +220,7 @@ fn drive_case(row: &DriveRow, cases: &Cases) -> DriveCase {
         solved: row.solved,
         outcome: row.outcome.clone(),
         speed: value::entry(&row.speed),
+        limited_by: value::entry(&row.limited_by),
         sources: row.sources.iter().map(source).collect(),
         operating_points: row.points.iter().map(point).collect(),
         results: row.results.iter().map(results).collect(),
@@ -239,7 +240,6 @@ fn source(row: &SourceRow) -> Source {
         power_share: value::entry(&row.power_share),
         current: value::entry(&row.current),
         mode: value::entry(&row.mode),
-        limited_by: value::entry(&row.limited_by),
     }
 }
 

@@ -176,6 +176,7 @@ pub struct DriveCase {
     pub solved: bool,
     pub outcome: String,
     pub speed: Option<Value>,
+    pub limited_by: Option<Value>,
     pub sources: Vec<Source>,
     pub operating_points: Vec<OperatingPoint>,
     pub results: Vec<Results>,
@@ -194,7 +195,6 @@ pub struct Source {
     pub power_share: Option<Value>,
     pub current: Option<Value>,
     pub mode: Option<Value>,
-    pub limited_by: Option<Value>,
 }
 
 #[derive(Debug, Serialize)]

@@ -81,9 +81,10 @@ fn columns(drive: &DriveSheet) -> Vec<Source> {
     if any(|source| source.mode != Entry::Word("motoring") && !source.mode.text().is_empty()) {
         columns.push(text("mode", |_, source, _| Cell::plain(source.map_or("", |s| s.mode.text()))));
     }
-    if any(|source| !matches!(source.limited_by.text(), "" | "none")) {
-        columns
-            .push(text("limited by", |_, source, _| Cell::plain(source.map_or("", |s| s.limited_by.text()))));
+    if drive.rows.iter().any(|row| !matches!(row.limited_by.text(), "" | "torque" | "force")) {
+        columns.push(text("limited by", |row, _, first| {
+            Cell::plain(if first { row.limited_by.text() } else { "" })
+        }));
     }
     if any(|source| !marks(source).is_empty()) {
         columns.push(text("data", |_, source, _| Cell {
