@@ -78,7 +78,7 @@ pub(crate) fn stop(drive: &Assembly, x: f64) -> Result<Stop, Answer> {
         run.until(bite.time)?;
         run.brakes[bite.stage] += bite.effort;
     }
-    run.to_rest(!bites.is_empty())?;
+    run.come_to_rest(!bites.is_empty())?;
     let station = drive.shaft_of(None, None).map_or(1.0, |shaft| drive.shafts[shaft].speed);
     Ok(Stop { time: run.time, distance: run.path * station, peak: run.peak })
 }
@@ -214,7 +214,7 @@ impl Run<'_> {
     }
 
     /// Follows the drive to rest under the brakes that bite.
-    fn to_rest(&mut self, braked: bool) -> Result<(), Answer> {
+    fn come_to_rest(&mut self, braked: bool) -> Result<(), Answer> {
         let fails = if braked {
             "the brake does not bring the load to rest"
         } else {
