@@ -19,17 +19,16 @@ impl TurnWarning {
     /// What is wrong.
     pub fn message(&self) -> String {
         format!(
-            "π and the radians of a rotational speed count one turn twice: this is no {} but 2π times too {}",
-            self.wanted.title,
-            if self.pi > 0 { "large" } else { "small" }
+            "π and the radians of a rotational speed count one turn twice, so this is no {}",
+            self.wanted.title
         )
     }
 
     /// What to write instead.
     pub fn hints(&self) -> Vec<String> {
         vec![
-            "a rotational speed already counts radians, in whatever unit it was typed: `torque * speed` is a power, \
-             `radius * speed` a speed along the rim, both without π"
+            "a rotational speed already counts radians, in whatever unit it was typed: torque times speed is a \
+             power, radius times speed a speed along the rim, both without π"
                 .to_owned(),
             "if turns per time are meant as a count, divide by a turn first: `n / (1 rev)`".to_owned(),
         ]

@@ -9,7 +9,7 @@ pub struct Dim(pub [i16; 7]);
 pub(crate) const WHOLE: i16 = 6;
 
 /// The SI base symbols in the order of [`Dim`].
-const BASE: [&str; 7] = ["m", "kg", "s", "A", "K", "mol", "cd"];
+pub(crate) const BASE: [&str; 7] = ["m", "kg", "s", "A", "K", "mol", "cd"];
 
 impl Dim {
     /// No dimension: a number, an angle, a grade.

@@ -1,6 +1,6 @@
 //! What to write instead of what the algebra refuses.
 
-use crate::dimension::Dim;
+use crate::dimension::{Dim, WHOLE};
 use crate::function::Function;
 use crate::kind::Kind;
 use crate::quantity::{Scale, Tag, Type};
@@ -9,6 +9,7 @@ use crate::refusal::{Operation, Refusal, missing_radians};
 const FORCE: Dim = Dim::whole(1, 1, -2, 0, 0);
 const MASS: Dim = Dim::whole(0, 1, 0, 0, 0);
 const ACCELERATION: Dim = Dim::whole(1, 0, -2, 0, 0);
+const PER_TIME: Dim = Dim::whole(0, 0, -1, 0, 0);
 
 pub(crate) fn hints(refusal: &Refusal) -> Vec<String> {
     match refusal {
@@ -142,13 +143,23 @@ fn wrong_kind(wanted: &Kind, found: &Type) -> Vec<String> {
     };
     let mut out: Vec<String> = if text.is_empty() { Vec::new() } else { one(text) };
     out.extend(escape(wanted, found));
-    out
+    if out.is_empty() { fallback(wanted) } else { out }
 }
 
-/// The way out where the formula is right but its radians are counted otherwise: `m * v * w` is a force.
+/// The way out where a frequency was taken for a rotational speed, or where the formula is right but its radians
+/// are counted otherwise: `m * v * w` is a force.
 fn escape(wanted: &Kind, found: &Type) -> Option<String> {
-    let title = wanted.with_article();
     let missing = missing_radians(wanted, found)?;
+    let cycles = found.turns.frequency;
+    if missing != 0 && cycles == missing * WHOLE && found.dim != PER_TIME {
+        return Some(
+            "a frequency counts cycles: write `2 * pi * f` for it, or take the rotational speed".to_owned(),
+        );
+    }
+    // Only a rotational speed brings radians that a formula may not mean.
+    if !found.turns.rotates || found.literal || cycles != 0 || found.dim == PER_TIME {
+        return None;
+    }
     let factor = match missing {
         0 => return None,
         1 => "* (1 rad)".to_owned(),
@@ -156,9 +167,7 @@ fn escape(wanted: &Kind, found: &Type) -> Option<String> {
         more if more > 0 => format!("* (1 rad)^{more}"),
         fewer => format!("/ (1 rad)^{}", fewer.unsigned_abs()),
     };
-    Some(format!(
-        "if the formula is right as it stands and gives {title} per radian or radians of it, write `… {factor}`"
-    ))
+    Some(format!("if the formula is right and only its radians are counted otherwise, write `(…) {factor}`"))
 }
 
 fn wrong_tag(wanted: &Kind, found: Tag) -> Vec<String> {
@@ -198,7 +207,10 @@ fn different_dimensions(left: &Type, right: &Type) -> Vec<String> {
     match (number, weight) {
         (true, _) => one("give the plain number a unit, or divide the other value by one"),
         (_, true) => one("for the weight of a mass write `m * 9.80665 m/s²`, or its unit as `kgf`"),
-        _ => Vec::new(),
+        _ => [(left, right), (right, left)]
+            .iter()
+            .find_map(|(a, b)| a.candidates().iter().find_map(|kind| specific(kind, b)))
+            .map_or_else(Vec::new, one),
     }
 }
 
@@ -213,7 +225,9 @@ fn different_tags(left: Tag, right: Tag) -> Vec<String> {
             "bring both to one side of the machine with the efficiency; electrical − mechanical is the heat"
         }
         (Tag::Inertia, Tag::FlywheelEffect) => "GD² = 4·J: write `GD2 / 4` for the inertia, or `4 * J`",
-        (Tag::Gauge, Tag::Absolute) => "absolute = gauge + ambient pressure, about 1.013 bar at sea level",
+        (Tag::Gauge, Tag::Absolute) => {
+            "absolute = gauge + ambient pressure: bring one to the other first, `1 * p_gauge + 1.013 bar`"
+        }
         _ => return Vec::new(),
     };
     one(text)
@@ -223,7 +237,7 @@ fn level_scaled(operation: Operation) -> Vec<String> {
     match operation {
         Operation::Negate => one("write the sign with the number: `-20 °C`"),
         Operation::Multiply | Operation::Divide => one(
-            "use a difference: `0.39 %/K * (winding - 20 °C)`; an absolute temperature as a factor is `t - 0 K`",
+            "use a difference: `0.39 %/K * (winding - 20 °C)`; as a factor above absolute zero write `t - (-273.15 °C)`",
         ),
         _ => one("use a difference of temperatures"),
     }

@@ -1,7 +1,7 @@
 //! The type of a value: dimension, angle state, tag and scale, with the facts the turn warning needs.
 
 use crate::angle::Angle;
-use crate::dimension::{Dim, WHOLE, push_factor, scaled};
+use crate::dimension::{BASE, Dim, WHOLE, fraction, push_factor, scaled};
 use crate::kind::Kind;
 use crate::kinds::KINDS;
 
@@ -220,20 +220,40 @@ impl Type {
         };
         let exact =
             KINDS.iter().find(|kind| kind.dim == self.dim && kind.angle.map(|a| a * WHOLE) == Some(angle));
-        let plain = KINDS.iter().find(|kind| {
-            kind.dim == self.dim
-                && kind.angle == Some(0)
-                && !kind.si.is_empty()
-                && !kind.si.contains(['/', '·'])
-        });
-        match (exact, plain) {
-            (Some(kind), _) => kind.si.to_owned(),
-            (None, Some(kind)) => {
-                let (mut above, mut below) = (vec![kind.si.to_owned()], Vec::new());
-                push_factor("rad", angle, &mut above, &mut below);
-                crate::dimension::fraction(&above, &below)
-            }
-            (None, None) => self.dim.si_text(angle),
+        if let Some(kind) = exact {
+            return kind.si.to_owned();
         }
+        match self.as_named_unit() {
+            Some((symbol, index, sixths)) => {
+                let (mut above, mut below) = (vec![symbol.to_owned()], Vec::new());
+                push_factor(BASE.get(index).copied().unwrap_or_default(), sixths, &mut above, &mut below);
+                push_factor("rad", angle, &mut above, &mut below);
+                fraction(&above, &below)
+            }
+            None => self.dim.si_text(angle),
+        }
+    }
+
+    /// The dimension as a unit with a name of its own times a power of one base unit: `V·s`, `W/m`.
+    fn as_named_unit(&self) -> Option<(&'static str, usize, i16)> {
+        // Two base units are plain enough.
+        if self.dim.0.iter().filter(|sixths| **sixths != 0).count() < 3 {
+            return None;
+        }
+        let mut best: Option<(&'static str, usize, i16)> = None;
+        for kind in KINDS.iter().filter(|kind| kind.angle == Some(0) && !kind.dim.is_none()) {
+            let own = !kind.si.is_empty() && kind.si.chars().all(char::is_alphabetic);
+            let symbol = own && kind.si != "Hz" && !BASE.contains(&kind.si);
+            let Some(rest) = self.dim.minus(kind.dim).filter(|_| symbol) else { continue };
+            let mut others = rest.0.iter().enumerate().filter(|(_, sixths)| **sixths != 0);
+            let (index, sixths) = others.next().map_or((0, 0), |(index, sixths)| (index, *sixths));
+            // The lower power is the plainer unit, and a product plainer than a quotient.
+            let rank = |sixths: i16| (sixths.unsigned_abs(), sixths < 0);
+            let nearer = best.is_none_or(|(_, _, least)| rank(sixths) < rank(least));
+            if others.next().is_none() && nearer {
+                best = Some((kind.si, index, sixths));
+            }
+        }
+        best
     }
 }
