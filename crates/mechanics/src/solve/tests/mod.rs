@@ -4,3 +4,4 @@ mod outcomes;
 mod published;
 mod random;
 mod transient;
+mod worked;
