@@ -42,3 +42,6 @@ pub static ROWS: &[&KindRow] = &[
     &loads::vehicle::ROW,
     &loads::flywheel::ROW,
 ];
+
+#[cfg(test)]
+mod tests;

@@ -31,7 +31,7 @@ pub const SPEED: Formula = Formula {
 pub const TOTAL_EFFICIENCY: Formula = Formula {
     name: "total_efficiency",
     text: "eta * (1 - s)",
-    symbols: &[("eta", "percentage", "efficiency without slip"), ("s", "number", "slip, creep included")],
+    symbols: &[("eta", "percentage", "efficiency without slip"), ("s", "percentage", "slip, creep included")],
     validity: "a belt inside its rating",
     source: "balance of power",
     revision: 1,

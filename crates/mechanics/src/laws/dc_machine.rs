@@ -233,7 +233,7 @@ mod tests {
         let best = (2.7_f64 * 131.055).sqrt();
         close(best, 18.810_861_224_3, 1e-9);
         let speed = dc.speed(12.0, best);
-        close(speed, rpm(4660.989_129_17), 1e-9);
+        close(speed, rpm(4_660.989_129_17), 1e-9);
         close(dc.torque(best) * speed / (12.0 * best), 0.654_907_659_998, 1e-9);
     }
 

@@ -199,7 +199,7 @@ mod tests {
     fn hill_with_wind() {
         // Closed form of the road load, power with the speed over ground.
         let car = vehicle(&[("grade", 0.06)]);
-        close(car.demand().at(25.0), 1408.216_919_16, 1e-11);
+        close(car.demand().at(25.0), 1_408.216_919_16, 1e-11);
         let state = LoadState { speed: 25.0, effort: car.demand().at(25.0) };
         let Some(Answer::Quantity { si, .. }) = car.answer("air_force", &state) else { panic!("a force") };
         close(si, 351.0, 1e-11);

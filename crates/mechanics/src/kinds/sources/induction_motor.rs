@@ -155,7 +155,6 @@ const FREQUENCIES: (f64, f64) = (0.8, 1.25);
 #[derive(Debug)]
 struct InductionMotor {
     plate: Plate,
-    rated_current: Option<f64>,
     inertia: Known,
     ratings: Ratings,
 }
@@ -164,14 +163,13 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let inertia = inertia(values, &mut faults);
     let Some(plate) = plate(values, &mut faults) else { return Err(faults) };
-    let rated_current = values.si("rated_current");
     let ratings = Ratings {
         effort: Some(plate.torque),
         power: Some(plate.power),
-        current: rated_current,
+        current: values.si("rated_current"),
         ..ratings(values, "rated_torque")
     };
-    done(Model::Source(Box::new(InductionMotor { plate, rated_current, inertia, ratings })), faults)
+    done(Model::Source(Box::new(InductionMotor { plate, inertia, ratings })), faults)
 }
 
 fn given(values: &Values) -> Vec<(&'static str, f64)> {
@@ -214,24 +212,7 @@ impl InductionMotor {
             other(supply.voltage, self.plate.voltage) || other(supply.frequency, self.plate.frequency)
         })
     }
-
-    /// The current, which only the rated point has.
-    fn current(&self, state: &SourceState<'_>) -> Answer {
-        let at_rated = !differ(state.effort, self.plate.torque, 0.005)
-            && !differ(state.speed, self.plate.speed, 0.002)
-            && !self.scaled(state.feed);
-        match self.rated_current.filter(|_| at_rated) {
-            Some(si) => Answer::Quantity { si, kind: "current", marks: Marks::default() },
-            None => Answer::Absent(NO_CURRENT),
-        }
-    }
 }
-
-/// Why there is no current.
-const NO_CURRENT: Note = Note::plain(
-    "a name plate gives the current of the rated point alone: elsewhere it needs the equivalent circuit or the maker's \
-     curve",
-);
 
 impl Source for InductionMotor {
     fn motion(&self) -> Motion {
@@ -257,12 +238,6 @@ impl Source for InductionMotor {
     }
 
     fn answer(&self, name: &str, state: &SourceState<'_>) -> Option<Answer> {
-        if name == "current" {
-            return Some(self.current(state));
-        }
-        if matches!(name, "input_power" | "efficiency" | "voltage" | "supply_current") {
-            return Some(Answer::Absent(NO_CURRENT));
-        }
         let curve = self.curve(state.feed).ok()?;
         let torque = |torque: f64| (torque * curve.factor, "torque");
         let (si, kind) = match name {

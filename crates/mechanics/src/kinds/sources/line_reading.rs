@@ -138,6 +138,8 @@ mod tests {
         speed_kind: "rotational_speed",
     };
 
+    type Fields<'a> = &'a [(&'static str, f64)];
+
     fn read(fields: &[(&'static str, f64)], points: &[(f64, f64)]) -> Result<Line, Vec<Fault>> {
         let mut values = Values::default();
         for (name, si) in fields {
@@ -157,7 +159,7 @@ mod tests {
     #[test]
     fn any_two_settle_it() {
         let (stall, no_load) = (10.0, 200.0);
-        let ways: [(&[(&'static str, f64)], &[(f64, f64)]); 8] = [
+        let ways: [(Fields<'_>, &[(f64, f64)]); 8] = [
             (&[("stall_torque", stall), ("no_load_speed", no_load)], &[]),
             (&[("stall_torque", stall), ("peak_power", 500.0)], &[]),
             (&[("no_load_speed", no_load), ("peak_power", 500.0)], &[]),

@@ -167,7 +167,8 @@ fn starting(
         faults.push(missing(&[&["locked_rotor_torque"]], why));
         return (None, None);
     };
-    if pull_up > locked || pull_up > breakdown.torque {
+    // A breakdown torque below the locked-rotor torque has been said already; what follows from it is no second mistake.
+    if pull_up > locked || (pull_up > breakdown.torque && locked <= breakdown.torque) {
         faults.push(contradiction(
             &["pull_up_torque", "locked_rotor_torque"],
             "pull-up torque is the lowest on the way up, so it cannot be {0} with {1} at the locked rotor",

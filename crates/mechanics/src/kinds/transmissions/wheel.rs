@@ -65,11 +65,18 @@ static FIELDS: &[Field] = &[
     Field { meaning: "moment of inertia of all wheels that turn with this shaft", ..SMALL_INERTIA },
 ];
 
-static RESULTS: &[ResultRow] = &[ResultRow {
-    name: "rolling_circumference",
-    shape: ResultShape::Quantity("length"),
-    meaning: "way covered in one turn",
-}];
+static RESULTS: &[ResultRow] = &[
+    ResultRow {
+        name: "rolling_circumference",
+        shape: ResultShape::Quantity("length"),
+        meaning: "way covered in one turn",
+    },
+    ResultRow {
+        name: "grip_reserve",
+        shape: ResultShape::Quantity("number"),
+        meaning: "most force the ground takes over the force at the wheel; below 1 it slips",
+    },
+];
 
 fn radius(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     let ways = ["rolling_circumference", "rolling_radius", "rolling_diameter"];

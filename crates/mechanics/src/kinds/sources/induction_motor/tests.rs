@@ -92,12 +92,8 @@ fn the_supply_says_whether_it_brakes() {
 #[test]
 fn no_current_is_made_up() {
     let motor = motor(&values().with("rated_current", Si(8.3)));
-    let feed = mains(400.0, 50.0, Some(true));
-    let at =
-        |n: f64, effort: f64| motor.answer("current", &SourceState { speed: rpm(n), effort, feed: &feed });
-    assert!(matches!(at(1440.0, 26.526), Some(Answer::Quantity { si: 8.3, .. })));
-    assert!(matches!(at(1470.0, 13.3), Some(Answer::Absent(_))));
-    assert!(motor.draw(&feed).is_none());
+    assert_eq!(motor.ratings(None).current, Some(8.3));
+    assert!(motor.draw(&mains(400.0, 50.0, Some(true))).is_none());
 }
 
 #[test]
