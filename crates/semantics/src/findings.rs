@@ -15,8 +15,7 @@ pub(crate) fn report(shared: Shared<'_>, states: &[&State<'_>]) {
         for drive in shared.drives.keys() {
             let solved = state.eval.solved(*drive);
             let Some(solution) = &solved.solution else { continue };
-            let raised: Vec<layshaft_mechanics::solution::Finding> = { let _ = solution; Vec::new() };
-            for finding in raised {
+            for finding in solution.findings() {
                 let Some(code) = Code::from_word(finding.code) else { continue };
                 let part = finding.part.and_then(|part| solved.items.get(part)).copied().unwrap_or(*drive);
                 let words = crate::say::note(&finding.note);

@@ -125,8 +125,12 @@ impl Eval<'_> {
         self.place(at, span)
     }
 
-    /// `10 kg*g` with a value `g` in sight: it is the gram, and may not be meant.
+    /// `10 kg*g` with a value `g` in sight: it is the gram, and may not be meant. A unit of the trade, such as `m/s²`
+    /// or one written with `·`, is no product of values.
     fn hint_hidden_names(&self, written: &UnitText, number: &Number, at: ItemRef) {
+        if is_usual(self.shared.world.text(at, written.span)) {
+            return;
+        }
         let mut symbols = written.text.split(|c: char| "·*/()^⁻¹²³0123456789-".contains(c));
         let _first = symbols.next();
         for symbol in symbols.filter(|symbol| !symbol.is_empty()) {
@@ -220,4 +224,10 @@ impl Eval<'_> {
         }
         finding
     }
+}
+
+/// Whether a unit is one of those offered for some kind, or written with the sign that only units have.
+fn is_usual(unit: &str) -> bool {
+    let text = unit.replace('*', "·").replace("^2", "²").replace("^3", "³");
+    unit.contains('·') || layshaft_units::KINDS.iter().any(|kind| kind.units.contains(&text.as_str()))
 }

@@ -50,6 +50,10 @@ impl Eval<'_> {
     fn difference(&self, tolerance: &Expr, of: &Quantity, reading: Reading<'_>) -> Option<Quantity> {
         let wanted = layshaft_units::difference_of(&of.ty);
         let t = self.quantity(tolerance, reading.wanting(Some(&wanted)))?;
+        if t.ty.is_plain_number() && t.unit.is_none() && is_literal(tolerance) && !wanted.is_plain_number() {
+            self.report(self.bare(tolerance, of, reading));
+            return None;
+        }
         if let Err(refusal) = layshaft_units::unify(&wanted, &t.ty) {
             let place = self.place(reading.at, tolerance.span);
             let message = format!("the tolerance is not of the value's kind: {}", refusal.message());
@@ -57,6 +61,19 @@ impl Eval<'_> {
             return None;
         }
         Some(t)
+    }
+
+    /// `220 mm ± 0.1`: the right number has to say its unit.
+    fn bare(&self, tolerance: &Expr, of: &Quantity, reading: Reading<'_>) -> Diagnostic {
+        let place = self.place(reading.at, tolerance.span);
+        let found = Diagnostic::new(Code::MissingUnit, place, "the tolerance has no unit");
+        match &of.unit {
+            Some(unit) => {
+                let fixed = format!("{} {unit}", self.words(tolerance, reading));
+                found.fix(format!("write `{fixed}`"), place, fixed.clone())
+            }
+            None => found,
+        }
     }
 
     fn ambiguous_percent(

@@ -32,6 +32,7 @@ pub(crate) fn read(
             Some(FieldRead { value: FieldValue::Points(table), datum: None, link: None })
         }
         Shape::Ratio { diameters } => reader.teeth(diameters),
+        Shape::Gears if matches!(slot, Slot::Field(_, (_, None))) => reader.engaged(),
         Shape::Gears => reader.gear(),
         Shape::Duty => reader.duty(),
     }
@@ -61,12 +62,23 @@ impl Reader<'_, '_> {
     }
 
     fn quantity(&self, kind: &'static Kind) -> Option<FieldRead> {
+        let kind = self.set_speed_of_a_load().unwrap_or(kind);
         let datum = self.eval.value_of(self.given, Some(self.slot), Some(kind))?;
         let Datum::Quantity(found) = &datum else { return None };
         if !self.in_range(found, kind) {
             return None;
         }
         Some(FieldRead { value: FieldValue::Si(found.si), datum: Some(datum), link: None })
+    }
+
+    /// A set speed is that of the source, or the one of a load that runs straight: `set_speed = 100 km/h`.
+    fn set_speed_of_a_load(&self) -> Option<&'static Kind> {
+        if self.field.name != "set_speed" {
+            return None;
+        }
+        let linear = layshaft_units::kind("speed")?;
+        let found = self.eval.quantity(self.expr()?, self.reading())?;
+        (found.ty.dim == linear.ty().dim).then_some(linear)
     }
 
     /// Whether the law takes the value; says so where not, and where the trade would ask again.
@@ -252,6 +264,23 @@ impl Reader<'_, '_> {
         let place = self.eval.place(self.given.at, expr.span);
         self.eval.report(Diagnostic::new(Code::OutOfRange, place, message));
         None
+    }
+
+    /// `gear = 2`, `gear = low`: the gear a drive engages, by its name.
+    fn engaged(&self) -> Option<FieldRead> {
+        let name = match self.expr().map(|expr| &expr.kind) {
+            Some(ExprKind::Quantity { number, unit: None }) => number.text.clone(),
+            Some(ExprKind::Path(path)) if path.names.len() == 1 => path.names[0].text.clone(),
+            Some(ExprKind::Text(text)) => text.clone(),
+            _ => {
+                let message = "a gear is engaged by its name".to_owned();
+                let finding = self.refuse(Code::WrongValue, message);
+                self.eval.report(finding.help("write `gear = 2` or `gear = low`"));
+                return None;
+            }
+        };
+        let value = FieldValue::Gears(vec![(name.to_string(), 1.0)]);
+        Some(FieldRead { value, datum: Some(Datum::Word(name)), link: None })
     }
 
     /// `gear 1 = reduction 14.5`
