@@ -15,7 +15,7 @@ pub(super) fn words(solution: &Solution, unit: &str) -> (String, bool) {
     match outcome {
         Outcome::Starts if runs_up() => (String::from("runs up"), true),
         Outcome::Starts => (String::from("hangs below its highest point"), false),
-        Outcome::SelfMoving => (String::from("moved by its load"), true),
+        Outcome::SelfMoving => (String::from("self-moving"), true),
         Outcome::Stalls => (String::from("stalls"), false),
         Outcome::Runaway => (String::from("runs away"), false),
         Outcome::DrivenBack => match back {

@@ -82,17 +82,28 @@ fn remarks(criterion: &CriterionLine, options: &Options) -> String {
         say(format!("{name}: {}", terminal(remark)));
     }
     for (word, wanted) in [("fails", Verdict::Fails), ("is not judged", Verdict::NotJudged)] {
-        let other = |(at, outcome): (usize, &OutcomeLine)| {
-            let other = outcome.verdict == wanted && criterion.governing != Some(at);
-            other.then(|| terminal(&outcome.label).into_owned())
-        };
-        let others: Vec<String> = criterion.outcomes.iter().enumerate().filter_map(other).collect();
+        let others = others(criterion, wanted);
         if !others.is_empty() {
             let also = if criterion.verdict == wanted { " also" } else { "" };
             say(format!("{name} {word}{also} in {}", others.join(", ")));
         }
     }
     out
+}
+
+/// The other cases with this verdict; where none is judged for one and the same reason, that reason is enough.
+fn others(criterion: &CriterionLine, wanted: Verdict) -> Vec<String> {
+    let same =
+        |outcome: &OutcomeLine| outcome.remark == governing(criterion).and_then(|of| of.remark.clone());
+    let all = criterion.outcomes.iter().all(|outcome| outcome.verdict == Verdict::NotJudged && same(outcome));
+    if wanted == Verdict::NotJudged && all {
+        return Vec::new();
+    }
+    let other = |(at, outcome): (usize, &OutcomeLine)| {
+        let other = outcome.verdict == wanted && criterion.governing != Some(at);
+        other.then(|| terminal(&outcome.label).into_owned())
+    };
+    criterion.outcomes.iter().enumerate().filter_map(other).collect()
 }
 
 pub(super) fn shows(shows: &[ShowLine], options: &Options) -> String {

@@ -10,8 +10,17 @@ use super::{Options, name_of_clause, paragraph};
 /// The drive, its table, and what is to be said of its operating points.
 pub(super) fn drive(drive: &DriveSheet, options: &Options) -> String {
     let style = options.style;
-    let mut out =
-        format!("{} = {}\n", style.paint(Tone::Strong, &terminal(&drive.name)), terminal(&drive.chain));
+    let name = style.paint(Tone::Strong, &terminal(&drive.name));
+    if !drive.rows.iter().any(|row| row.solved) {
+        return format!("{name} is not solved in any case; the findings say why\n");
+    }
+    let mut out = format!("{name} = {}\n", terminal(&drive.chain));
+    if drive.rows.iter().flat_map(|row| &row.sources).any(|source| source.count > 1) {
+        out.push_str(
+            &style.paint(Tone::Faint, "  of equal sources side by side, the numbers are those of each"),
+        );
+        out.push('\n');
+    }
     out.push_str(&table(drive).render(options.width, style));
     out.push_str(&points(drive, options));
     out.push_str(&unbounded(drive, options));
@@ -48,29 +57,29 @@ fn columns(drive: &DriveSheet) -> Vec<Source> {
         cell,
     };
     let any = |test: fn(&SourceRow) -> bool| drive.rows.iter().flat_map(|row| &row.sources).any(test);
+    let several = drive.rows.iter().any(|row| row.sources.len() > 1);
     let units = &drive.units;
-    let effort =
-        if matches!(units.effort.as_str(), "N" | "kN" | "MN" | "lbf" | "kgf") { "force" } else { "torque" };
+    let linear = matches!(units.effort.as_str(), "N" | "kN" | "MN" | "lbf" | "kgf");
     let mut columns = vec![
-        text("case", |row, _, first| {
-            Cell::plain(if first { terminal(&row.label).into_owned() } else { String::new() })
-        }),
-        text("from rest", |row, _, first| match first {
-            true => {
-                Cell { text: row.outcome.clone(), tone: if row.moves { Tone::Plain } else { Tone::Warn } }
-            }
-            false => Cell::plain(""),
+        text("case", |row, _, first| at_first(first, || terminal(&row.label).into_owned())),
+        text("from rest", |row, _, first| Cell {
+            tone: if row.moves { Tone::Plain } else { Tone::Warn },
+            ..at_first(first, || outcome(row))
         }),
         number(
             "speed",
             &units.speed,
-            |row, _, first| if first { entry(Some(&row.speed)) } else { Cell::plain("") },
+            |row, _, first| {
+                if first { entry(Some(&row.speed)) } else { Cell::plain("") }
+            },
         ),
     ];
-    if drive.rows.iter().any(|row| row.sources.len() > 1) || any(|source| source.count > 1) {
+    if several {
         columns.push(text("source", |_, source, _| Cell::plain(source.map_or_else(String::new, name))));
     }
-    columns.push(number("at source", &units.source_speed, |_, source, _| entry(source.map(|s| &s.speed))));
+    let speed = if several { "at" } else { "source" };
+    columns.push(number(speed, &units.source_speed, |_, source, _| entry(source.map(|s| &s.speed))));
+    let effort = if linear { "force" } else { "torque" };
     columns.push(number(effort, &units.effort, |_, source, _| entry(source.map(|s| &s.effort))));
     columns.push(number("power", &units.power, |_, source, _| entry(source.map(|s| &s.power))));
     columns.push(number("peak", &units.power, |_, source, _| entry(source.map(|s| &s.peak_power))));
@@ -78,27 +87,44 @@ fn columns(drive: &DriveSheet) -> Vec<Source> {
     if any(|source| matches!(source.current, Entry::Number(_))) {
         columns.push(number("current", &units.current, |_, source, _| entry(source.map(|s| &s.current))));
     }
-    if any(|source| source.mode != Entry::Word("motoring") && !source.mode.text().is_empty()) {
-        columns.push(text("mode", |_, source, _| Cell::plain(source.map_or("", |s| s.mode.text()))));
-    }
-    if drive.rows.iter().any(|row| !matches!(row.limited_by.text(), "" | "torque" | "force")) {
-        columns.push(text("limited by", |row, _, first| {
-            Cell::plain(if first { row.limited_by.text() } else { "" })
-        }));
-    }
-    if any(|source| !marks(source).is_empty()) {
-        columns.push(text("data", |_, source, _| Cell {
-            text: source.map_or_else(String::new, marks),
-            tone: Tone::Warn,
-        }));
-    }
     if drive.rows.iter().any(|row| !row.governs.is_empty()) {
         columns.push(text("governs", |row, _, first| {
-            let clauses: Vec<String> = row.governs.iter().map(|clause| name_of_clause(clause)).collect();
-            Cell::plain(if first { clauses.join(", ") } else { String::new() })
+            let clauses = || row.governs.iter().map(|clause| name_of_clause(clause)).collect::<Vec<_>>();
+            at_first(first, || clauses().join(", "))
         }));
     }
     columns
+}
+
+/// A cell that stands only on the first line of a case.
+fn at_first(first: bool, text: impl Fn() -> String) -> Cell {
+    Cell::plain(if first { text() } else { String::new() })
+}
+
+/// What becomes of the drive, how power flows where that is not from the source, what bounds it, and on what data.
+fn outcome(row: &DriveRow) -> String {
+    let mut words = vec![row.outcome.clone()];
+    if let [source] = row.sources.as_slice() {
+        words.extend(mode(source).map(String::from));
+    }
+    if matches!(row.limited_by.text(), "current" | "supply" | "governor") {
+        words.push(format!("by {}", row.limited_by.text()));
+    }
+    words.extend(row.sources.iter().flat_map(marks).fold(Vec::new(), |mut seen, mark| {
+        if !seen.contains(&mark) {
+            seen.push(mark);
+        }
+        seen
+    }));
+    words.join(", ")
+}
+
+/// The mode of a source where it says something.
+fn mode(source: &SourceRow) -> Option<&str> {
+    match source.mode.text() {
+        "" | "motoring" | "standstill" | "driven_back" => None,
+        other => Some(other),
+    }
 }
 
 fn entry(entry: Option<&Entry>) -> Cell {
@@ -112,42 +138,52 @@ fn entry(entry: Option<&Entry>) -> Cell {
 
 fn name(source: &SourceRow) -> String {
     let name = terminal(&source.part);
-    if source.count > 1 { format!("{name} (each of {})", source.count) } else { name.into_owned() }
+    let count = if source.count > 1 { format!(" (each of {})", source.count) } else { String::new() };
+    let mode = mode(source).map_or_else(String::new, |mode| format!(", {mode}"));
+    format!("{name}{count}{mode}")
 }
 
 /// What is to be known of a source's numbers.
-fn marks(source: &SourceRow) -> String {
+fn marks(source: &SourceRow) -> Vec<String> {
     let numbers = [&source.speed, &source.effort, &source.power, &source.current];
     let marked = |test: fn(&layshaft_mechanics::solution::Marks) -> bool| {
         numbers.iter().any(|entry| matches!(entry, Entry::Number(number) if test(&number.marks)))
     };
     let mut words = Vec::new();
     if marked(|marks| marks.outside) {
-        words.push("outside");
+        words.push(String::from("outside data"));
     }
     if marked(|marks| marks.scaled) {
-        words.push("scaled");
+        words.push(String::from("scaled data"));
     }
-    words.join(", ")
+    words
 }
 
-/// All operating points of the cases that have more than one, or one that is not stable.
+/// The operating points that the drive does not come to, where it has any.
 fn points(drive: &DriveSheet, options: &Options) -> String {
-    let mut out = String::new();
+    let column = |head: &str, unit: &str, align| Column { head: vec![head.into(), unit.into()], align };
+    let mut grid = Grid {
+        columns: vec![
+            column("further operating points", "", Align::Text),
+            column("speed", &drive.units.speed, Align::Number),
+            column("", "", Align::Text),
+        ],
+        rows: Vec::new(),
+    };
     for row in &drive.rows {
-        if row.points.len() < 2 && row.points.iter().all(|point| point.stability == "stable") {
-            continue;
+        for (at, point) in row.points.iter().filter(|point| !point.reached).enumerate() {
+            grid.rows.push(vec![
+                at_first(at == 0, || terminal(&row.label).into_owned()),
+                Cell::plain(&point.speed.digits),
+                Cell::plain(format!("{}, {}", point.stability, point.mode.replace('_', " "))),
+            ]);
         }
-        let words = |point: &layshaft_present::sheet::PointRow| {
-            let reached = if point.reached { ", reached" } else { "" };
-            let mode = if point.mode == "motoring" { String::new() } else { format!(", {}", point.mode) };
-            format!("{} {}{mode}{reached}", point.speed.text, point.stability)
-        };
-        let list: Vec<String> = row.points.iter().map(words).collect();
-        let text = format!("operating points in {}: {}", terminal(&row.label), list.join("; "));
-        out.push_str(&paragraph(&text, options.width, options.style, Tone::Plain));
     }
-    out
+    if grid.rows.is_empty() {
+        String::new()
+    } else {
+        format!("\n{}", grid.render(options.width, options.style))
+    }
 }
 
 /// Why a speed has no bound.

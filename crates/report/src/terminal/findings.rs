@@ -55,11 +55,10 @@ fn drawn(finding: &Diagnostic, places: &[Place], sources: &Sources, style: Style
     let labels = std::iter::once(&finding.primary).chain(&finding.related);
     for (at, (label, place)) in labels.zip(places).enumerate() {
         let color = if at == 0 { color } else { Color::Cyan };
-        let mut drawn = Label::new(*place).with_color(color).with_order(at as i32);
-        if !label.text.is_empty() {
-            drawn = drawn.with_message(terminal(&label.text));
-        }
-        report = report.with_label(drawn);
+        // A label without words would be marked by colour alone.
+        let words = if label.text.is_empty() { "here" } else { &label.text };
+        let drawn = Label::new(*place).with_color(color).with_order(at as i32);
+        report = report.with_label(drawn.with_message(terminal(words)));
     }
     for note in &finding.notes {
         report = report.with_note(terminal(note));

@@ -8,7 +8,9 @@ const GAP: usize = 2;
 /// Blanks before a table.
 const INDENT: usize = 2;
 /// A wrapped column is not made narrower than this.
-const NARROWEST: usize = 14;
+const NARROWEST: usize = 12;
+/// A longer word is broken where the terminal is narrow.
+const LONGEST_WORD: usize = 24;
 
 /// How the cells of a column stand.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -93,10 +95,8 @@ impl Grid {
     /// Takes width from the widest text columns until the table fits; `None` where it cannot.
     fn shrunk(&self, natural: &[usize], limit: usize) -> Option<Vec<usize>> {
         let mut widths = natural.to_vec();
-        let floor = |at: usize| {
-            let head = self.columns[at].head.iter().map(|line| width(line)).max().unwrap_or(0);
-            if self.columns[at].align == Align::Text { head.max(NARROWEST) } else { usize::MAX }
-        };
+        let floors: Vec<usize> = (0..natural.len()).map(|at| self.floor(at, natural[at])).collect();
+        let floor = |at: usize| floors[at];
         loop {
             let total = INDENT + widths.iter().sum::<usize>() + GAP * widths.len().saturating_sub(1);
             if total <= limit {
@@ -109,6 +109,18 @@ impl Grid {
             let wanted = widths[widest].saturating_sub(total - limit).max(second).max(floor(widest));
             widths[widest] = wanted.min(widths[widest] - 1);
         }
+    }
+
+    /// What a column is not made narrower than: its head, its longest word as far as that is reasonable.
+    fn floor(&self, at: usize, natural: usize) -> usize {
+        if self.columns[at].align == Align::Number {
+            return usize::MAX;
+        }
+        let cells = self.rows.iter().filter_map(|row| row.get(at));
+        let words = cells.flat_map(|cell| cell.text.split(' ')).map(width);
+        let longest = words.max().unwrap_or(0).min(LONGEST_WORD);
+        let head = self.columns[at].head.iter().map(|line| width(line)).max().unwrap_or(0);
+        head.max(longest).max(NARROWEST.min(natural))
     }
 
     fn as_table(&self, widths: &[usize], style: Style) -> String {

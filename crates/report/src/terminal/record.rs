@@ -38,8 +38,8 @@ fn assumptions(sheet: &Sheet) -> Vec<String> {
             .value
             .as_ref()
             .map_or_else(String::new, |value| format!(" = {}", terminal(value.text())));
-        let by = if assumption.by_tool { "taken by the tool" } else { "taken by the author" };
-        format!("{}{value}, {by}: {}", terminal(&assumption.subject), terminal(&assumption.reason))
+        let by = if assumption.by_tool { "default" } else { "author" };
+        format!("{}{value} ({by}: {})", terminal(&assumption.subject), terminal(&assumption.reason))
     };
     sheet.assumptions.iter().map(line).collect()
 }
