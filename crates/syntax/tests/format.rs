@@ -29,7 +29,7 @@ fn blanks_between_tokens() {
     becomes("let   a=5m\n", "let a = 5 m\n");
     becomes("let a : torque=F*r/2\n", "let a: torque = F × r / 2\n");
     becomes("let\ta = max( 1 m,2 m )\n", "let a = max(1 m, 2 m)\n");
-    becomes("let a = ( b+c ) . d\n", "let a = (b + c).d\n");
+    becomes("let a = ( b . c+d )\n", "let a = (b.c + d)\n");
     becomes("let a = not(b) and c\n", "let a = not (b) and c\n");
     becomes("let a = 5\u{a0}m\u{202f}± 1 m\n", "let a = 5 m ± 1 m\n");
 }
@@ -164,4 +164,19 @@ fn a_range_touches_its_items_only() {
     let edits = format_range(text, Span::new(at, at + 1));
     assert_eq!(edits, [(Span::new(11, 21), "let b = 2".to_string())]);
     assert_eq!(format_range(text, Span::new(0, text.len() as u32)).len(), 3);
+}
+
+#[test]
+fn a_code_stays_whole() {
+    let reason = "a reason that is told at some length, so that the line grows wider than a line should be";
+    stays(&format!("allow peak-as-continuous because \"{reason}, {reason}\"\n"));
+}
+
+#[test]
+fn a_negative_number_does_not_begin_a_line() {
+    let name = "a_value_with_a_long_name_of_its_own_that_goes_on";
+    becomes(
+        &format!("let a = max({name}, {name}, -20 °C, b)\n"),
+        &format!("let a = max({name},\n    {name}, -20 °C, b)\n"),
+    );
 }

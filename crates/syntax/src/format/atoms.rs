@@ -5,8 +5,10 @@ use std::ops::Range;
 
 use layshaft_diagnostics::Span;
 
+use super::layout::line_ends;
 use super::spell::{spelling, superscript};
 use crate::token::{Comment, Token, TokenKind as K};
+use crate::words::word_kind;
 
 /// A token as it is to be written, and what stands before it in the text.
 #[derive(Debug)]
@@ -60,7 +62,8 @@ struct Maker<'t, 'c> {
     caret: usize,
 }
 
-/// The atoms of an item, or none if its brackets do not fit together.
+/// The atoms of an item, or none if its brackets do not fit together. Line ends and `;` among the tokens end
+/// statements; other line ends are found in the text.
 pub(super) fn atoms<'t>(text: &'t str, tokens: &[Token], comments: &[Comment]) -> Option<Vec<Atom<'t>>> {
     let mut maker = Maker {
         text,
@@ -73,33 +76,36 @@ pub(super) fn atoms<'t>(text: &'t str, tokens: &[Token], comments: &[Comment]) -
         caret: 0,
     };
     let mut at = 0;
-    while let Some(token) = tokens.get(at) {
-        let ends = at;
-        while tokens.get(at).is_some_and(|token| matches!(token.kind, K::Newline | K::Semicolon)) {
-            at += 1;
+    let mut separated = false;
+    while let Some(&token) = tokens.get(at) {
+        at += 1;
+        if matches!(token.kind, K::Newline | K::Semicolon) {
+            separated = true;
+        } else {
+            at += maker.push(token, tokens.get(at..).unwrap_or_default(), separated)? - 1;
+            separated = false;
         }
-        let Some(&next) = tokens.get(at) else { break };
-        let broken = tokens[ends..at].iter().any(|token| token.kind == K::Newline);
-        let semicolon = tokens[ends..at].iter().any(|token| token.kind == K::Semicolon);
-        debug_assert!(token.span.start <= next.span.start);
-        at += maker.push(next, tokens.get(at + 1..).unwrap_or_default(), broken, semicolon)?;
     }
     maker.open.is_empty().then_some(maker.atoms)
 }
 
 impl<'t> Maker<'t, '_> {
     /// Makes the atom of a token and says how many tokens went into it.
-    fn push(&mut self, token: Token, rest: &[Token], broken: bool, semicolon: bool) -> Option<usize> {
+    fn push(&mut self, mut token: Token, rest: &[Token], separated: bool) -> Option<usize> {
+        if token.kind == K::PairParen {
+            token.kind = K::LeftParen;
+        }
         let last = self.atoms.last().map(|atom| atom.kind);
         let comments = self.comments_before(token.span.start);
-        let newline = broken || !comments.is_empty();
-        let in_block = matches!(self.open.last(), Some(Open::Block(_) | Open::Rows(_)));
-        let separated = in_block && (semicolon || (newline && !goes_on(last, token.kind)));
+        let gap = self.atoms.last().map_or(token.span.start, |atom| atom.span.end);
+        // A `{` stands on the line of what it belongs to.
+        let newline = !comments.is_empty()
+            || (token.kind != K::LeftBrace && line_ends(self.slice(Span::new(gap, token.span.start))) > 0);
         let (text, taken) = self.text_of(token, rest);
         let unary = token.kind == K::Minus && !last.is_some_and(ends_value)
             || self.in_rows() && token.kind == K::Minus;
         let (space, soft) =
-            if separated { (1, 0) } else { (self.space(last, token, rest), self.soft(last, token.kind)) };
+            if separated { (1, 0) } else { (self.space(last, token, rest), self.soft(last, token)) };
         let mut atom = Atom {
             kind: if taken == 2 { K::Superscript } else { token.kind },
             width: text.chars().count(),
@@ -226,9 +232,10 @@ impl<'t> Maker<'t, '_> {
     }
 
     /// How gladly a line breaks before a token.
-    fn soft(&self, last: Option<K>, kind: K) -> u8 {
-        let outside = matches!(self.open.last(), None | Some(Open::Block(_)));
-        let breaks = match (last, kind) {
+    fn soft(&self, last: Option<K>, token: Token) -> u8 {
+        let breaks = match (last, token.kind) {
+            // At the beginning of a line a minus is an operator.
+            (_, K::SignedNumber) => false,
             (_, K::And | K::Or | K::Then | K::Else) => true,
             (Some(K::Comma | K::Plus), _) => true,
             (
@@ -238,11 +245,12 @@ impl<'t> Maker<'t, '_> {
             (Some(K::Minus), _) => !self.unary,
             _ => false,
         };
-        match (breaks && !self.in_rows(), outside) {
-            (false, _) => 0,
-            (true, true) => 2,
-            (true, false) => 1,
+        // There, a name such as `load` may declare.
+        let declares = || word_kind(self.slice(token.span)).is_some_and(K::is_declaration);
+        if !breaks || self.in_rows() || self.code || declares() {
+            return 0;
         }
+        if matches!(self.open.last(), None | Some(Open::Block(_))) { 2 } else { 1 }
     }
 }
 
@@ -254,24 +262,4 @@ const fn ends_value(kind: K) -> bool {
         K::True | K::False | K::Yes | K::No | K::Points | K::Absent | K::Rated => true,
         _ => false,
     }
-}
-
-/// Whether a line break between two tokens of a block ends no statement.
-fn goes_on(last: Option<K>, next: K) -> bool {
-    last.is_some_and(K::leaves_line_open)
-        || matches!(
-            next,
-            K::Arrow
-                | K::And
-                | K::Or
-                | K::Then
-                | K::Else
-                | K::As
-                | K::At
-                | K::Only
-                | K::Not
-                | K::Because
-                | K::From
-        )
-        || matches!(next, K::Measured | K::Assumed | K::Confidence | K::Probability | K::Within)
 }

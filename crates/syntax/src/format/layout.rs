@@ -145,14 +145,16 @@ impl<'t> Layout<'t> {
         for index in atom.comments.clone() {
             let comment = self.comments[index];
             let body = self.slice(comment.span.start, comment.span.end).trim_end();
-            if comment.own_line {
+            // Behind a `;` that is left out, a comment can be the first of its line.
+            let own_line = line_ends(self.slice(from, comment.span.start)) > 0;
+            if own_line {
                 let empty = statement && !first && self.empty_line(from, comment.span.start);
                 self.break_line(comment_indent, empty);
             } else {
                 self.blanks(2);
             }
             self.out.push_str(body);
-            first &= !comment.own_line;
+            first &= !own_line;
             from = comment.span.end;
         }
         let empty = statement && !first && !closes && self.empty_line(from, atom.span.start);

@@ -10,9 +10,11 @@ mod measure;
 mod rows;
 mod spell;
 
-use layshaft_diagnostics::Span;
+use layshaft_diagnostics::{Severity, Span};
 
+use crate::cut::{MOST_BYTES, cut};
 use crate::token::{Comment, Token, TokenKind};
+use crate::tree::Item;
 use atoms::{Atom, atoms};
 use layout::line_ends;
 
@@ -53,63 +55,56 @@ pub fn format_range(text: &str, range: Span) -> Vec<(Span, String)> {
 
 /// Takes the text apart into items and what stands between them; together they are the whole text.
 fn pieces(text: &str) -> Vec<Piece> {
+    if text.len() > MOST_BYTES {
+        return vec![Piece { span: Span::new(0, text.len() as u32), text: text.to_string(), skipped: true }];
+    }
     let lexed = crate::lex(text);
+    let (raw, comments) = (lexed.tokens.clone(), lexed.comments.clone());
+    let cut = cut(text, lexed);
+    let file = crate::parse(text);
     let mut pieces: Vec<Piece> = Vec::new();
     let mut at = 0;
-    for (span, broken) in items(text) {
-        let span = Span::new(span.start.max(at), span.end.max(at));
+    for (index, item) in cut.items.iter().enumerate() {
+        let span = Span::new(item.first.max(at), item.end.max(at));
         let after = pieces.last().map(|item| item.skipped);
-        pieces.push(between(text, Span::new(at, span.start), &lexed.comments, after, false));
-        pieces.push(item(text, span, &lexed.tokens, &lexed.comments, broken));
+        pieces.push(between(text, Span::new(at, span.start), &comments, after, false));
+        let tokens = cut.tokens.get(item.tokens.clone()).unwrap_or_default();
+        // A stray brace is no token of the item, though it stands in it.
+        let whole = spoken(within(&raw, span, |token| token.span)) == spoken(tokens);
+        let sound = whole && file.items.get(index).is_some_and(is_sound);
+        let written = if sound { write(text, span, tokens, &comments) } else { None };
+        let skipped = written.is_none();
+        pieces.push(Piece { span, text: written.unwrap_or_else(|| slice(text, span).to_string()), skipped });
         at = span.end;
     }
     let after = pieces.last().map(|item| item.skipped);
-    pieces.push(between(text, Span::new(at, text.len() as u32), &lexed.comments, after, true));
+    pieces.push(between(text, Span::new(at, text.len() as u32), &comments, after, true));
     pieces
 }
 
-/// The places of the items, and whether each has a syntax error.
-fn items(text: &str) -> Vec<(Span, bool)> {
-    let lexed = crate::lex(text);
-    let mut out: Vec<(Span, bool)> = Vec::new();
-    let mut last = TokenKind::Newline;
-    let mut depth = 0;
-    for token in &lexed.tokens {
-        if token.kind.is_declaration() && last == TokenKind::Newline && depth == 0 {
-            out.push((token.span, false));
-        } else if token.kind != TokenKind::Newline {
-            if let Some(item) = out.last_mut() {
-                item.0.end = token.span.end;
-            }
-        }
-        depth +=
-            i32::from(token.kind == TokenKind::LeftBrace) - i32::from(token.kind == TokenKind::RightBrace);
-        last = token.kind;
-    }
-    out
+/// How many tokens say something.
+fn spoken(tokens: &[Token]) -> usize {
+    tokens.iter().filter(|token| !matches!(token.kind, TokenKind::Newline | TokenKind::Semicolon)).count()
 }
 
-fn item(text: &str, span: Span, tokens: &[Token], comments: &[Comment], broken: bool) -> Piece {
-    let written = if broken { None } else { write(text, span, tokens, comments) };
-    let skipped = written.is_none();
-    let text = written.unwrap_or_else(|| slice(text, span).to_string());
-    Piece { span, text, skipped }
+/// Whether an item has no syntax error.
+fn is_sound(item: &Item) -> bool {
+    item.tree.problems.iter().all(|problem| problem.code.row().severity != Severity::Error)
 }
 
 /// An item in its one form, or none where that would not say the same.
 fn write(text: &str, span: Span, tokens: &[Token], comments: &[Comment]) -> Option<String> {
-    let tokens = within(tokens, span, |token| token.span);
     let comments = within(comments, span, |comment| comment.span);
     let before = atoms(text, tokens, comments)?;
     let written = layout::lay_out(text, comments, &before);
-    let again = crate::lex(&written);
-    let after = atoms(&written, &again.tokens, &again.comments)?;
-    let same_comments = comments.len() == again.comments.len()
-        && comments.iter().zip(&again.comments).all(|(one, other)| {
-            slice(text, one.span).trim_end() == slice(&written, other.span).trim_end()
-                && one.own_line == other.own_line
-        });
-    (same_comments && same(&before, &after)).then_some(written)
+    let lexed = crate::lex(&written);
+    let written_comments = lexed.comments.clone();
+    let again = cut(&written, lexed);
+    let after = atoms(&written, &again.tokens, &written_comments)?;
+    let body = |text, comment: &Comment| slice(text, comment.span).trim_end().to_string();
+    let same_comments = comments.iter().map(|comment| body(text, comment));
+    let same_comments = same_comments.eq(written_comments.iter().map(|comment| body(&written, comment)));
+    (same_comments && again.items.len() == 1 && same(&before, &after)).then_some(written)
 }
 
 /// Whether two lists of atoms say the same.
@@ -130,8 +125,10 @@ fn same(one: &[Atom<'_>], other: &[Atom<'_>]) -> bool {
 /// left as it is.
 fn between(text: &str, span: Span, comments: &[Comment], after: Option<bool>, last: bool) -> Piece {
     let comments = within(comments, span, |comment| comment.span);
-    let mut out = String::new();
-    let mut at = span.start;
+    // A mark of the encoding at the very start stays.
+    let mark = if span.start == 0 && text.starts_with('\u{feff}') { "\u{feff}" } else { "" };
+    let mut out = String::from(mark);
+    let mut at = span.start + mark.len() as u32;
     let mut begun = after.is_some();
     let mut readable = true;
     let lines = |from: u32, to: u32| line_ends(slice(text, Span::new(from, to)));
@@ -153,9 +150,6 @@ fn between(text: &str, span: Span, comments: &[Comment], after: Option<bool>, la
         let empty = !last && lines(at, span.end) > 1;
         out.push_str(if empty { "\n\n" } else { "\n" });
     }
-    if slice(text, span).starts_with('\u{feff}') {
-        out.insert(0, '\u{feff}');
-    }
     if !readable {
         out = slice(text, span).to_string();
     }
@@ -164,7 +158,7 @@ fn between(text: &str, span: Span, comments: &[Comment], after: Option<bool>, la
 
 /// Whether nothing stands there that could be lost.
 fn is_blank(text: &str) -> bool {
-    text.chars().all(|c| c.is_whitespace() || c == ';' || c == '\u{feff}')
+    text.chars().all(char::is_whitespace)
 }
 
 /// The part of a sorted list that lies within a span.

@@ -54,7 +54,9 @@ pub fn sentence(text: &str) -> Vec<Terminal> {
 }
 
 fn is_duty(word: &str) -> bool {
-    word.strip_prefix('S').and_then(|digits| digits.parse::<u8>().ok()).is_some_and(|type_| (1..=10).contains(&type_))
+    word.strip_prefix('S')
+        .and_then(|digits| digits.parse::<u8>().ok())
+        .is_some_and(|type_| (1..=10).contains(&type_))
 }
 
 /// What can stand behind a whole value.
