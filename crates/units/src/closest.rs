@@ -14,15 +14,18 @@ pub fn closest<'a>(word: &str, among: impl Iterator<Item = &'a str>) -> Option<&
         return None;
     }
     let mut best: Option<(usize, &'a str)> = None;
+    let mut letters: Vec<char> = Vec::new();
+    let mut rows = [Vec::new(), Vec::new(), Vec::new()];
     for candidate in among {
-        let letters: Vec<char> = candidate.chars().flat_map(char::to_lowercase).take(LONGEST + 1).collect();
+        letters.clear();
+        letters.extend(candidate.chars().flat_map(char::to_lowercase).take(LONGEST + 1));
         let shorter = typed.len().min(letters.len());
         let limit = if shorter < 2 { 0 } else { (typed.len().max(letters.len()) / 3).max(1) };
         if typed.len().abs_diff(letters.len()) > limit {
             continue;
         }
         // Doubled, so that a word that differs in case alone stands between equal and one slip.
-        let distance = 2 * slips(&typed, &letters) + usize::from(candidate != word);
+        let distance = 2 * slips(&typed, &letters, &mut rows) + usize::from(candidate != word);
         if distance <= 2 * limit + 1 && best.is_none_or(|(least, _)| distance < least) {
             best = Some((distance, candidate));
         }
@@ -30,12 +33,13 @@ pub fn closest<'a>(word: &str, among: impl Iterator<Item = &'a str>) -> Option<&
     best.map(|(_, candidate)| candidate)
 }
 
-/// Damerau–Levenshtein distance in its restricted form (optimal string alignment).
-fn slips(a: &[char], b: &[char]) -> usize {
-    let mut before: Vec<usize> = Vec::new();
-    let mut above: Vec<usize> = (0..=b.len()).collect();
+/// Damerau–Levenshtein distance in its restricted form (optimal string alignment). The rows are scratch space.
+fn slips(a: &[char], b: &[char], rows: &mut [Vec<usize>; 3]) -> usize {
+    let [before, above, row] = rows;
+    above.clear();
+    above.extend(0..=b.len());
     for (i, &x) in a.iter().enumerate() {
-        let mut row = Vec::with_capacity(b.len() + 1);
+        row.clear();
         row.push(i + 1);
         for (j, &y) in b.iter().enumerate() {
             let mut least = (above[j] + usize::from(x != y)).min(above[j + 1] + 1).min(row[j] + 1);
@@ -44,7 +48,8 @@ fn slips(a: &[char], b: &[char]) -> usize {
             }
             row.push(least);
         }
-        before = std::mem::replace(&mut above, row);
+        std::mem::swap(before, above);
+        std::mem::swap(above, row);
     }
     above[b.len()]
 }

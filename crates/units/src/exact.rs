@@ -17,6 +17,10 @@ pub(crate) struct Exact {
 }
 
 const fn common(mut a: u128, mut b: u128) -> u128 {
+    // Nearly all factors are whole or the inverse of whole; division of long numbers is slow.
+    if a == 1 || b == 1 {
+        return 1;
+    }
     while b != 0 {
         (a, b) = (b, a % b);
     }
@@ -64,6 +68,9 @@ impl Exact {
 
     /// The whole power, unless its whole numbers grow beyond bounds.
     pub(crate) fn power(self, exponent: i32) -> Option<Exact> {
+        if exponent == 1 {
+            return Some(self);
+        }
         let base = if exponent < 0 {
             Exact { num: self.den, den: self.num, pi: self.pi.checked_neg()? }
         } else {

@@ -67,7 +67,7 @@ pub fn parse_unit(text: &str) -> Result<Unit, UnitError> {
     let beyond =
         || UnitError::Syntax { at: whole, message: "the powers of this unit are beyond all use".to_owned() };
     let dim = dimension(&parts).ok_or_else(beyond)?;
-    if let Some(choices) = refused::product(&level, dim) {
+    if let Some(choices) = refused::product(&level, &parts, dim) {
         return Err(UnitError::Ambiguous { symbol: level.text(), at: whole, choices });
     }
     if parts.len() > 1 && parts.iter().any(|(symbol, _)| symbol.row.tag.is_some()) {
@@ -92,7 +92,8 @@ fn dimension(parts: &[(Symbol, i32)]) -> Option<Dim> {
 /// fraction grow too long.
 fn factor(parts: &[(Symbol, i32)]) -> Option<f64> {
     let exact = parts.iter().try_fold(Exact::ONE, |product, (symbol, power)| {
-        let own = symbol.row.factor.product(Exact::power_of_ten(symbol.tens))?;
+        let row = symbol.row.factor;
+        let own = if symbol.tens == 0 { row } else { row.product(Exact::power_of_ten(symbol.tens))? };
         product.product(own.power(*power)?)
     });
     let value = exact.map_or_else(|| multiplied_out(parts), Exact::value);

@@ -60,8 +60,7 @@ pub(crate) fn symbols() -> impl Iterator<Item = &'static str> {
 /// The choices if the product is a pound or an ounce times a foot or an inch, as in `ft·lb`: written for a
 /// torque nearly always, although pound and ounce are masses. With seconds below it may be a mass after all
 /// (`lb·ft/s²`).
-pub(crate) fn product(level: &Level, dim: Dim) -> Option<Vec<(String, String)>> {
-    let parts = level.components();
+pub(crate) fn product(level: &Level, parts: &[(Symbol, i32)], dim: Dim) -> Option<Vec<(String, String)>> {
     let pound = parts.iter().find(|(s, power)| *power == 1 && matches!(s.row.symbol, "lb" | "oz"))?;
     let length: i32 =
         parts.iter().map(|(s, power)| if let Role::Length(n) = s.row.role { n * power } else { 0 }).sum();

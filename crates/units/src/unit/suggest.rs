@@ -99,7 +99,7 @@ pub(crate) fn suggestions(symbol: &str) -> Vec<String> {
         push((*unit).to_owned());
     }
     for (spelling, found) in index() {
-        if spelling.to_lowercase() == lower {
+        if spelling.chars().flat_map(char::to_lowercase).eq(lower.chars()) {
             push(found.text());
         }
     }
