@@ -1,8 +1,9 @@
 //! A permanent-magnet dc motor.
 
+use super::dc_draw::DcDraw;
 use super::dc_reading::constants;
 use super::straight_line::ratings;
-use crate::curve::{Curve, Law};
+use crate::curve::{Constant, Curve};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     BRAKING, FLYWHEEL_EFFECT, INERTIA, INTO_RESISTOR, MAX_SPEED, RATED_DUTY, RATED_TORQUE, SUPPLY, plain,
@@ -12,11 +13,8 @@ use crate::kinds::reading::{HoldBack, bad_value, braking, contradiction, differ,
 use crate::laws::dc_envelope::{self, DcEnvelope};
 use crate::laws::dc_machine::{self as law, DcConstants};
 use crate::laws::winding;
-use crate::model::{
-    Braking, Characteristic, Draw, DrawLaw, Drawn, Feed, Known, Model, Motion, Ratings, Source, SourceState,
-};
+use crate::model::{Braking, Characteristic, Draw, Feed, Known, Model, Motion, Ratings, Source, SourceState};
 use crate::registry::{Bounds, ColumnRow, Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
-use crate::scalar::Real;
 use crate::solution::{Answer, Marks};
 use crate::values::{Duty, Values};
 
@@ -252,52 +250,6 @@ impl DcMotor {
     }
 }
 
-/// The most a controller holds back: its current limit backwards, with the losses on its side.
-struct ControlledBraking {
-    most: f64,
-}
-
-impl Law for ControlledBraking {
-    fn eval<R: Real>(&self, _speed: R) -> R {
-        R::of(self.most)
-    }
-}
-
-/// Currents and voltages at a speed and a torque.
-struct DcDraw {
-    envelope: DcEnvelope,
-    /// Beyond this speed a motor that does not brake carries no current.
-    idle_above: Option<f64>,
-    /// Whether a resistor, not the supply, takes what comes back.
-    into_resistor: bool,
-}
-
-impl DrawLaw for DcDraw {
-    fn eval<R: Real>(&self, speed: R, effort: R) -> Drawn<R> {
-        let DcEnvelope { dc, open_circuit, supply_resistance, motor_limit, .. } = self.envelope;
-        let loaded = (effort + dc.loss_torque) / dc.k_t;
-        let current = match self.idle_above {
-            Some(above) => speed.piecewise(&[above], |piece, _| if piece == 0 { loaded } else { R::of(0.0) }),
-            None => loaded,
-        };
-        let voltage = speed * dc.k_e + current * dc.resistance;
-        let power = voltage * current;
-        let drawn = if motor_limit.is_some() {
-            let root = (power * (-4.0 * supply_resistance) + open_circuit * open_circuit).sqrt();
-            power * 2.0 / (root + open_circuit)
-        } else {
-            current
-        };
-        let supply_current = if self.into_resistor { drawn.max(R::of(0.0)) } else { drawn };
-        Drawn {
-            current: Some(current),
-            supply_current: Some(supply_current),
-            voltage: Some(voltage),
-            input_power: Some(power),
-        }
-    }
-}
-
 impl Source for DcMotor {
     fn motion(&self) -> Motion {
         Motion::Rotary
@@ -317,9 +269,7 @@ impl Source for DcMotor {
         }
         let hold = || -> Box<dyn Curve> {
             match self.current_limit {
-                Some(limit) => {
-                    Box::new(ControlledBraking { most: self.dc.k_t * limit + self.dc.loss_torque })
-                }
+                Some(limit) => Box::new(Constant(self.dc.k_t * limit + self.dc.loss_torque)),
                 None => Box::new(HoldBack(envelope)),
             }
         };

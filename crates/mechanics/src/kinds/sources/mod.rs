@@ -1,5 +1,6 @@
 //! Power plants.
 
+mod dc_draw;
 pub mod dc_motor;
 mod dc_reading;
 pub mod induction_motor;
