@@ -3,6 +3,6 @@
 mod drawn;
 fn main() {
     for line in std::io::stdin().lines().map_while(Result::ok) {
-        println!("{line}\n    {}", drawn::drawn(&line.replace('⏎', "\n")).trim_end().replace('\n', "\n    "));
+        println!("{line}\n    {}", drawn::drawn(&drawn::written(&line)).trim_end().replace('\n', "\n    "));
     }
 }

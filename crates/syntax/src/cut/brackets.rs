@@ -62,7 +62,9 @@ impl Cutter<'_> {
                 break;
             }
         }
-        let Some(index) = found else { return self.stray(token) };
+        let Some(index) = found else {
+            return if brace || self.between_brackets() { self.stray(token) } else { self.mismatched(token) };
+        };
         while self.stack.len() > index + 1 {
             self.close_top(token.span.start);
         }
@@ -75,6 +77,20 @@ impl Cutter<'_> {
             self.border();
             self.item.table_ahead = false;
         }
+        self.at += 1;
+    }
+
+    /// `(b]`: the bracket that is open is closed by the other kind.
+    fn mismatched(&mut self, token: Token) {
+        let Some(open) = self.stack.pop() else { return };
+        let (kind, opening, closing) = open.bracket.closing();
+        let shown = &self.text[token.span.start as usize..token.span.end as usize];
+        let problem =
+            Problem::new(Code::UnclosedBracket, token.span, format!("`{opening}` is closed by `{shown}`"))
+                .related(open.span, format!("`{opening}` is opened here"))
+                .fix(format!("write `{closing}`"), token.span, closing);
+        self.item.problems.push(problem);
+        self.push(Token { kind, span: token.span });
         self.at += 1;
     }
 

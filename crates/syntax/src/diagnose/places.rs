@@ -16,7 +16,7 @@ pub(super) fn rules(view: &View<'_, '_>) -> Option<Problem> {
         Place::Case => case(view),
         Place::Row => row(view),
         Place::Entry => entry(view),
-        Place::Name => equal(view, "a `let` is set by `=`"),
+        Place::Name => settled(view),
         Place::Condition | Place::Tail => tail(view),
         Place::Rest | Place::Let => None,
     };
@@ -155,6 +155,21 @@ fn equal(view: &View<'_, '_>, message: &str) -> Option<Problem> {
     let value =
         matches!(view.kind(0), Some(K::Number | K::SignedNumber | K::String | K::LeftParen | K::Each));
     value.then(|| view.syntax(view.here(), "`=` is missing here").fix("write `=`", view.gap(0), " = "))
+}
+
+/// The head of a `let`.
+fn settled(view: &View<'_, '_>) -> Option<Problem> {
+    if view.is(-1, K::Colon) && view.is(0, K::Equal) {
+        let span = view.spans(-1, 0);
+        if view.tight(0) {
+            let problem = view.syntax(span, "a `let` is set by `=`");
+            return Some(problem.fix("write `=`", span, if view.tight(-1) { " =" } else { "=" }));
+        }
+        return Some(
+            view.syntax(view.end(), "the kind is missing behind `:`").help("such as `let x: torque = 5 N·m`"),
+        );
+    }
+    equal(view, "a `let` is set by `=`")
 }
 
 fn part(view: &View<'_, '_>) -> Option<Problem> {

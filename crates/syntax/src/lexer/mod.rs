@@ -282,7 +282,7 @@ impl<'a> Lexer<'a> {
             match self.bytes.get(at) {
                 Some(b' ' | b'\t') => at += 1,
                 Some(0x80..) => match self.char_at(at) {
-                    Some(c) if fold::is_blank(c) => at += c.len_utf8(),
+                    Some(c) if fold::is_blank(c) || fold::is_invisible(c) => at += c.len_utf8(),
                     _ => return at,
                 },
                 _ => return at,
