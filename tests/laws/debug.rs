@@ -46,7 +46,8 @@ pub fn without_spans(form: &str) -> String {
 pub fn same(one: &str, other: &str, broken: &str) {
     if one != other {
         let at = one.bytes().zip(other.bytes()).take_while(|(one, other)| one == other).count();
-        let around = |form: &str| String::from_utf8_lossy(&form.as_bytes()[at.saturating_sub(90)..]).into_owned();
+        let around =
+            |form: &str| String::from_utf8_lossy(&form.as_bytes()[at.saturating_sub(90)..]).into_owned();
         let short = |form: &str| around(form).chars().take(180).collect::<String>();
         panic!("{broken}:\n… {} …\n… {} …", short(one), short(other));
     }

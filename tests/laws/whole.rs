@@ -24,8 +24,8 @@ pub fn analyze(text: &str) {
 /// # Panics
 /// A law is broken.
 pub fn csv(table: &str) {
-    const SPEC: &str = "source motor: points_source { curve = csv \"t.csv\" (n as speed [rpm], Md as torque [N·m]); \
-                        braking = none }\nload fan: quadratic { point = 8 N·m at 900 rpm }\n\
+    const SPEC: &str = "source motor: measured_curve { curve = csv \"t.csv\" (n as speed [rpm], Md as torque [N·m]); \
+                        braking = none }\nload fan: quadratic { rated_torque = 8 N·m; rated_speed = 900 rpm }\n\
                         drive d = motor -> fan\nrequire \"R1\" d.speed >= 1 rpm\n";
     with_files(SPEC, &files(table));
 }

@@ -53,7 +53,7 @@ fn wrong(shown: &Shown<'_>, tree: &Tree, run: Run<'_>) -> Option<String> {
         return match &shown.output {
             Some(output) => {
                 let printed = run(&arguments).unwrap_or_default();
-                (printed.trim_end() != output.trim_end())
+                (!shows(output, &printed))
                     .then(|| format!("`{line}` prints not what README.md shows but:\n{printed}"))
             }
             None => run(&[arguments[0], "--help"]).is_none().then(|| format!("`{line}`: no such subcommand")),
@@ -69,6 +69,25 @@ fn wrong(shown: &Shown<'_>, tree: &Tree, run: Run<'_>) -> Option<String> {
         ("cargo" | "bash", _) => None,
         _ => Some(format!("`{line}` is a command that this test does not know")),
     }
+}
+
+/// A line of the page that stands for lines left out.
+const LEFT_OUT: &str = "…";
+
+/// Whether a page shows what was printed: the same lines, but for those left out at `…`.
+fn shows(page: &str, printed: &str) -> bool {
+    let (page, printed): (Vec<&str>, Vec<&str>) =
+        (page.trim_end().lines().collect(), printed.trim_end().lines().collect());
+    let mut parts = page.split(|line| line.trim() == LEFT_OUT);
+    let first = parts.next().unwrap_or_default();
+    let Some(mut rest) = printed.strip_prefix(first) else { return false };
+    let mut parts: Vec<&[&str]> = parts.collect();
+    let Some(last) = parts.pop() else { return rest.is_empty() };
+    for part in parts {
+        let Some(at) = (0..=rest.len()).find(|at| rest[*at..].starts_with(part)) else { return false };
+        rest = &rest[at + part.len()..];
+    }
+    rest.ends_with(last)
 }
 
 /// The commands of a page: every line of a block `sh`, and lines behind `$` in a block `console`, whose output stands
@@ -140,6 +159,18 @@ fn its_specs_have_no_errors_and_are_in_their_one_form() {
                 String::from_utf8_lossy(&said)
             );
         }
+    }
+}
+
+#[test]
+fn lines_can_be_left_out_and_not_changed() {
+    let printed = "a\nb\nc\nd\ne\n";
+    for page in ["a\nb\nc\nd\ne", "a\n…\ne", "a\n…\nc\n…\ne", "…\nd\ne", "a\n…"] {
+        assert!(shows(page, printed), "{page}");
+    }
+    for page in ["", "a\nb\nc\nd", "b\n…\ne", "a\n…\nd", "a\n…\nd\n…\nb\n…\ne", "a\n…\nb\nd\n…\ne", "a\nc\n…"]
+    {
+        assert!(!shows(page, printed), "{page}");
     }
 }
 
