@@ -184,9 +184,9 @@ pub(crate) const RATED_DUTY: Field = plain(
     "duty type of IEC 60034-1 the rated values are for; continuous running, S1, when none is given",
 );
 
-/// The supply a source cannot do without.
+/// The supply a source cannot run without; a motor of a catalogue has none until a spec hangs it on one.
 pub(crate) const SUPPLY: Field =
-    plain("supply", Shape::Part(Role::Supply), Need::Required, "the supply it hangs on");
+    plain("supply", Shape::Part(Role::Supply), Need::Where("a drive it runs in"), "the supply it hangs on");
 
 /// The supply of a source that may do without.
 pub(crate) const SUPPLY_IF_ANY: Field = plain(

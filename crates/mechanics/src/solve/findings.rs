@@ -55,7 +55,10 @@ impl Solution {
     /// A dip on the way up at which the drive hangs, or nearly.
     fn dip(&self, found: &mut Vec<Finding>) {
         let (Some(path), Ok(here)) = (&self.path, &self.here) else { return };
-        let moves = !path.back && matches!(path.outcome, Outcome::Starts | Outcome::SelfMoving);
+        // A load that drives leaves nothing for the source to bring up: there is no dip to hang in.
+        let moves = !path.back
+            && matches!(path.outcome, Outcome::Starts | Outcome::SelfMoving)
+            && here.mode == Mode::Motoring;
         let Some(index) = path.reached.filter(|_| moves) else { return };
         let source = self.drive.sources.first();
         let Some(source) = source else { return };
@@ -176,7 +179,8 @@ impl Solution {
             .collect();
         let most = powers.iter().copied().fold(0.0, f64::max);
         for (source, power) in self.drive.sources.iter().zip(&powers) {
-            if *power < -1e-9 * most {
+            // Where every source holds back they share the braking.
+            if most > 0.0 && *power < -1e-9 * most {
                 let template =
                     "it does not share the load: the other source drives it, and it holds back with {0}";
                 let note = Note { template, quantities: vec![(-power, "mechanical_power")] };
