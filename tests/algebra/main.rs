@@ -14,9 +14,23 @@ enum Outcome {
     Other(String),
 }
 
+/// The names in a formula; what stands behind a number is a unit.
+fn words(formula: &str) -> Vec<&str> {
+    let mut words = Vec::new();
+    let mut behind_number = false;
+    for token in formula.split_whitespace() {
+        let operator = token.chars().all(|c| "+-*/<>=".contains(c));
+        if !behind_number || operator {
+            words.extend(token.split(|c: char| !(c.is_alphanumeric() || c == '_')));
+        }
+        behind_number = token.trim_start_matches('(').parse::<f64>().is_ok();
+    }
+    words
+}
+
 /// A spec of the names a formula uses, and the formula where a kind is wanted.
 fn spec(formula: &str, kind: &str, names: &[(&str, &str)]) -> String {
-    let used: Vec<&str> = formula.split(|c: char| !(c.is_alphanumeric() || c == '_')).collect();
+    let used = words(formula);
     let mut out = String::new();
     for (name, rest) in names.iter().filter(|(name, _)| used.contains(name)) {
         let _ = writeln!(out, "let {name}: {rest}");
@@ -27,10 +41,11 @@ fn spec(formula: &str, kind: &str, names: &[(&str, &str)]) -> String {
 
 fn outcome(text: &str) -> Outcome {
     let analysis = support::analyze(text);
-    let value = analysis.values.iter().find(|value| value.name == "result").and_then(|value| value.value.as_ref());
+    let value =
+        analysis.values.iter().find(|value| value.name == "result").and_then(|value| value.value.as_ref());
     match (support::codes(&analysis).as_slice(), value.is_some()) {
         ([], true) => Outcome::Fits,
-        (["kind-mismatch" | "missing-unit"], false) => Outcome::Refused,
+        (["kind-mismatch" | "missing-unit" | "ambiguous-unit"], false) => Outcome::Refused,
         (["counts-turn-twice"], true) => Outcome::Warned,
         (_, has) => Outcome::Other(format!("{} (a value: {has})", support::lines(&analysis))),
     }

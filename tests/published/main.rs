@@ -76,7 +76,9 @@ fn compare_points(analysis: &Analysis, wanted: &[toml::Table]) -> Vec<String> {
             Stability::Marginal => "marginal",
         };
         if !right || word != text(wanted, "stability") {
-            wrong.push(format!("a point at {speed} rad/s, {word}, where {wanted:?} is wanted (off by {off:.1e})"));
+            wrong.push(format!(
+                "a point at {speed} rad/s, {word}, where {wanted:?} is wanted (off by {off:.1e})"
+            ));
         }
     }
     wrong

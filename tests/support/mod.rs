@@ -123,8 +123,8 @@ pub fn answer(analysis: &Analysis, index: usize, case: &str) -> Result<Datum, St
 pub fn factor(unit: &str) -> f64 {
     let pi = std::f64::consts::PI;
     match unit {
-        "" | "rad/s" | "N·m" | "N" | "W" | "A" | "V" | "s" | "m" | "m/s" | "m/s²" | "Hz" | "N·m/A" | "V·s/rad" | "kg"
-        | "kg·m²" => 1.0,
+        "" | "rad/s" | "N·m" | "N" | "W" | "A" | "V" | "s" | "m" | "m/s" | "m/s²" | "Hz" | "N·m/A"
+        | "V·s/rad" | "kg" | "kg·m²" => 1.0,
         "rpm" => pi / 30.0,
         "kW" | "kN·m" | "kN" => 1000.0,
         "hp" => 745.699_871_582_270_2,
