@@ -90,8 +90,10 @@ impl Sub<f64> for Enclosure {
 impl Mul<f64> for Enclosure {
     type Output = Self;
     fn mul(self, other: f64) -> Self {
-        let factor = Interval::point(other);
-        Self { value: self.value * factor, slope: self.slope * factor }
+        if other.is_nan() {
+            return Self { value: Interval::ENTIRE, slope: Interval::ENTIRE };
+        }
+        Self { value: self.value.times(other), slope: self.slope.times(other) }
     }
 }
 

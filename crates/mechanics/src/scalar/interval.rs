@@ -12,11 +12,13 @@ pub struct Interval {
 }
 
 /// A lower bound just below a rounded result.
+#[inline]
 fn down(value: f64) -> f64 {
     value.next_down()
 }
 
 /// An upper bound just above a rounded result.
+#[inline]
 fn up(value: f64) -> f64 {
     value.next_up()
 }
@@ -105,6 +107,18 @@ impl Interval {
     }
 }
 
+impl Interval {
+    /// Times one number.
+    #[must_use]
+    pub(crate) fn times(self, factor: f64) -> Self {
+        if factor == 1.0 {
+            return self;
+        }
+        let (lo, hi) = if factor >= 0.0 { (self.lo, self.hi) } else { (self.hi, self.lo) };
+        Self { lo: product(lo, factor).0, hi: product(hi, factor).1 }
+    }
+}
+
 impl Neg for Interval {
     type Output = Self;
     fn neg(self) -> Self {
@@ -114,6 +128,7 @@ impl Neg for Interval {
 
 impl Add for Interval {
     type Output = Self;
+    #[inline]
     fn add(self, other: Self) -> Self {
         let (lo, hi) = (self.lo + other.lo, self.hi + other.hi);
         if lo.is_nan() || hi.is_nan() {
@@ -132,6 +147,7 @@ impl Sub for Interval {
 }
 
 /// A product of ends: zero times an open end is zero, since the end itself is never reached.
+#[inline]
 fn product(a: f64, b: f64) -> (f64, f64) {
     if a == 0.0 || b == 0.0 {
         return (0.0, 0.0);
@@ -142,7 +158,17 @@ fn product(a: f64, b: f64) -> (f64, f64) {
 
 impl Mul for Interval {
     type Output = Self;
+    #[inline]
     fn mul(self, other: Self) -> Self {
+        if self.lo >= 0.0 && other.lo >= 0.0 {
+            return Self { lo: product(self.lo, other.lo).0, hi: product(self.hi, other.hi).1 };
+        }
+        if self.hi <= 0.0 && other.lo >= 0.0 {
+            return Self { lo: product(self.lo, other.hi).0, hi: product(self.hi, other.lo).1 };
+        }
+        if self.lo >= 0.0 && other.hi <= 0.0 {
+            return Self { lo: product(self.hi, other.lo).0, hi: product(self.lo, other.hi).1 };
+        }
         let ends = [
             product(self.lo, other.lo),
             product(self.lo, other.hi),

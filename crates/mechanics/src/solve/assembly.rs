@@ -1,5 +1,6 @@
 //! A drive put together: models, shafts with their fixed speed ratios, what each source gives on its supply.
 
+use super::balance::Program;
 use super::chain::{Between, Hung, Tree, tree};
 use super::shafts::{directed, gears_engaged, inertias, root, self_locking_in_branch, shafts, stages, turn};
 use super::source::{SourceAt, sources};
@@ -113,6 +114,8 @@ pub(crate) struct Assembly {
     pub set: Option<f64>,
     /// A speed of the root of the order of the highest useful one.
     pub scale: f64,
+    /// How to sum up the net effort.
+    pub program: Program,
     /// Inertias that are not given.
     pub missing_inertia: Vec<Fault>,
 }
@@ -151,6 +154,7 @@ impl Assembly {
             order,
             set: None,
             scale: 1.0,
+            program: Program::default(),
             missing_inertia,
         };
         drive.set = match &spec.settings.set_speed {
@@ -159,6 +163,7 @@ impl Assembly {
         };
         drive.sources = sources(&drive)?;
         drive.scale = drive.natural_scale();
+        drive.program = Program::new(&drive);
         Ok(drive)
     }
 

@@ -6,6 +6,7 @@
 
 mod answers;
 mod assembly;
+mod balance;
 mod bracket;
 mod chain;
 mod drive_answers;

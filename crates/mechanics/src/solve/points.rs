@@ -42,7 +42,7 @@ pub(crate) struct Net<'a> {
 
 impl Law for Net<'_> {
     fn eval<R: Real>(&self, x: R) -> R {
-        flow(self.drive, x, self.back, &Full(self.drive)).net
+        self.drive.program.at(self.drive, x, self.back).net
     }
 }
 
@@ -110,12 +110,7 @@ pub(crate) fn meets(drive: &Assembly, back: bool, from: f64) -> Meets {
     let net = Net { drive, back };
     let magnitude = |x: f64| size(drive, x);
     let task = Task { curve: &net, size: &magnitude };
-    let mut cuts: Vec<f64> = Vec::new();
-    let mut step = 1.25 * drive.scale;
-    while step < far {
-        cuts.push(if back { -step } else { step });
-        step *= 4.0;
-    }
+    let cuts = [if back { -1.25 * drive.scale } else { 1.25 * drive.scale }];
     let jumps = drive.jumps();
     let pieces = pieces(&jumps, lo, hi);
     let mut out = Meets { all: Vec::new(), undecided: None };

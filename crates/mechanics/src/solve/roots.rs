@@ -119,7 +119,7 @@ impl Task<'_> {
                 None => Verdict::Empty,
             };
         }
-        let middle = Interval { lo, hi }.mid();
+        let middle = halved(lo, hi);
         let mut value = over.value;
         if over.slope.magnitude().is_finite() {
             let there = self.curve.over(Enclosure::variable(middle, middle)).value;
@@ -267,6 +267,13 @@ impl Task<'_> {
             }
         }
     }
+}
+
+/// Where to halve a box: far out by the ratio of its ends.
+fn halved(lo: f64, hi: f64) -> f64 {
+    let (near, far) = if lo > 0.0 { (lo, hi) } else { (-hi, -lo) };
+    let far_out = near > 0.0 && far > 4.0 * near && far < 1e6 * near;
+    if far_out { (near * far).sqrt().copysign(lo + hi) } else { Interval { lo, hi }.mid() }
 }
 
 enum Verdict {

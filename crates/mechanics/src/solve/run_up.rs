@@ -4,7 +4,7 @@
 //! (the same result as inertias reflected by the square of the ratio and divided by the efficiency).
 
 use super::assembly::Assembly;
-use super::extreme::greatest;
+use super::extreme::greatest_above;
 use super::flow::flow;
 use super::motion::{acceleration, has_inertia};
 use super::points::{Full, pieces, range};
@@ -88,8 +88,8 @@ pub(super) struct Loading<'a>(pub &'a Assembly);
 
 impl Law for Loading<'_> {
     fn eval<R: Real>(&self, x: R) -> R {
-        let there = flow(self.0, x, false, &Full(self.0));
-        (there.driving - there.net) / there.driving
+        let there = self.0.program.at(self.0, x, false);
+        there.required() / there.driving
     }
 }
 
@@ -100,9 +100,9 @@ pub(crate) fn reserve(drive: &Assembly, path: &Path, reached: &State) -> Result<
     let rest = about_to_move(drive, false, true);
     let mut loading = (rest.driving - rest.net) / rest.driving;
     if end > start
-        && let Some(worst) = greatest(&Loading(drive), &smooth_pieces(drive, start, end))
+        && let Some(worst) = greatest_above(&Loading(drive), &smooth_pieces(drive, start, end), f64::max(loading, 1e-9))
     {
-        loading = f64::max(loading, worst.value);
+        loading = worst.value;
     }
     if loading > 0.0 && loading.is_finite() {
         Ok(1.0 / loading)
