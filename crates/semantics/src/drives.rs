@@ -4,9 +4,9 @@ use std::cell::RefCell;
 use std::collections::BTreeMap;
 use std::sync::Arc;
 
-use layshaft_diagnostics::{Code, Diagnostic};
+use layshaft_diagnostics::{Code, Diagnostic, Span};
 use layshaft_mechanics::drive::{self, Direction, DriveSpec, PartSpec, Port, Settings, StatedSpeed};
-use layshaft_mechanics::fault::Fault;
+use layshaft_mechanics::fault::{Fault, FaultKind};
 use layshaft_mechanics::model::Motion;
 use layshaft_mechanics::registry::{self, Role, Shape};
 use layshaft_mechanics::solution::Answer;
@@ -27,6 +27,8 @@ pub(crate) struct DriveDef<'w> {
     pub chain: Option<drive::Chain>,
     /// The parts of the chain; [`drive::Chain`] counts them in this order.
     pub members: Vec<ItemRef>,
+    /// Where each member stands in the chain, in the drive's own item.
+    pub spans: Vec<Span>,
     pub settings: BTreeMap<SlotName, Given<'w>>,
 }
 
@@ -35,8 +37,9 @@ pub(crate) fn drives<'w>(world: &'w World, sink: &Sink) -> BTreeMap<ItemRef, Dri
     let mut found = BTreeMap::new();
     for (at, tree) in world.items(0) {
         let ItemKind::Drive { name, chain, block } = &tree.kind else { continue };
-        let mut members = Vec::new();
-        let lowered = lower(world, at, chain, &mut members, sink);
+        let mut named = Vec::new();
+        let lowered = lower(world, at, chain, &mut named, sink);
+        let (members, spans) = named.into_iter().unzip();
         let mut settings = BTreeMap::new();
         for entry in block.iter().flat_map(|block| &block.entries) {
             let slot = slot_of(entry);
@@ -51,7 +54,7 @@ pub(crate) fn drives<'w>(world: &'w World, sink: &Sink) -> BTreeMap<ItemRef, Dri
                 settings.insert(slot, Given { at, entry, value: &entry.value });
             }
         }
-        found.insert(at, DriveDef { name, chain: lowered, members, settings });
+        found.insert(at, DriveDef { name, chain: lowered, members, spans, settings });
     }
     found
 }
@@ -71,14 +74,14 @@ fn lower(
     world: &World,
     at: ItemRef,
     chain: &Chain,
-    members: &mut Vec<ItemRef>,
+    members: &mut Vec<(ItemRef, Span)>,
     sink: &Sink,
 ) -> Option<drive::Chain> {
     match &chain.kind {
         ChainKind::Broken => None,
         ChainKind::Part { count, path } => {
             let part = member(world, at, path, sink)?;
-            if let Some(index) = members.iter().position(|known| *known == part) {
+            if let Some(index) = members.iter().position(|(known, _)| *known == part) {
                 let place = world.place(at, path.span);
                 let message = format!("`{}` stands in the chain twice", path_text(path));
                 let name = path_text(path);
@@ -87,7 +90,7 @@ fn lower(
                 )));
                 return Some(drive::Chain::Part { index, count: *count });
             }
-            members.push(part);
+            members.push((part, path.span));
             Some(drive::Chain::Part { index: members.len() - 1, count: *count })
         }
         ChainKind::Times { count, inner } => {
@@ -287,6 +290,14 @@ impl Solved {
     /// Reports faults at the parts they are about, else at the drive.
     pub fn report(&self, eval: &Eval<'_>, drive: ItemRef, faults: &[Fault]) {
         for fault in faults {
+            let spans = eval.shared.drives.get(&drive).map(|def| &def.spans);
+            if let (FaultKind::Chain { how }, Some(part)) = (&fault.kind, fault.part)
+                && let Some(span) = spans.and_then(|spans| spans.get(part))
+            {
+                let place = eval.place(drive, *span);
+                eval.report(Diagnostic::new(Code::BadChain, place, crate::say::note(how)));
+                continue;
+            }
             let owner = fault.part.and_then(|part| self.items.get(part)).copied().unwrap_or(drive);
             crate::faults::report(eval, owner, fault);
         }
@@ -344,7 +355,7 @@ impl Solved {
 
 /// The gears to solve where a drive has a gearbox and the spec engages none.
 pub(crate) fn open_gears(eval: &Eval<'_>) -> Vec<Box<str>> {
-    let mut names: Vec<(ItemRef, layshaft_diagnostics::Span, Box<str>)> = Vec::new();
+    let mut names: Vec<(ItemRef, Span, Box<str>)> = Vec::new();
     for (at, def) in eval.shared.drives {
         if eval.given(*at, &("gear".into(), None)).is_some() {
             continue;

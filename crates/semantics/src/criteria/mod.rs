@@ -33,18 +33,17 @@ pub(crate) fn judge<'w>(
         if let Some(probability) = probability {
             states.first().map(|state| state.eval.quantity(probability, Reading::plain(at)));
         }
-        let own = extra.len();
         let chosen = scoped(shared, states, extra, at, scopes);
         let mut outcomes = Vec::new();
-        for choice in &chosen {
+        for choice in chosen.iter().flatten() {
             let state = match choice {
                 Choice::Declared(index) => &states[*index],
                 Choice::Extra(index) => &extra[*index],
             };
             outcomes.push(outcome(state, at, condition, asked.as_ref()));
         }
-        debug_assert!(own <= extra.len());
-        let broken = !tree.problems.is_empty() || matches!(condition.kind, ExprKind::Broken);
+        let broken =
+            chosen.is_none() || !tree.problems.is_empty() || matches!(condition.kind, ExprKind::Broken);
         if outcomes.is_empty() && !broken {
             never(shared, at, clause.span);
         }

@@ -15,14 +15,15 @@ pub(super) enum Choice {
     Extra(usize),
 }
 
-/// The states in which something is asked.
+/// The states in which something is asked; none where a scope is wrong, which has been reported.
 pub(super) fn scoped<'w>(
     shared: Shared<'w>,
     states: &[State<'w>],
     extra: &mut Vec<State<'w>>,
     at: ItemRef,
     scopes: &'w [Scope],
-) -> Vec<Choice> {
+) -> Option<Vec<Choice>> {
+    let mut sound = true;
     let mut inside: BTreeSet<usize> = (0..states.len()).collect();
     let mut others = Vec::new();
     for scope in scopes {
@@ -31,6 +32,7 @@ pub(super) fn scoped<'w>(
                 let mut named = BTreeSet::new();
                 for reference in references {
                     let found = named_states(shared, states, at, reference);
+                    sound &= !found.is_empty();
                     match &reference.with {
                         None => named.extend(found),
                         Some(block) => {
@@ -53,7 +55,9 @@ pub(super) fn scoped<'w>(
             }
             ScopeKind::NotIn(references) => {
                 for reference in references {
-                    for index in named_states(shared, states, at, reference) {
+                    let found = named_states(shared, states, at, reference);
+                    sound &= !found.is_empty();
+                    for index in found {
                         inside.remove(&index);
                     }
                 }
@@ -63,7 +67,7 @@ pub(super) fn scoped<'w>(
             }
         }
     }
-    inside.into_iter().map(Choice::Declared).chain(others).collect()
+    sound.then(|| inside.into_iter().map(Choice::Declared).chain(others).collect())
 }
 
 fn next_case(states: &[State<'_>], extra: &[State<'_>]) -> usize {

@@ -20,7 +20,7 @@ pub(crate) fn shows<'w>(
     let mut records = Vec::new();
     for (at, tree) in shared.world.items(0) {
         let ItemKind::Show { value, unit, at: asked, scopes } = &tree.kind else { continue };
-        let chosen = scoped(shared, states, extra, at, scopes);
+        let chosen = scoped(shared, states, extra, at, scopes).unwrap_or_default();
         let mut outcomes = Vec::new();
         for choice in chosen {
             let state = match choice {

@@ -56,7 +56,7 @@ impl Eval<'_> {
         match layshaft_units::compare(&a.ty, &b.ty) {
             Ok(_) => Some((a, b)),
             Err(refusal) => {
-                let (literal, other, found) =
+                let (literal, found, other) =
                     if is_literal(right) { (right, &a, &b) } else { (left, &b, &a) };
                 let place = self.place(reading.at, if is_literal(literal) { literal.span } else { span });
                 self.report(self.refused(found, other, &refusal, literal, place));
