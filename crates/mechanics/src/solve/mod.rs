@@ -9,6 +9,8 @@ mod assembly;
 mod balance;
 mod bracket;
 mod chain;
+mod chart;
+mod derive;
 mod drive_answers;
 mod extreme;
 mod findings;
@@ -31,6 +33,8 @@ mod testing;
 mod tests;
 
 pub use answers::{OperatingPoint, Solution};
+pub use chart::{Chart, ChartCurve, ChartPoint, CurveRole};
+pub use derive::{DRIVE_FORMULAS, Step, Symbol};
 
 use crate::drive::{DriveSpec, StatedSpeed};
 use crate::fault::Fault;

@@ -100,7 +100,8 @@ pub(crate) fn reserve(drive: &Assembly, path: &Path, reached: &State) -> Result<
     let rest = about_to_move(drive, false, true);
     let mut loading = (rest.driving - rest.net) / rest.driving;
     if end > start
-        && let Some(worst) = greatest_above(&Loading(drive), &smooth_pieces(drive, start, end), f64::max(loading, 1e-9))
+        && let Some(worst) =
+            greatest_above(&Loading(drive), &smooth_pieces(drive, start, end), f64::max(loading, 1e-9))
     {
         loading = worst.value;
     }

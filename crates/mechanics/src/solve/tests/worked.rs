@@ -207,3 +207,41 @@ fn trike_on_the_ramp_and_downhill() {
     assert_eq!(braked.answer(None, None, "mode"), Answer::Word("braking"));
     assert_eq!(number_at(&braked, Some(5), Some(Port::Output), "torque"), Err(Answer::NoSuch));
 }
+
+#[test]
+fn numbers_say_how_they_came_about() {
+    let solution = solve(&hoist(400.0, 1310.0, Direction::Forward)).unwrap();
+    let power = solution.derivation(MOTOR, None, "power");
+    assert_eq!(power.len(), 1);
+    let product: f64 = power[0].symbols.iter().map(|s| s.si).product();
+    near(power[0].result.unwrap(), product, 1e-15);
+    let torque = solution.derivation(MOTOR, None, "torque");
+    assert!(torque.iter().any(|s| s.text.contains("s_b")), "{torque:?}");
+    assert!(torque.iter().all(|s| s.symbols.iter().all(|symbol| symbol.si.is_finite())));
+    let hold = solution.derivation(Some(1), None, "holding_reserve");
+    near(hold[0].result.unwrap(), 2.85, 1e-3);
+    // Lifting uses the forward efficiency of the gear, lowering the backward one.
+    let texts =
+        |s: &Solution| s.derivation(Some(2), None, "torque").iter().map(|s| s.text).collect::<Vec<_>>();
+    assert!(texts(&solution).iter().all(|t| !t.contains("eta_b")));
+    let down = solve(&hoist(400.0, 1310.0, Direction::Reverse)).unwrap();
+    assert!(texts(&down).iter().any(|t| t.contains("eta_b")));
+    assert!(!solution.derivation(None, None, "run_up_time").is_empty());
+    assert!(solution.derivation(None, None, "starts").is_empty());
+}
+
+#[test]
+fn charts_meet_at_the_operating_points() {
+    let solution = solve(&hoist(400.0, 1310.0, Direction::Forward)).unwrap();
+    let chart = solution.chart(MOTOR).unwrap();
+    let reached = chart.points.iter().find(|p| p.reached).unwrap();
+    near(reached.speed, rpm(1447.1), 5e-5);
+    near(reached.effort, 23.55, 5e-4);
+    for curve in &chart.curves {
+        assert!(curve.line.windows(2).all(|w| w[0].0 < w[1].0));
+        assert!(curve.line.iter().all(|(x, y)| x.is_finite() && y.is_finite()));
+    }
+    near(chart.continuous.unwrap(), 26.526, 1e-4);
+    let own = solution.chart(None).unwrap();
+    assert_eq!(own.motion, crate::model::Motion::Linear);
+}
