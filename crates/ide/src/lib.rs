@@ -1,6 +1,10 @@
-//! What an editor asks of a spec, in editor words: offsets, labels and markup, never types of a protocol.
+//! Editor features in editor words: offsets, labels, markup, never protocol types.
 //!
-//! Each feature will be one file here that takes an analysis and a place and gives plain data: hover, inlay hints,
-//! completion, definition and references, rename, symbols, code actions. They belong to the language server's
-//! issue; nothing of them is here yet. Whatever they show comes from `layshaft_present`, so that an editor and
-//! the command cannot disagree.
+//! One feature a file, each a function of a [`Snapshot`] and a place; a handler of the server converts, asks, converts.
+
+pub mod definition;
+#[cfg(test)]
+mod fixture;
+pub mod snapshot;
+
+pub use snapshot::Snapshot;
