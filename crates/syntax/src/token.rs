@@ -72,40 +72,35 @@ impl TokenKind {
     /// Whether a minus that stands tight before a number and right behind this belongs to the number.
     pub(crate) const fn takes_sign(self) -> bool {
         use TokenKind as K;
-        match self {
-            K::True | K::False | K::Yes | K::No | K::Points | K::Absent | K::Rated => false,
-            K::Plus | K::Minus | K::Star | K::Slash | K::Caret | K::PlusMinus | K::Less | K::LessEqual => {
-                true
-            }
-            K::Greater | K::GreaterEqual | K::EqualEqual | K::NotEqual | K::Equal | K::DotDot => true,
-            K::Comma | K::LeftParen | K::LeftSquare | K::Colon | K::Where | K::Arrow => true,
-            _ => self.is_reserved(),
+        if matches!(
+            self,
+            K::True | K::False | K::Yes | K::No | K::Points | K::Absent | K::Rated | K::Superscript
+        ) {
+            return false;
         }
+        self.is_operator()
+            || self.is_reserved()
+            || matches!(
+                self,
+                K::Equal | K::Comma | K::LeftParen | K::LeftSquare | K::Colon | K::Where | K::Arrow
+            )
     }
 
     /// Whether a line that ends in this goes on in the next.
     pub(crate) const fn leaves_line_open(self) -> bool {
         use TokenKind as K;
-        match self {
-            K::Plus | K::Minus | K::Star | K::Slash | K::Caret | K::PlusMinus | K::Less | K::LessEqual => {
-                true
-            }
-            K::Greater | K::GreaterEqual | K::EqualEqual | K::NotEqual | K::Equal | K::DotDot => true,
-            K::Comma | K::Arrow | K::And | K::Or | K::Not | K::If | K::Then | K::Else => true,
-            _ => false,
-        }
+        (self.is_operator() && !matches!(self, K::Superscript))
+            || matches!(
+                self,
+                K::Equal | K::Comma | K::Arrow | K::And | K::Or | K::Not | K::If | K::Then | K::Else
+            )
     }
 
     /// Whether this is an operator that no statement begins with.
     pub(crate) const fn is_operator(self) -> bool {
         use TokenKind as K;
-        match self {
-            K::Plus | K::Minus | K::Star | K::Slash | K::Caret | K::PlusMinus | K::Less | K::LessEqual => {
-                true
-            }
-            K::Greater | K::GreaterEqual | K::EqualEqual | K::NotEqual | K::DotDot | K::Superscript => true,
-            _ => false,
-        }
+        ((self as u8) >= K::Plus as u8 && (self as u8) <= K::NotEqual as u8)
+            || matches!(self, K::DotDot | K::Superscript)
     }
 }
 

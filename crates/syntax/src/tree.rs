@@ -57,7 +57,8 @@ pub struct Problem {
     pub fixes: Vec<(String, Vec<(Span, String)>)>,
 }
 
-/// A name as written, in normal form C.
+/// A name as written, in normal form C. An empty one stands where a name is missing, which was reported: nothing is
+/// to be said of it again.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct Name {
     /// The name.
@@ -412,6 +413,7 @@ pub struct Scope {
 
 /// The forms of a scope.
 #[derive(Clone, Debug)]
+#[allow(clippy::large_enum_variant, reason = "few stand in a spec, and each is read once")]
 pub enum ScopeKind {
     /// `only in a, b`
     OnlyIn(Vec<CaseRef>),

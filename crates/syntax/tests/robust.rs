@@ -141,6 +141,49 @@ fn soup() -> impl Strategy<Value = String> {
     prop::collection::vec(prop::sample::select(PIECES), 0..60).prop_map(|pieces| pieces.concat())
 }
 
+/// Whole and half declarations with all that may stand between two of them.
+fn heap() -> impl Strategy<Value = String> {
+    const ITEMS: &[&str] = &[
+        "let a = 1",
+        "let b =",
+        "let c = (1",
+        "let d = \"x",
+        "source s: t { x = 1",
+        "source s: t",
+        "x = 5",
+        "case c { a.b = 1 }",
+        "require \"r\" a > 2",
+        "only in b",
+        "allow a-b because \"c\"",
+        "duty d { }",
+        "title \"t\"",
+        "$",
+        "-5",
+        "show x as",
+        "let e = points (a [m",
+        "use \"u\" as",
+    ];
+    const BETWEEN: &[&str] = &[
+        "\n",
+        "\n\n",
+        ";",
+        " ",
+        "\n}\n",
+        "}",
+        ")",
+        "]",
+        "\n## doc\n",
+        "\n# c\n",
+        "\n+",
+        "\n{",
+        ",\n",
+        "\u{200b}\n",
+        "\r",
+    ];
+    prop::collection::vec((prop::sample::select(ITEMS), prop::sample::select(BETWEEN)), 1..8)
+        .prop_map(|parts| parts.iter().flat_map(|(item, between)| [*item, *between]).collect())
+}
+
 /// A spec with pieces cut out, doubled and put in.
 fn mutated() -> impl Strategy<Value = String> {
     let edit = (any::<prop::sample::Index>(), 0..40usize, prop::sample::select(PIECES));
@@ -217,6 +260,17 @@ proptest! {
             let fresh = parse(text);
             // Not `assert_eq`: the trees are long, the text says enough.
             prop_assert!(format!("{kept:?}") == format!("{fresh:?}"), "{}", text);
+        }
+    }
+
+    /// Items of the same text among other neighbours: their trees depend on nothing but their text.
+    #[test]
+    fn a_memo_knows_items_among_other_neighbours(texts in prop::collection::vec(heap(), 2..6)) {
+        let mut memo = Memo::default();
+        for text in &texts {
+            let kept = parse_with(text, &mut memo);
+            let fresh = parse(text);
+            prop_assert!(format!("{kept:?}") == format!("{fresh:?}"), "{:?}", texts);
         }
     }
 

@@ -170,10 +170,7 @@ impl<'a> Cutter<'a> {
         match token.kind {
             K::Newline => self.at += 1,
             K::RightBrace | K::RightParen | K::RightSquare => self.stray(token),
-            K::Semicolon => {
-                self.problems.push(lone_semicolon(token.span));
-                self.at += 1;
-            }
+            K::Semicolon => self.lone_semicolon(token.span),
             _ => {
                 self.item = Current {
                     running: true,
@@ -280,23 +277,28 @@ impl<'a> Cutter<'a> {
         if self.inside_brace() {
             self.close_parens(token.span.start);
             self.separator(token);
+            self.at += 1;
+        } else if self.stack.is_empty() {
+            // What stands behind decides on the fix, so the message is the file's.
+            self.end_item();
         } else {
-            let follows = self.raw.get(self.at + 1).is_some_and(|next| next.kind != TokenKind::Newline);
-            let mut problem = lone_semicolon(token.span);
-            if follows {
-                problem.fixes.clear();
-            }
-            if follows && self.stack.is_empty() {
-                problem = problem.fix("begin a new line", token.span, "\n");
-            } else if follows {
-                problem = problem.fix("write `,`", token.span, ",");
-            }
-            self.item.problems.push(problem);
-            if self.stack.is_empty() {
-                self.at += 1;
-                return self.end_item();
-            }
+            let message = "`;` parts the entries of a block; what stands between brackets is parted by `,`";
+            let problem = Problem::new(Code::Syntax, token.span, message);
+            self.item.problems.push(problem.fix("write `,`", token.span, ","));
+            self.at += 1;
         }
+    }
+
+    /// `;` between two items or behind the last.
+    fn lone_semicolon(&mut self, span: Span) {
+        let message = "`;` parts the entries of a block; a declaration ends with its line";
+        let problem = Problem::new(Code::Syntax, span, message);
+        let follows = self.raw.get(self.at + 1).is_some_and(|next| next.kind != TokenKind::Newline);
+        self.problems.push(if follows {
+            problem.fix("begin a new line", span, "\n")
+        } else {
+            problem.fix("take `;` out", span, "")
+        });
         self.at += 1;
     }
 
@@ -326,11 +328,6 @@ impl<'a> Cutter<'a> {
             problems: current.problems,
         });
     }
-}
-
-fn lone_semicolon(span: Span) -> Problem {
-    Problem::new(Code::Syntax, span, "`;` parts the entries of a block; a declaration ends with its line")
-        .fix("take `;` out", span, "")
 }
 
 /// What an expression may hold a limited number of.
