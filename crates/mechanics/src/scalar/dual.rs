@@ -4,6 +4,7 @@ use std::ops::{Add, Div, Mul, Neg, Sub};
 
 use super::Real;
 use crate::curve::Curve;
+use crate::model::{Draw, Drawn};
 
 /// A value and its derivative by the variable.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -147,5 +148,8 @@ impl Real for Dual {
     }
     fn on(self, curve: &dyn Curve) -> Self {
         curve.dual(self)
+    }
+    fn drawn(draw: &dyn Draw, speed: Self, effort: Self) -> Drawn<Self> {
+        draw.dual(speed, effort)
     }
 }

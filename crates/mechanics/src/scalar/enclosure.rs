@@ -4,6 +4,7 @@ use std::ops::{Add, Div, Mul, Neg, Sub};
 
 use super::{Interval, Real};
 use crate::curve::Curve;
+use crate::model::{Draw, Drawn};
 
 /// Bounds on value and slope of a law over a range of its variable.
 ///
@@ -249,5 +250,8 @@ impl Real for Enclosure {
 
     fn on(self, curve: &dyn Curve) -> Self {
         curve.over(self)
+    }
+    fn drawn(draw: &dyn Draw, speed: Self, effort: Self) -> Drawn<Self> {
+        draw.over(speed, effort)
     }
 }

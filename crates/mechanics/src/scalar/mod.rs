@@ -13,6 +13,7 @@ use std::fmt::Debug;
 use std::ops::{Add, Div, Mul, Neg, Sub};
 
 use crate::curve::Curve;
+use crate::model::{Draw, Drawn};
 
 pub use dual::Dual;
 pub use enclosure::Enclosure;
@@ -69,6 +70,8 @@ pub trait Real:
     fn piecewise(self, breaks: &[f64], piece: impl Fn(usize, Self) -> Self) -> Self;
     /// A curve at this number.
     fn on(self, curve: &dyn Curve) -> Self;
+    /// What a machine draws at a speed and an effort.
+    fn drawn(draw: &dyn Draw, speed: Self, effort: Self) -> Drawn<Self>;
 }
 
 impl Real for f64 {
@@ -119,6 +122,9 @@ impl Real for f64 {
     }
     fn on(self, curve: &dyn Curve) -> Self {
         curve.at(self)
+    }
+    fn drawn(draw: &dyn Draw, speed: Self, effort: Self) -> Drawn<Self> {
+        draw.at(speed, effort)
     }
 }
 

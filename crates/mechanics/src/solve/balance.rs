@@ -38,16 +38,16 @@ pub(crate) struct Program {
 /// Net effort at the root, and what of it comes from the side of the sources.
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Balance<R> {
-    /// Available less required.
-    pub net: R,
     /// Available.
     pub driving: R,
+    /// Required.
+    pub required: R,
 }
 
 impl<R: Real> Balance<R> {
-    /// Required.
-    pub fn required(self) -> R {
-        self.driving - self.net
+    /// Available less required.
+    pub fn net(self) -> R {
+        self.driving - self.required
     }
 }
 
@@ -137,9 +137,10 @@ impl Program {
         let mut driving = R::of(0.0);
         for ((slot, speed, count), source) in self.sources.iter().zip(&drive.sources) {
             let effort = scaled(source.effort(scaled(x, *speed)), *count);
-            sums[*slot] = sums[*slot] + effort;
             if *slot == self.root {
                 driving = driving + effort;
+            } else {
+                sums[*slot] = sums[*slot] + effort;
             }
         }
         for ((slot, speed, count), load) in self.loads.iter().zip(&drive.loads) {
@@ -159,9 +160,10 @@ impl Program {
                     if link.one_way {
                         passed = passed.max(R::of(0.0));
                     }
-                    sums[link.near] = sums[link.near] + passed;
                     if link.near == self.root {
                         driving = driving + passed;
+                    } else {
+                        sums[link.near] = sums[link.near] + passed;
                     }
                 }
                 Far::Output => {
@@ -173,7 +175,8 @@ impl Program {
                 }
             }
         }
-        Balance { net: sums[self.root], driving }
+        // What is left at the root without the sources is what is asked there.
+        Balance { driving, required: -sums[self.root] }
     }
 }
 

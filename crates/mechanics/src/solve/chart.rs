@@ -79,14 +79,14 @@ impl Solution {
             let balance = drive.program.at(drive, x, false);
             let speed = x * station.speed;
             available.push((speed, balance.driving * scale));
-            required.push((speed, balance.required() * scale));
+            required.push((speed, balance.required * scale));
             power.push((speed, balance.driving * x / share));
         }
         let points = self.points.iter().filter(|s| s.faults.is_empty()).filter_map(|state| {
             let balance = drive.program.at(drive, state.x, state.x < 0.0);
             Some(ChartPoint {
                 speed: state.x * station.speed,
-                effort: balance.required() * scale,
+                effort: balance.required * scale,
                 stability: state.stability?,
                 reached: self.here.as_ref().is_ok_and(|here| here.x == state.x),
             })

@@ -16,6 +16,7 @@ mod extreme;
 mod findings;
 mod flow;
 mod motion;
+mod over;
 mod part_answers;
 mod points;
 mod quadrature;
@@ -35,6 +36,7 @@ mod tests;
 pub use answers::{OperatingPoint, Solution};
 pub use chart::{Chart, ChartCurve, ChartPoint, CurveRole};
 pub use derive::{DRIVE_FORMULAS, Step, Symbol};
+pub use over::{Extremes, Question, worst_over};
 
 use crate::drive::{DriveSpec, StatedSpeed};
 use crate::fault::Fault;

@@ -42,7 +42,7 @@ pub(crate) struct Net<'a> {
 
 impl Law for Net<'_> {
     fn eval<R: Real>(&self, x: R) -> R {
-        self.drive.program.at(self.drive, x, self.back).net
+        self.drive.program.at(self.drive, x, self.back).net()
     }
 }
 

@@ -89,7 +89,7 @@ pub(super) struct Loading<'a>(pub &'a Assembly);
 impl Law for Loading<'_> {
     fn eval<R: Real>(&self, x: R) -> R {
         let there = self.0.program.at(self.0, x, false);
-        there.required() / there.driving
+        there.required / there.driving
     }
 }
 

@@ -5,7 +5,7 @@ use crate::laws::testing::rpm;
 use crate::registry::{Role, row};
 use crate::solution::{Answer, Outcome};
 use crate::solve::testing::{near, number, number_at};
-use crate::solve::{Solution, gears, solve, solve_at};
+use crate::solve::{Extremes, Question, Solution, gears, solve, solve_at, worst_over};
 use crate::values::{Duty, FieldValue, Table, Values};
 
 fn si(fields: &[(&'static str, f64)]) -> Values {
@@ -244,4 +244,57 @@ fn charts_meet_at_the_operating_points() {
     near(chart.continuous.unwrap(), 26.526, 1e-4);
     let own = solution.chart(None).unwrap();
     assert_eq!(own.motion, crate::model::Motion::Linear);
+}
+
+/// The range is scanned beside: no value lies outside the extremes, and they are reached.
+#[track_caller]
+fn extremes_hold(spec: &DriveSpec, range: (f64, f64), question: Question<'_>) -> Extremes {
+    let found = worst_over(spec, (None, None), range, question).unwrap();
+    let value = |answer: &Answer| match answer {
+        Answer::Quantity { si, .. } => *si,
+        other => panic!("{question:?} {other:?}"),
+    };
+    let (least, greatest) = (value(&found.least.1), value(&found.greatest.1));
+    for i in 0..=300 {
+        let speed = range.0 + (range.1 - range.0) * f64::from(i) / 300.0;
+        let stated = StatedSpeed { part: None, port: None, speed };
+        if let Answer::Quantity { si, .. } =
+            solve_at(spec, stated).unwrap().answer(question.part, question.port, question.name)
+        {
+            let slack = 1e-9 * greatest.abs();
+            assert!(
+                si >= least - slack && si <= greatest + slack,
+                "{question:?} {speed} {si} {least} {greatest}"
+            );
+        }
+    }
+    found
+}
+
+#[test]
+fn extremes_over_a_range_of_speeds() {
+    let cruise = trike(Ride { rider: false, ..PLAIN });
+    let range = (5.0 / 3.6, 20.0 / 3.6);
+    for (part, name) in [
+        (PACK, "current"),
+        (PACK, "voltage"),
+        (PACK, "power"),
+        (MOTOR, "torque"),
+        (MOTOR, "current"),
+        (MOTOR, "efficiency"),
+        (Some(5), "force"),
+        (Some(6), "power"),
+        (None, "power"),
+        (None, "efficiency"),
+    ] {
+        let found = extremes_hold(&cruise, range, Question { part, port: None, name });
+        assert_eq!(found.unanswered, None, "{name}");
+    }
+    // With the rider each source gives the same share of what it can.
+    let both = extremes_hold(&trike(PLAIN), range, Question { part: MOTOR, port: None, name: "torque" });
+    assert_eq!(both.unanswered, None);
+    // Faster than the tricycle can go, somewhere in the range there is no answer.
+    let question = Question { part: PACK, port: None, name: "current" };
+    let far = worst_over(&cruise, (None, None), (20.0 / 3.6, 45.0 / 3.6), question).unwrap();
+    assert!(matches!(far.unanswered, Some((_, Answer::Absent(_)))));
 }
