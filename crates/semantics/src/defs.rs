@@ -104,7 +104,7 @@ impl<'w> Builder<'w, '_> {
 
     fn row(&self, at: ItemRef, role: Role, kind: &Name) -> Option<&'static KindRow> {
         let found = registry::row(role, &kind.text);
-        if found.is_none() {
+        if found.is_none() && !kind.text.is_empty() {
             self.sink.push(unknown_kind(self.world, at, role, kind));
         }
         found

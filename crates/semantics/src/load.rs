@@ -88,6 +88,10 @@ fn declare(world: &mut World, file: u32, files: &dyn Files, memo: &mut crate::Me
             }
             _ => continue,
         };
+        if name.is_empty() {
+            // The parser said that the name is missing.
+            continue;
+        }
         let place = world.place(at, span);
         if matches!(&*name, "plain" | "pi") {
             let words = if &*name == "pi" { "the number pi" } else { "the spec without case" };
