@@ -9,7 +9,7 @@ use super::table::{csv, points};
 use super::terms::{maybe, miss, peek, peek_at, peek_text, position, take, take_name, take_text};
 use super::{Extra, In, Input, Parsed, Rule, Sort};
 use crate::token::TokenKind as K;
-use crate::tree::{Basis, BasisWord, Expr, Pair, Value, ValueKind};
+use crate::tree::{Basis, BasisWord, BinaryOp, Expr, ExprKind, Pair, UnaryOp, Value, ValueKind};
 
 /// A value with its basis.
 pub(super) fn value<'s>(exprs: &Exprs<'s>) -> Rule<'s, Value> {
@@ -102,6 +102,7 @@ fn plain<'s>(inp: &mut In<'s, '_>, exprs: &Exprs<'s>, commas: bool) -> Parsed<Va
     }
     let first = inp.parse(&exprs.condition)?;
     match peek(inp) {
+        Some(K::DotDot | K::At | K::Drives) if !is_sum(&first) => not_at_end(inp),
         Some(K::DotDot) => {
             inp.skip();
             let high = inp.parse(&exprs.sum)?;
@@ -130,6 +131,18 @@ fn plain<'s>(inp: &mut In<'s, '_>, exprs: &Exprs<'s>, commas: bool) -> Parsed<Va
             Ok(ValueKind::Expr(first))
         }
     }
+}
+
+/// Whether an expression may stand on the left of `..`, `at` and `drives`, as it may on the right.
+const fn is_sum(expr: &Expr) -> bool {
+    use BinaryOp as B;
+    !matches!(
+        expr.kind,
+        ExprKind::If { .. }
+            | ExprKind::Compare { .. }
+            | ExprKind::Unary { op: UnaryOp::Not, .. }
+            | ExprKind::Binary { op: B::And | B::Or, .. }
+    )
 }
 
 /// `reduction 14.5`, `increase 2`, `teeth 42 drives 18`, `S3 40 %`, `S1`

@@ -5,6 +5,8 @@ mod lalr;
 mod random;
 mod sentences;
 
+use std::sync::LazyLock;
+
 use ebnf::Grammar;
 use lalr::Automaton;
 use layshaft_syntax::{DECLARATION_WORDS, RESERVED, parse};
@@ -13,6 +15,18 @@ use random::{Deriver, written};
 use sentences::{line_at, sentence};
 
 const GRAMMAR: &str = include_str!("../../../../grammar/layshaft.ebnf");
+
+static AUTOMATON: LazyLock<Automaton> = LazyLock::new(|| automaton(GRAMMAR));
+
+/// The declarations of one line that the specs hold.
+static LINES: LazyLock<Vec<String>> = LazyLock::new(|| {
+    let specs = specs();
+    let lines = specs.iter().flat_map(|(_, text)| text.lines()).map(str::trim);
+    let lines = lines.filter(|line| !line.is_empty() && !line.starts_with('#') && messages(line).is_empty());
+    let lines: Vec<String> = lines.map(String::from).collect();
+    assert!(lines.len() > 60, "only {} declarations stand on one line", lines.len());
+    lines
+});
 
 fn automaton(text: &str) -> Automaton {
     Automaton::new(&Grammar::read(text).unwrap_or_else(|error| panic!("{error}")))
@@ -249,6 +263,40 @@ fn random_spec(grammar: &Grammar, choices: Vec<u8>) -> Option<String> {
     (once && again == sentence).then_some(text)
 }
 
+/// Put between the words of a declaration at random.
+const SIGNS: &[&str] = &[
+    "- ",
+    "( ",
+    ") ",
+    "= ",
+    ", ",
+    "at ",
+    "± ",
+    "² ",
+    "points ",
+    "5 ",
+    ".. ",
+    "< ",
+    "not ",
+    "each ",
+    "a ",
+    "{ } ",
+    "drives ",
+    "if a then b else ",
+    "[ 1 ] ",
+    "with { } ",
+    "only where a = ",
+    "; ",
+    "-> ",
+    "* ",
+    "from \"x\" ",
+    "as ",
+    "confidence 5 % ",
+    "S1 ",
+    "reduction 2 ",
+    "rated ",
+];
+
 proptest! {
     #![proptest_config(ProptestConfig { failure_persistence: None, ..ProptestConfig::default() })]
 
@@ -258,6 +306,29 @@ proptest! {
         let grammar = Grammar::read(&GRAMMAR.replace("COMPARE | \"=\" ;", "COMPARE ;")).unwrap();
         if let Some(text) = random_spec(&grammar, choices) {
             prop_assert_eq!(messages(&text), Vec::<String>::new(), "{}", text);
+        }
+    }
+
+    /// What the parser reads without a word, the grammar derives.
+    #[test]
+    fn what_is_read_is_a_sentence(
+        which in any::<prop::sample::Index>(),
+        changes in prop::collection::vec((any::<prop::sample::Index>(), any::<prop::sample::Index>(), 0..4_u8), 1..4),
+    ) {
+        let mut tokens: Vec<&str> = which.get(&LINES).split_inclusive(' ').collect();
+        for (from, to, change) in changes {
+            let (from, to) = (from.index(tokens.len() + 1), to.index(tokens.len() + 1));
+            match change {
+                0 if from < tokens.len() => drop(tokens.remove(from)),
+                1 if from < tokens.len() && to < tokens.len() => tokens.swap(from, to),
+                2 if from < tokens.len() => tokens.insert(to, tokens[from]),
+                _ => tokens.insert(to, SIGNS[from % SIGNS.len()]),
+            }
+        }
+        let text = tokens.concat();
+        if messages(&text).is_empty() {
+            let at = refused(&AUTOMATON, &text);
+            prop_assert!(at.is_none(), "read, but {:?} cannot stand there: {}", at, text);
         }
     }
 }

@@ -41,7 +41,10 @@ pub fn sentence(text: &str) -> Vec<Terminal> {
             _ if is_duty(word) && (number || next.is_none_or(ends_value)) => Some("DUTY"),
             _ => None,
         };
-        let terminals = special.into_iter().map(String::from).chain([terminal(token.kind)]).collect();
+        // Inside a block only `allow` declares.
+        let named = token.kind.is_declaration() && token.kind != K::Allow && !open.is_empty();
+        let plain = if named { K::Name } else { token.kind };
+        let terminals = special.into_iter().map(String::from).chain([terminal(plain)]).collect();
         out.push((terminals, token.span.start as usize));
         if token.kind == K::Allow {
             out.push((vec!["CODE".into()], token.span.end as usize));
