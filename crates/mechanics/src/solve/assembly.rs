@@ -127,7 +127,7 @@ impl Assembly {
         let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
         let tree = tree(&spec.chain, &roles, &models)?;
         let gears = gears_engaged(spec, &tree, &models)?;
-        let root = root(&tree, &models);
+        let root = root(spec, &tree, &models);
         let (far, order) = directed(&tree, root);
         let stages = stages(&tree, &models, &gears, &far);
         self_locking_in_branch(&stages, &models)?;

@@ -25,15 +25,24 @@ pub(crate) fn greatest(curve: &dyn Curve, pieces: &[(f64, f64)]) -> Option<Great
     greatest_above(curve, pieces, f64::NEG_INFINITY)
 }
 
+/// The greatest value of a curve that is dear to evaluate: with a wider bound where it is level.
+pub(crate) fn greatest_of_dear(curve: &dyn Curve, pieces: &[(f64, f64)]) -> Option<Greatest> {
+    within(curve, pieces, f64::NEG_INFINITY, BUDGET / 16)
+}
+
 /// The greatest value if it is above a floor; `None` where nothing is.
 pub(crate) fn greatest_above(curve: &dyn Curve, pieces: &[(f64, f64)], floor: f64) -> Option<Greatest> {
+    within(curve, pieces, floor, BUDGET)
+}
+
+fn within(curve: &dyn Curve, pieces: &[(f64, f64)], floor: f64, budget: usize) -> Option<Greatest> {
     let mut best = Best { curve, x: f64::NAN, value: floor };
     let mut boxes: Vec<(f64, f64)> = pieces.iter().copied().filter(|(lo, hi)| lo <= hi).collect();
     for (lo, hi) in &boxes {
         best.try_at(*lo);
         best.try_at(*hi);
     }
-    let mut left = BUDGET;
+    let mut left = budget;
     let mut bound = f64::NEG_INFINITY;
     while !boxes.is_empty() {
         let mut next = Vec::new();

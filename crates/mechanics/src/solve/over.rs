@@ -3,7 +3,7 @@
 
 use super::assembly::Assembly;
 use super::bracket::bracketed;
-use super::extreme::greatest;
+use super::extreme::greatest_of_dear;
 use super::flow::{Acting, Flow, flow};
 use super::points::pieces;
 use super::solve_at;
@@ -60,7 +60,7 @@ pub fn worst_over(
     for law in watched(&drive, &question) {
         for sign in [1.0, -1.0] {
             let stated = Stated { drive: &drive, law, sign };
-            if let Some(found) = greatest(&stated, &pieces) {
+            if let Some(found) = greatest_of_dear(&stated, &pieces) {
                 tried.push(ask((found.x * ratio).clamp(low, high))?);
             }
         }

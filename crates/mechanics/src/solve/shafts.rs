@@ -1,7 +1,7 @@
 //! Which way efforts are gathered, how fast each shaft turns, and what inertia sits on it.
 
 use super::assembly::{Far, Shaft, Stage};
-use super::chain::Tree;
+use super::chain::{Hung, Tree};
 use crate::drive::{Direction, DriveSpec};
 use crate::fault::{Fault, FaultKind, Note};
 use crate::model::{Known, Model, Motion};
@@ -92,11 +92,16 @@ fn way(tree: &Tree, from: usize, to: usize) -> Vec<usize> {
     path
 }
 
-/// Where to balance: on the shaft at which the ways of all sources to the first load have met, so that a single
-/// source is balanced at its own shaft; but behind the last freewheel on the common way.
-pub(super) fn root(tree: &Tree, models: &[Model]) -> usize {
+/// Where to balance: on the shaft at which the ways of all sources that are on to the first load have met, so that a
+/// single source is balanced at its own shaft; but behind the last freewheel on the common way.
+pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Model]) -> usize {
     let goal = tree.loads[0].shaft;
-    let ways: Vec<Vec<usize>> = tree.sources.iter().map(|s| way(tree, s.shaft, goal)).collect();
+    let on = |source: &&Hung| spec.parts[source.part].on;
+    let mut ways: Vec<Vec<usize>> =
+        tree.sources.iter().filter(on).map(|s| way(tree, s.shaft, goal)).collect();
+    if ways.is_empty() {
+        ways = tree.sources.iter().map(|s| way(tree, s.shaft, goal)).collect();
+    }
     let mut common = 0;
     while ways
         .iter()
