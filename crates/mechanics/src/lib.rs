@@ -14,6 +14,7 @@ pub mod registry;
 pub mod scalar;
 pub mod solution;
 pub mod solve;
+pub mod typed;
 pub mod values;
 
 pub use solve::{OperatingPoint, Solution, gears, solve, solve_at};

@@ -41,6 +41,7 @@ pub use over::{Extremes, Question, worst_over};
 use crate::drive::{DriveSpec, StatedSpeed};
 use crate::fault::Fault;
 use crate::registry::Role;
+use crate::solution::Stability;
 
 /// How near to a jump, as a share, the two sides of it are evaluated.
 pub(crate) const BESIDE: f64 = 1e-13;
@@ -65,6 +66,35 @@ pub fn solve_at(spec: &DriveSpec, speed: StatedSpeed) -> Result<Solution, Vec<Fa
     let drive = assembly::Assembly::new(spec)?;
     let x = drive.coordinate(&speed)?;
     Ok(Solution::at_speed(drive, x))
+}
+
+/// All zeros of a curve from `lo` to `hi`, rising, jumps among them, with the stability of an operating point there;
+/// a place that could not be settled otherwise. `size` is the size of what the curve is the difference of.
+pub(crate) fn zeros(
+    curve: &dyn crate::curve::Curve,
+    size: &dyn Fn(f64) -> f64,
+    lo: f64,
+    hi: f64,
+) -> Result<Vec<(f64, Stability)>, f64> {
+    let task = roots::Task { curve, size };
+    let mut jumps = curve.jumps();
+    jumps.sort_by(f64::total_cmp);
+    let pieces = points::pieces(&jumps, lo, hi);
+    let mut out = Vec::new();
+    for (index, (from, to)) in pieces.iter().enumerate() {
+        let found = task.roots_cut(*from, *to, &[]);
+        if let Some((place, _)) = found.undecided {
+            return Err(place);
+        }
+        out.extend(found.roots.iter().map(|root| (root.x, state::stability(root.crossing))));
+        let Some((next, _)) = pieces.get(index + 1) else { continue };
+        let (before, after) = (curve.at(*to), curve.at(*next));
+        if before * after < 0.0 {
+            let crossing = if before > 0.0 { roots::Crossing::Falling } else { roots::Crossing::Rising };
+            out.push((0.5 * to + 0.5 * next, state::stability(crossing)));
+        }
+    }
+    Ok(out)
 }
 
 /// The gears a drive can be in: the names all its gearboxes have; empty without a gearbox, or when it cannot be built.

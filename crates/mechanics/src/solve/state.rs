@@ -28,19 +28,27 @@ pub(crate) struct State {
     pub behind: Vec<bool>,
 }
 
+/// The stability of an operating point where the net effort meets zero so.
+pub(crate) fn stability(crossing: Crossing) -> Stability {
+    match crossing {
+        Crossing::Falling => Stability::Stable,
+        Crossing::Rising => Stability::Unstable,
+        Crossing::Touching => Stability::Marginal,
+    }
+}
+
 /// Shares of an effort below this are rounding.
 const TRACE: f64 = 1e-11;
 
 impl State {
     /// At a meeting of available and required effort.
     pub fn at_meet(drive: &Assembly, meet: &Meet) -> Self {
-        let stability = match meet.crossing {
-            Crossing::Falling => Stability::Stable,
-            Crossing::Rising => Stability::Unstable,
-            Crossing::Touching => Stability::Marginal,
-        };
         let flow = at(drive, meet);
-        Self { stability: Some(stability), vertical: meet.vertical, ..Self::with(drive, meet.x, flow) }
+        Self {
+            stability: Some(stability(meet.crossing)),
+            vertical: meet.vertical,
+            ..Self::with(drive, meet.x, flow)
+        }
     }
 
     /// With given efforts.
