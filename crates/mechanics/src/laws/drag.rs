@@ -63,6 +63,55 @@ pub const POLYNOMIAL: Formula = Formula {
     revision: 1,
 };
 
+/// The same for a load that runs straight.
+pub const CONSTANT_FORCE: Formula = Formula {
+    name: "force",
+    text: "F",
+    symbols: &[("F", "force", "force it takes at every speed")],
+    validity: "moving; at rest the breakaway ratio times as much sets it moving",
+    source: "Coulomb's law of friction",
+    revision: 1,
+};
+
+/// The same for a load that runs straight.
+pub const VISCOUS_FORCE: Formula = Formula {
+    name: "force",
+    text: "b_v * v",
+    symbols: &[("b_v", "viscous_force_coefficient", "force per speed"), ("v", "speed", "speed")],
+    validity: "laminar friction",
+    source: "definition",
+    revision: 1,
+};
+
+/// The same for a load that runs straight.
+pub const QUADRATIC_FORCE: Formula = Formula {
+    name: "force",
+    text: "c_v * v^2",
+    symbols: &[
+        ("c_v", "quadratic_force_coefficient", "force per square of the speed"),
+        ("v", "speed", "speed"),
+    ],
+    validity: "turbulent drag of a body in air or water, waves left aside",
+    source: "usual handbooks of fluid mechanics",
+    revision: 1,
+};
+
+/// The same for a load that runs straight.
+pub const POLYNOMIAL_FORCE: Formula = Formula {
+    name: "force",
+    text: "F_0 + F_1 * v + F_2 * v^2 + F_3 * v^3",
+    symbols: &[
+        ("F_0", "force", "constant part"),
+        ("F_1", "viscous_force_coefficient", "force per speed"),
+        ("v", "speed", "speed"),
+        ("F_2", "quadratic_force_coefficient", "force per square of the speed"),
+        ("F_3", "cubic_force_coefficient", "force per cube of the speed"),
+    ],
+    validity: "a fit holds in the range of speeds it was made for",
+    source: "closed form",
+    revision: 1,
+};
+
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
     Checked {
@@ -84,6 +133,26 @@ pub const CHECKED: &[Checked] = &[
         formula: &POLYNOMIAL,
         domain: &[(0.0, 100.0), (0.0, 10.0), (0.0, 500.0), (0.0, 0.1)],
         kernel: |x| Powers { coefficients: [x[0], x[1], x[3], 0.0] }.at(x[2]),
+    },
+    Checked {
+        formula: &CONSTANT_FORCE,
+        domain: &[(0.0, 1e4)],
+        kernel: |x| Powers { coefficients: [x[0], 0.0, 0.0, 0.0] }.at(3.0),
+    },
+    Checked {
+        formula: &VISCOUS_FORCE,
+        domain: &[(1e-3, 1e3), (0.0, 50.0)],
+        kernel: |x| Powers { coefficients: [0.0, x[0], 0.0, 0.0] }.at(x[1]),
+    },
+    Checked {
+        formula: &QUADRATIC_FORCE,
+        domain: &[(1e-3, 1e3), (0.0, 50.0)],
+        kernel: |x| Powers { coefficients: [0.0, 0.0, x[0], 0.0] }.at(x[1]),
+    },
+    Checked {
+        formula: &POLYNOMIAL_FORCE,
+        domain: &[(0.0, 1e3), (0.0, 10.0), (0.0, 50.0), (0.0, 5.0), (0.0, 0.5)],
+        kernel: |x| Powers { coefficients: [x[0], x[1], x[3], x[4]] }.at(x[2]),
     },
 ];
 

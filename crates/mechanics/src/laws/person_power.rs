@@ -28,7 +28,7 @@ pub const TORQUE: Formula = Formula {
 pub const CHECKED: &[Checked] = &[Checked {
     formula: &TORQUE,
     domain: &[(10.0, 500.0), (5.0, 10.0)],
-    kernel: |x| PersonPower { power: x[0], lowest: 1.0, highest: 20.0 }.eval(x[1]),
+    kernel: |x| PersonPower { power: x[0], lowest: 1e-3, highest: 1e9 }.eval(x[1]),
 }];
 
 /// A person; `0 < lowest <= highest`.

@@ -9,6 +9,7 @@
 
 use super::Checked;
 use crate::curve::Law;
+use crate::model::Motion;
 use crate::registry::Formula;
 use crate::scalar::Real;
 
@@ -28,15 +29,34 @@ pub const BETWEEN: Formula = Formula {
     revision: 1,
 };
 
+/// The same for forces over straight speeds.
+pub const BETWEEN_FORCES: Formula = Formula {
+    name: "force",
+    text: "F_1 + (F_2 - F_1) * (v - v_1) / (v_2 - v_1)",
+    symbols: &[
+        ("F_1", "force", "force at the point below"),
+        ("F_2", "force", "force at the point above"),
+        ("v", "speed", "speed"),
+        ("v_1", "speed", "speed of the point below"),
+        ("v_2", "speed", "speed of the point above"),
+    ],
+    validity: "inside the measured range; results outside are marked",
+    source: "linear interpolation, closed form",
+    revision: 1,
+};
+
 /// The formulas with the kernels that must equal them.
-pub const CHECKED: &[Checked] = &[Checked {
-    formula: &BETWEEN,
-    domain: &[(0.0, 100.0), (0.0, 100.0), (20.0, 80.0), (1.0, 19.0), (81.0, 200.0)],
-    kernel: |x| {
-        let points = [(x[3], x[0]), (x[4], x[1])];
-        Table::new(points.to_vec()).map_or(f64::NAN, |table| table.eval(x[2]))
-    },
-}];
+pub const CHECKED: &[Checked] = &[
+    Checked { formula: &BETWEEN, domain: DOMAIN, kernel: between },
+    Checked { formula: &BETWEEN_FORCES, domain: DOMAIN, kernel: between },
+];
+
+const DOMAIN: &[(f64, f64)] = &[(0.0, 100.0), (0.0, 100.0), (20.0, 80.0), (1.0, 19.0), (81.0, 200.0)];
+
+fn between(x: &[f64]) -> f64 {
+    let points = vec![(x[3], x[0]), (x[4], x[1])];
+    Table::new(points).map_or(f64::NAN, |table| table.eval(x[2]))
+}
 
 /// Points in rising order of the variable, at least two.
 #[derive(Clone, Debug, PartialEq)]
@@ -83,12 +103,16 @@ impl Table {
         (self.points[0].0, self.points[self.points.len() - 1].0)
     }
 
-    /// The symbols of the formula at a place.
+    /// The symbols of the formula at a place: of torques, or of forces when it moves straight.
     #[must_use]
-    pub fn symbols(&self, x: f64) -> Vec<(&'static str, f64)> {
+    pub fn symbols(&self, x: f64, motion: Motion) -> Vec<(&'static str, f64)> {
         let piece = self.breaks.partition_point(|b| *b <= x);
         let (from, to) = (self.points[piece], self.points[piece + 1]);
-        vec![("w", x), ("w_1", from.0), ("T_1", from.1), ("w_2", to.0), ("T_2", to.1)]
+        let names = match motion {
+            Motion::Rotary => ["w", "w_1", "T_1", "w_2", "T_2"],
+            Motion::Linear => ["v", "v_1", "F_1", "v_2", "F_2"],
+        };
+        names.into_iter().zip([x, from.0, from.1, to.0, to.1]).collect()
     }
 
     /// The points, in rising order.

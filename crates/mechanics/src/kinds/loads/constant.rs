@@ -19,7 +19,7 @@ pub static ROW: KindRow = KindRow {
               fixed pressure, cutting at a fixed feed. What hangs and can drive back is a hoist, not this.",
     fields: FIELDS,
     results: &[],
-    formulas: &[drag::CONSTANT],
+    formulas: &[drag::CONSTANT, drag::CONSTANT_FORCE],
     cautions: &[],
     example: "load press_roll: constant { torque = 35 N·m; breakaway_ratio = 1.3; inertia = 0.2 kg·m² }",
     build,
@@ -49,7 +49,8 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         inertia: mass_or_inertia(motion, values, &mut faults),
         usual_speed: None,
         limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: vec![("T", effort)],
+        symbols: vec![(if motion == Motion::Rotary { "T" } else { "F" }, effort)],
+        names_speed: false,
     };
     done(Model::Load(Box::new(load)), faults)
 }

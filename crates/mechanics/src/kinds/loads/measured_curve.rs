@@ -21,7 +21,7 @@ pub static ROW: KindRow = KindRow {
               outside the measured speeds are marked.",
     fields: FIELDS,
     results: &[],
-    formulas: &[law::BETWEEN],
+    formulas: &[law::BETWEEN, law::BETWEEN_FORCES],
     cautions: &[],
     example: "load mixer: measured_curve { curve = points (speed [rpm], torque [N·m]) {\n    0 9\n    100 6\n    300 14\n} }",
     build,
@@ -158,7 +158,7 @@ impl Load for Measured {
     }
 
     fn symbols(&self, state: &LoadState) -> Vec<(&'static str, f64)> {
-        self.table.symbols(state.speed.abs())
+        self.table.symbols(state.speed.abs(), self.motion)
     }
 }
 

@@ -21,7 +21,7 @@ pub static ROW: KindRow = KindRow {
               its coast-down numbers. All parts resist motion in either direction.",
     fields: FIELDS,
     results: &[],
-    formulas: &[drag::POLYNOMIAL],
+    formulas: &[drag::POLYNOMIAL, drag::POLYNOMIAL_FORCE],
     cautions: &[],
     example: "load mill: polynomial { constant_torque = 4 N·m; viscous_torque = 0.02 N·m/(rad/s); inertia = 1.2 kg·m² }",
     build,
@@ -121,15 +121,19 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     for (coefficient, name) in powers.coefficients.iter_mut().zip(names) {
         *coefficient = values.si(name).unwrap_or(0.0);
     }
-    let [c_0, c_1, c_2, _] = powers.coefficients;
+    let symbols: &[&'static str] = match motion {
+        Motion::Rotary => &["c_0", "c_1", "c_2"],
+        Motion::Linear => &["F_0", "F_1", "F_2", "F_3"],
+    };
     let load = Resisting {
         motion,
         powers,
-        breakaway: c_0 * values.si("breakaway_ratio").unwrap_or(1.0),
+        breakaway: powers.coefficients[0] * values.si("breakaway_ratio").unwrap_or(1.0),
         inertia: mass_or_inertia(motion, values, &mut faults),
         usual_speed: None,
         limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: vec![("c_0", c_0), ("c_1", c_1), ("c_2", c_2)],
+        symbols: symbols.iter().copied().zip(powers.coefficients).collect(),
+        names_speed: true,
     };
     done(Model::Load(Box::new(load)), faults)
 }

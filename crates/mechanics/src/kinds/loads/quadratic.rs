@@ -19,7 +19,7 @@ pub static ROW: KindRow = KindRow {
               propellers at a fixed advance. A fifth more speed asks 44 % more torque and 73 % more power.",
     fields: FIELDS,
     results: &[],
-    formulas: &[drag::QUADRATIC],
+    formulas: &[drag::QUADRATIC, drag::QUADRATIC_FORCE],
     cautions: &[],
     example: "load fan: quadratic { rated_torque = 10 N·m; rated_speed = 1450 rpm; breakaway_torque = 0.8 N·m }",
     build,
@@ -66,7 +66,11 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         inertia: mass_or_inertia(law.motion, values, &mut faults),
         usual_speed: law.rated_speed,
         limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: vec![("T_r", rated_effort), ("w_r", rated_speed)],
+        symbols: match law.motion {
+            Motion::Rotary => vec![("T_r", rated_effort), ("w_r", rated_speed)],
+            Motion::Linear => vec![("c_v", law.powers.coefficients[2])],
+        },
+        names_speed: true,
     };
     done(Model::Load(Box::new(load)), faults)
 }

@@ -22,8 +22,10 @@ pub(super) struct Resisting {
     pub usual_speed: Option<f64>,
     /// Limits.
     pub limits: Vec<Limit>,
-    /// Symbols of its formulas, but for the speed.
+    /// Symbols of its formula, but for the speed.
     pub symbols: Vec<(&'static str, f64)>,
+    /// Whether its formula names the speed.
+    pub names_speed: bool,
 }
 
 impl Load for Resisting {
@@ -53,7 +55,9 @@ impl Load for Resisting {
 
     fn symbols(&self, state: &LoadState) -> Vec<(&'static str, f64)> {
         let mut out = self.symbols.clone();
-        out.push((if self.motion == Motion::Rotary { "w" } else { "v" }, state.speed));
+        if self.names_speed {
+            out.push((if self.motion == Motion::Rotary { "w" } else { "v" }, state.speed));
+        }
         out
     }
 }

@@ -19,7 +19,7 @@ pub static ROW: KindRow = KindRow {
               a resistor. By one rated point or by its coefficient.",
     fields: FIELDS,
     results: &[],
-    formulas: &[drag::VISCOUS],
+    formulas: &[drag::VISCOUS, drag::VISCOUS_FORCE],
     cautions: &[],
     example: "load stirrer: viscous { rated_torque = 12 N·m; rated_speed = 180 rpm }",
     build,
@@ -63,7 +63,8 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         inertia: mass_or_inertia(law.motion, values, &mut faults),
         usual_speed: law.rated_speed,
         limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: vec![("b", law.powers.coefficients[1])],
+        symbols: vec![(if law.motion == Motion::Rotary { "b" } else { "b_v" }, law.powers.coefficients[1])],
+        names_speed: true,
     };
     done(Model::Load(Box::new(load)), faults)
 }

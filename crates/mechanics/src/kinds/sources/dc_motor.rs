@@ -322,7 +322,6 @@ impl Source for DcMotor {
             ("T_0", self.dc.loss_torque),
             ("w", state.speed),
             ("T", state.effort),
-            ("I", self.dc.current(state.effort)),
         ];
         if let Ok(envelope) = self.envelope(state.feed) {
             let cap = envelope.supply_cap();

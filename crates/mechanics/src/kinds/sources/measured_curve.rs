@@ -1,7 +1,6 @@
 //! A source known by measured points.
 
 use super::straight_line::ratings;
-use crate::curve::Law;
 use crate::fault::Fault;
 use crate::kinds::fields::{
     BRAKING, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, RATED_TORQUE, SUPPLY_IF_ANY, plain,
@@ -115,9 +114,7 @@ impl Source for Measured {
     }
 
     fn symbols(&self, state: &SourceState<'_>) -> Vec<(&'static str, f64)> {
-        let mut out = self.table.symbols(state.speed);
-        out.push(("T", self.table.eval(state.speed)));
-        out
+        self.table.symbols(state.speed, Motion::Rotary)
     }
 }
 

@@ -1,5 +1,8 @@
 //! What every row promises, whatever the kind.
 
+mod samples;
+mod symbols;
+
 use super::ROWS;
 use crate::laws::checked;
 use crate::registry::{Bounds, Field, KindRow, Need, ResultShape, Shape, common_fields};

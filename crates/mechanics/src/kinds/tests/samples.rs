@@ -1,0 +1,112 @@
+//! One part of every kind, by its fields, for tests that hold for all of them.
+
+use crate::registry::{KindRow, Role};
+use crate::values::{FieldValue, Table, Values};
+
+fn si(fields: &[(&'static str, f64)]) -> Values {
+    fields.iter().fold(Values::default(), |values, (name, si)| values.with(name, FieldValue::Si(*si)))
+}
+
+fn table(columns: &[(&'static str, &[f64])]) -> FieldValue {
+    let columns = columns.iter().map(|(name, values)| (*name, values.to_vec())).collect();
+    FieldValue::Points(Table { columns, at: Vec::new() })
+}
+
+fn losses(values: Values) -> Values {
+    values.with("efficiency", FieldValue::Si(0.9)).with("efficiency_backward", FieldValue::Si(0.8))
+}
+
+fn source(name: &str) -> Option<Values> {
+    Some(match name {
+        "straight_line" => si(&[("stall_torque", 10.0), ("no_load_speed", 200.0)]),
+        "straight_line_force" => si(&[("stall_force", 300.0), ("no_load_speed", 2.0)]),
+        "dc_motor" => si(&[("torque_constant", 0.11), ("resistance", 0.085), ("no_load_current", 2.4)]),
+        "induction_motor" => si(&[
+            ("rated_power", 4000.0),
+            ("rated_speed", 150.8),
+            ("rated_voltage", 400.0),
+            ("rated_frequency", 50.0),
+            ("locked_rotor_torque", 61.0),
+            ("pull_up_torque", 50.0),
+            ("breakdown_torque", 77.0),
+        ]),
+        "servo" => {
+            si(&[("peak_torque", 12.0), ("rated_torque", 4.0), ("rated_speed", 80.0), ("max_speed", 450.0)])
+        }
+        "person" => si(&[("sustained_power", 90.0)]).with("cadence", FieldValue::Interval(5.0, 300.0)),
+        "measured_curve" => {
+            Values::default().with("curve", table(&[("speed", &[10.0, 300.0]), ("torque", &[9.0, 5.0])]))
+        }
+        _ => return None,
+    })
+}
+
+fn transmission(name: &str) -> Option<Values> {
+    let teeth = FieldValue::Ratio { driver: 20.0, driven: 50.0 };
+    let pulleys = FieldValue::Ratio { driver: 0.1, driven: 0.25 };
+    Some(match name {
+        "gear" => losses(si(&[("reduction", 2.5)])),
+        "gearbox" => losses(Values::default()).with("gear", FieldValue::Gears(vec![("1".to_owned(), 2.5)])),
+        "belt" => losses(si(&[("slip", 0.02)])).with("pitch_diameters", pulleys),
+        "chain" => losses(Values::default()).with("teeth", teeth),
+        "drum" => losses(si(&[("pitch_diameter", 0.3), ("rope_diameter", 0.01), ("layers", 2.0)])),
+        "reeving" => losses(si(&[("falls", 4.0)])),
+        "wheel" => si(&[("rolling_circumference", 2.0)]),
+        "brake" => si(&[("torque", 60.0)]),
+        "freewheel" | "coupling" => Values::default(),
+        _ => return None,
+    })
+}
+
+fn load(name: &str) -> Option<Values> {
+    Some(match name {
+        "constant" => si(&[("torque", 30.0)]),
+        "viscous" | "quadratic" => si(&[("rated_torque", 30.0), ("rated_speed", 100.0)]),
+        "polynomial" => si(&[("constant_torque", 3.0), ("viscous_torque", 0.1), ("quadratic_torque", 0.002)]),
+        "measured_curve" => {
+            Values::default().with("curve", table(&[("speed", &[0.0, 300.0]), ("torque", &[5.0, 9.0])]))
+        }
+        "hoist" => si(&[("mass", 1310.0), ("counterweight", 200.0), ("guide_friction", 40.0)]),
+        "incline" => si(&[("mass", 900.0), ("slope", 0.3), ("friction_coefficient", 0.05)]),
+        "vehicle" => si(&[
+            ("mass", 240.0),
+            ("rolling_resistance", 0.008),
+            ("drag_area", 0.9),
+            ("air_density", 1.2),
+            ("grade", 0.06),
+            ("headwind", -3.0),
+        ]),
+        "flywheel" => si(&[("inertia", 3.5)]),
+        _ => return None,
+    })
+}
+
+/// Loads that run straight, where their kind does either.
+pub(super) fn straight_loads() -> Vec<(&'static str, Values)> {
+    vec![
+        ("constant", si(&[("force", 30.0)])),
+        ("viscous", si(&[("force_coefficient", 3.0)])),
+        ("quadratic", si(&[("force_coefficient", 0.3)])),
+        ("polynomial", si(&[("constant_force", 12.0), ("quadratic_force", 0.25), ("cubic_force", 0.01)])),
+        (
+            "measured_curve",
+            Values::default().with("force_curve", table(&[("speed", &[0.0, 9.0]), ("force", &[50.0, 90.0])])),
+        ),
+    ]
+}
+
+/// Fields of a part of this kind; a kind without a sample is a failure of the test that asks.
+pub(super) fn sample(row: &KindRow) -> Values {
+    let found = match row.role {
+        Role::Supply => Some(si(&[
+            ("voltage", 400.0),
+            ("open_circuit_voltage", 37.0),
+            ("frequency", 50.0),
+            ("resistance", 0.1),
+        ])),
+        Role::Source => source(row.name),
+        Role::Transmission => transmission(row.name),
+        Role::Load => load(row.name),
+    };
+    found.unwrap_or_else(|| panic!("{:?} {} has no sample", row.role, row.name))
+}
