@@ -116,8 +116,26 @@ impl Cutter<'_> {
         blocked && !self.item.has_block
     }
 
+    /// Whether the header of an item ended before the token at hand and an entry begins with it, on the same line:
+    /// `source m: dc_motor supply = pack; … }`.
+    pub(super) fn entry_follows_header(&self) -> bool {
+        use TokenKind as K;
+        if !self.is_header() || self.at < self.item.first + 2 {
+            return false;
+        }
+        let kind = |at: usize| self.raw.get(at).map(|token| token.kind);
+        let ended = match (kind(self.item.first), kind(self.at - 1)) {
+            (_, Some(K::With)) => true,
+            (Some(K::Case), Some(K::Name)) => kind(self.at + 1) == Some(K::Dot),
+            (Some(K::Drive), Some(K::Name | K::RightParen)) => kind(self.item.first + 2) == Some(K::Equal),
+            (_, Some(K::Name)) => kind(self.at - 2) == Some(K::Colon),
+            _ => false,
+        };
+        ended && self.looks_like_entry(self.at)
+    }
+
     /// Entries follow a header without `{`.
-    fn missing_brace(&mut self) {
+    pub(super) fn missing_brace(&mut self) {
         let end = self.raw[self.at.saturating_sub(1)].span.end;
         let place = Span::new(end, end);
         let problem = Problem::new(Code::UnclosedBracket, place, "`{` is missing before the entries").fix(

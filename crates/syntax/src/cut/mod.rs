@@ -216,6 +216,9 @@ impl<'a> Cutter<'a> {
                 }
             }
             _ => {
+                if token.kind == K::Name && self.stack.is_empty() && self.entry_follows_header() {
+                    self.missing_brace();
+                }
                 self.push(token);
                 if counts_as_operator(token.kind) {
                     self.item.operators += 1;

@@ -189,6 +189,10 @@ fn part(view: &View<'_, '_>) -> Option<Problem> {
         let problem = view.syntax(view.here(), "the kind is missing");
         return Some(problem.help(example(role)));
     }
+    if view.is(-1, K::Equal) {
+        let problem = view.syntax(view.here(), "what the variant is made of is missing behind `=`");
+        return Some(problem.help(format!("`{role} name = base with {{ … }}`")));
+    }
     if view.is(-1, K::Colon) {
         let problem = view.syntax(view.here(), "the kind is missing behind `:`");
         return Some(problem.help(example(role)));
@@ -224,6 +228,10 @@ fn drive(view: &View<'_, '_>) -> Option<Problem> {
         if matches!(view.kind(-1), Some(K::Arrow | K::Plus | K::Equal | K::Star | K::LeftParen)) {
             return Some(view.syntax(view.here(), format!("a part is missing behind `{behind}`")));
         }
+    }
+    if view.is(0, K::Name) && matches!(view.kind(-1), Some(K::Name | K::RightParen)) {
+        let problem = view.syntax(view.here(), format!("`->` or `+` is missing before {}", view.found()));
+        return Some(problem.fix("write `->`", view.gap(0), " -> "));
     }
     if view.is(0, K::Minus) || view.is(0, K::Greater) {
         return Some(view.syntax(view.span(0), "parts are joined by `->`").fix(

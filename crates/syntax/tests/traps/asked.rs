@@ -65,6 +65,10 @@ drive d = motor => gear
     (drive d ?)
     syntax at «=>»: parts are joined by `->`
       fix: write `->` ⇒ drive d = motor -> gear
+drive d = motor gear
+    (drive d ?)
+    syntax at «gear»: `->` or `+` is missing before `gear`
+      fix: write `->` ⇒ drive d = motor -> gear
 drive d
     (drive d ?)
     syntax at «»: `=` and the chain of the drive are missing here
@@ -204,6 +208,10 @@ source m = base
     syntax at «»: a variant names what it is made of and then `with` its changes
       help: `source name = base with { … }`
       fix: write `with` ⇒ source m = base with { }
+source m =
+    (source m :? (block))
+    syntax at «»: what the variant is made of is missing behind `=`
+      help: `source name = base with { … }`
 sorce motor: dc_motor { a = 1 }
     (source motor :dc_motor (block (= a ‹1›)))
     syntax at «sorce»: `sorce` declares nothing

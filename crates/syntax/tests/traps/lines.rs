@@ -132,6 +132,18 @@ source m: t⏎  a = 1⏎  b = 2⏎}⏎let c = 3
       fix: open the block here ⇒ source m: t {⏎  a = 1⏎  b = 2⏎}⏎let c = 3
 source s: t⏎{⏎  x = 1⏎}
     (source s :t (block (= x ‹1›)))
+source s: t x = 1; y = 2 }
+    (source s :t (block (= x ‹1›) (= y ‹2›)))
+    unclosed-bracket at «»: `{` is missing before the entries
+      fix: open the block here ⇒ source s: t { x = 1; y = 2 }
+case c a.b = 1 }
+    (case c (block (= a.b ‹1›)))
+    unclosed-bracket at «»: `{` is missing before the entries
+      fix: open the block here ⇒ case c { a.b = 1 }
+drive d = a -> b gear = 1 }
+    (drive d (-> a b) (block (= gear ‹1›)))
+    unclosed-bracket at «»: `{` is missing before the entries
+      fix: open the block here ⇒ drive d = a -> b { gear = 1 }
 "##,
     );
 }
