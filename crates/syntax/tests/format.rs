@@ -67,6 +67,11 @@ fn a_power_of_a_quantity_does_not_become_a_unit() {
 }
 
 #[test]
+fn a_comment_stays_inside_a_power() {
+    becomes("let a = b^ # two\n2\n", "let a = b^  # two\n    2\n");
+}
+
+#[test]
 fn a_basis_and_a_scope_stand_apart() {
     becomes("let a = 5 m from \"x\"\n", "let a = 5 m  from \"x\"\n");
     becomes(

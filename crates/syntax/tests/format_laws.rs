@@ -14,6 +14,7 @@ use layshaft_syntax::{File, Lexed, TokenKind, lex, parse};
 use proptest::prelude::*;
 
 /// Every spec there is.
+#[allow(clippy::disallowed_methods, reason = "a test reads the specs it is about")]
 fn corpus() -> Vec<String> {
     let root = std::path::Path::new(env!("CARGO_MANIFEST_DIR"));
     let mut texts = Vec::new();

@@ -102,8 +102,7 @@ impl<'t> Maker<'t, '_> {
         let newline = !comments.is_empty()
             || (token.kind != K::LeftBrace && line_ends(self.slice(Span::new(gap, token.span.start))) > 0);
         let (text, taken) = self.text_of(token, rest);
-        let unary = token.kind == K::Minus && !last.is_some_and(ends_value)
-            || self.in_rows() && token.kind == K::Minus;
+        let unary = token.kind == K::Minus && (self.in_rows() || !last.is_some_and(ends_value));
         let (space, soft) =
             if separated { (1, 0) } else { (self.space(last, token, rest), self.soft(last, token)) };
         let mut atom = Atom {
@@ -189,6 +188,7 @@ impl<'t> Maker<'t, '_> {
             && base != Some(K::Unit)
             && let Some(exponent) = rest.first()
             && matches!(exponent.kind, K::Number | K::SignedNumber)
+            && line_ends(self.slice(Span::new(token.span.end, exponent.span.start))) == 0
             && rest.get(1).is_none_or(|next| next.kind != K::Unit)
         {
             let number = spelling(exponent.kind, self.slice(exponent.span));
@@ -256,10 +256,9 @@ impl<'t> Maker<'t, '_> {
 
 /// Whether a value can end in this, so that a minus behind it subtracts.
 const fn ends_value(kind: K) -> bool {
-    match kind {
-        K::Name | K::Number | K::SignedNumber | K::Unit | K::String | K::Superscript => true,
-        K::RightParen | K::RightSquare | K::RightBrace | K::ValueWord => true,
-        K::True | K::False | K::Yes | K::No | K::Points | K::Absent | K::Rated => true,
-        _ => false,
-    }
+    matches!(
+        kind,
+        K::Name | K::Number | K::SignedNumber | K::Unit | K::String | K::Superscript | K::ValueWord
+    ) || matches!(kind, K::True | K::False | K::Yes | K::No | K::Points | K::Absent | K::Rated)
+        || matches!(kind, K::RightParen | K::RightSquare | K::RightBrace)
 }

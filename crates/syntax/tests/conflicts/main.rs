@@ -181,6 +181,7 @@ fn words_are_the_lexers() {
 }
 
 /// The specs and the examples of the reference, each with its name.
+#[allow(clippy::disallowed_methods, reason = "a test reads the specs it is about")]
 fn specs() -> Vec<(String, String)> {
     let root = std::path::Path::new(env!("CARGO_MANIFEST_DIR"));
     let mut specs = Vec::new();
