@@ -192,3 +192,25 @@ fn a_thousand_cases_and_no_more() {
         "case many {{ motor.stall_torque = each {each}\n belt.max_output_torque = each {each}   #! too-large\n}}"
     )));
 }
+
+#[test]
+fn results_over_a_range_of_speeds_are_judged_at_their_worst() {
+    // The line gives 25 N·m at rest and none at 3000 rpm; the load asks 8 N·m at 1200 rpm of the pump, by the square.
+    let text = with(
+        "require \"1\" pumping.motor.torque <= 2 N·m at pumping.speed = 300 rpm .. 900 rpm
+require \"2\" pumping.motor.torque <= 2 N·m at pumping.speed = 300 rpm
+require \"3\" pumping.motor.torque <= 50 N·m at pumping.speed = 300 rpm .. 2000 rpm   #! not-judged
+require \"4\" 2 * pumping.motor.torque <= 50 N·m at pumping.speed = 300 rpm .. 600 rpm   #! wrong-value
+require \"5\" pumping.motor.torque <= 50 N·m at pumping.power = 300 W   #! wrong-value
+",
+    );
+    check(&text);
+    let undrawn: String =
+        text.lines().map(|line| line.split("#!").next().unwrap_or("").to_owned() + "\n").collect();
+    let analysis = analysis(&undrawn);
+    let verdicts: Vec<_> = analysis.criteria.iter().map(|criterion| criterion.verdict).collect();
+    assert_eq!(verdicts[..3], [Verdict::Fails, Verdict::Holds, Verdict::NotJudged]);
+    // At 900 rpm: 8 N·m × (900/1200)² / 2 / 0.95.
+    let measure = analysis.criteria[0].outcomes[0].measure.as_ref().expect("a measure");
+    assert!((measure.margin - (2.0 - 4.5 / 1.9) / 2.0).abs() < 1e-9, "{measure:?}");
+}

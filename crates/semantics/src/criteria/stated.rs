@@ -2,7 +2,8 @@
 
 use layshaft_diagnostics::{Code, Diagnostic};
 use layshaft_mechanics::drive::StatedSpeed;
-use layshaft_syntax::{At, Expr, ValueKind};
+use layshaft_mechanics::solve::{Question, worst_over};
+use layshaft_syntax::{At, BinaryOp, Expr, ExprKind, Path, ValueKind};
 
 use super::{Judged, judged};
 use crate::eval::{Ask, Eval, Reading};
@@ -33,7 +34,9 @@ pub(super) fn judged_at(eval: &Eval<'_>, at: ItemRef, condition: &Expr, asked: &
     if low == high {
         return judge(low);
     }
-    let speeds = worst_speeds(eval, drive, &station, (low, high), condition, at);
+    let Some(speeds) = worst_speeds(eval, drive, &station, (low, high), condition, at) else {
+        return Judged::default();
+    };
     let all: Vec<Judged> = speeds.into_iter().map(judge).collect();
     if all.iter().any(|one| one.holds.is_none()) {
         return Judged::default();
@@ -44,16 +47,95 @@ pub(super) fn judged_at(eval: &Eval<'_>, at: ItemRef, condition: &Expr, asked: &
         .unwrap_or_default()
 }
 
-/// The speeds of a range at which a condition can be worst: its ends, and where a result it names has an extreme.
+/// The speeds of a range at which a condition can be worst: where a result it compares is least or greatest, and where
+/// one has no answer. None where the condition is no comparison of single results with limits: its worst place could
+/// lie anywhere between.
 fn worst_speeds(
-    _eval: &Eval<'_>,
-    _drive: ItemRef,
-    _station: &SpeedStation,
+    eval: &Eval<'_>,
+    drive: ItemRef,
+    station: &SpeedStation,
     (low, high): (f64, f64),
-    _condition: &Expr,
-    _at: ItemRef,
-) -> Vec<f64> {
-    vec![low, high]
+    condition: &Expr,
+    at: ItemRef,
+) -> Option<Vec<f64>> {
+    let mut paths = Vec::new();
+    if !single_results(condition, &mut paths) {
+        let place = eval.place(at, condition.span);
+        let message = "over a range of speeds, each comparison is of one result with a limit";
+        eval.report(Diagnostic::new(Code::WrongValue, place, message).help(
+            "write `ride.motor.current <= 30 A at ride.speed = 5 km/h .. 25 km/h`, one result to a criterion",
+        ));
+        return None;
+    }
+    let solved = eval.solved(drive);
+    let spec = solved.spec.as_ref()?;
+    let mut speeds = Vec::new();
+    for path in paths {
+        let Some((Declared::Drive, own, used)) = eval.shared.world.head(at.file, &path.names) else {
+            continue;
+        };
+        if own != drive {
+            continue;
+        }
+        let asked = eval.station(path, drive, used, at)?;
+        let part = match asked.part {
+            Some(part) => Some(solved.items.iter().position(|item| *item == part)?),
+            None => None,
+        };
+        let question = Question { part, port: asked.port, name: &asked.result };
+        match worst_over(spec, (station.part, station.port), (low, high), question) {
+            Ok(extremes) => {
+                speeds.extend([extremes.least.0, extremes.greatest.0]);
+                speeds.extend(extremes.unanswered.map(|(speed, _)| speed));
+            }
+            Err(faults) => {
+                solved.report(eval, drive, &faults);
+                return None;
+            }
+        }
+    }
+    speeds.sort_by(f64::total_cmp);
+    speeds.dedup();
+    if speeds.is_empty() {
+        speeds.push(low);
+    }
+    Some(speeds)
+}
+
+/// The results a condition compares, if each stands alone on its side.
+fn single_results<'e>(condition: &'e Expr, found: &mut Vec<&'e Path>) -> bool {
+    match &condition.kind {
+        ExprKind::Paren(inner) => single_results(inner, found),
+        ExprKind::Binary { op: BinaryOp::And, left, right, .. } => {
+            single_results(left, found) && single_results(right, found)
+        }
+        ExprKind::Compare { first, rest } => {
+            let sides = || std::iter::once(&**first).chain(rest.iter().map(|(_, _, side)| side));
+            let mut results = 0;
+            for side in sides() {
+                if let ExprKind::Path(path) = &side.kind {
+                    found.push(path);
+                    results += usize::from(path.names.len() > 1);
+                } else if has_path(side) {
+                    return false;
+                }
+            }
+            results <= 1
+        }
+        _ => false,
+    }
+}
+
+fn has_path(expr: &Expr) -> bool {
+    match &expr.kind {
+        ExprKind::Path(path) => path.names.len() > 1,
+        ExprKind::Paren(inner) | ExprKind::Unary { arg: inner, .. } => has_path(inner),
+        ExprKind::Binary { left, right, .. } => has_path(left) || has_path(right),
+        ExprKind::Power { base, exponent } => has_path(base) || has_path(exponent),
+        ExprKind::Call { args, .. } => args.iter().any(has_path),
+        ExprKind::If { .. } | ExprKind::Compare { .. } => true,
+        _ => false,
+    }
 }
 
 /// A speed of a drive by its place.

@@ -14,6 +14,8 @@ impl Reader<'_, '_> {
         let from = &self.eval.shared.world.files[self.at.file as usize].path;
         let path = match crate::load::beside(from, &csv.path.value) {
             Ok(path) => path,
+            // An empty path has been said by the reader.
+            Err(_) if csv.path.value.is_empty() => return None,
             Err(why) => {
                 self.eval.report(Diagnostic::new(Code::MissingFile, place, why));
                 return None;
@@ -22,8 +24,15 @@ impl Reader<'_, '_> {
         let rows = self.rows(&path, place)?;
         let rows = match &*rows {
             Ok(rows) => rows,
-            Err((line, why)) => {
+            Err(Unread::TooLong) => {
+                let message = format!("`{path}` has more than {MOST_ROWS} rows");
+                let help = "keep the rows that shape the curve: straight lines stand between them";
+                self.eval.report(Diagnostic::new(Code::TooLarge, place, message).help(help));
+                return None;
+            }
+            Err(Unread::Row(line)) => {
                 let row = line.map(|line| format!(", line {line}")).unwrap_or_default();
+                let why = "the row cannot be read as comma-separated values";
                 self.eval.report(self.refuse(place, format!("`{path}`{row}: {why}")));
                 return None;
             }
@@ -36,6 +45,15 @@ impl Reader<'_, '_> {
                 continue;
             }
             let named = format!("`{path}`, line {}", line + 1);
+            let wide = rows.first().map_or(0, Vec::len);
+            if row.iter().skip(wide).any(|cell| !cell.trim().is_empty()) {
+                let message = format!("{named}: {} cells under {wide} headings", row.len());
+                self.eval
+                    .report(self.refuse(place, message).help(
+                        "the decimal sign is the point; a decimal comma makes two cells of one number",
+                    ));
+                return None;
+            }
             for (index, head) in heads.iter().enumerate() {
                 let cell = row.get(from[index]).map_or("", |cell| cell.trim());
                 let value = self.cell(cell, &named, head.0.name, place)?;
@@ -140,8 +158,17 @@ fn clipped(cell: &str) -> String {
     if clean.len() < cell.len() { format!("{clean}…") } else { clean }
 }
 
+/// Why the rows of a file could not be had.
+#[derive(Debug)]
+pub(super) enum Unread {
+    /// More than [`MOST_ROWS`].
+    TooLong,
+    /// A row that is none, by its line where that is known.
+    Row(Option<usize>),
+}
+
 /// The separator is the one the first line has most of: comma, semicolon or tab.
-fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, (Option<usize>, String)> {
+fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, Unread> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
     let first = text.lines().next().unwrap_or("");
     let count = |mark: char| first.matches(mark).count();
@@ -155,13 +182,13 @@ fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, (Option<usize>, String)> {
     let mut rows = Vec::new();
     for record in reader.records() {
         if rows.len() > MOST_ROWS {
-            return Err((None, format!("more than {MOST_ROWS} rows")));
+            return Err(Unread::TooLong);
         }
         match record {
             Ok(record) => rows.push(record.iter().map(str::to_owned).collect()),
             Err(error) => {
                 let line = error.position().map(|position| position.line() as usize);
-                return Err((line, "the row cannot be read as comma-separated values".to_owned()));
+                return Err(Unread::Row(line));
             }
         }
     }

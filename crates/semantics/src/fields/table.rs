@@ -30,7 +30,7 @@ const CONDITIONS: &[&str] = &[
 ];
 
 /// A CSV file's rows as read, shared by every case that uses it.
-pub(super) type Rows = Rc<Result<Vec<Vec<String>>, (Option<usize>, String)>>;
+pub(super) type Rows = Rc<Result<Vec<Vec<String>>, super::csv_file::Unread>>;
 
 /// CSV files read so far, by path.
 #[derive(Debug, Default)]
