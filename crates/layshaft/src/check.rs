@@ -84,7 +84,9 @@ fn read(input: &Input) -> Result<Spec, (String, ReadError)> {
             let folder =
                 path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
             let root = root(folder).map_err(|why| (name(), why))?;
-            let own = own_path(&root, folder, path);
+            let file = path.file_name().unwrap_or_default();
+            // By its name alone where it has no path in Unicode.
+            let own = root.below(folder, file).unwrap_or_else(|| file.to_string_lossy().into_owned());
             let mut spec = analyzed(&own, text, &root);
             if let Some(first) = spec.names.first_mut() {
                 *first = name();
@@ -98,16 +100,9 @@ fn root(folder: &Path) -> Result<Root, ReadError> {
     Root::of(folder).map_err(|error| ReadError::Other(error.to_string()))
 }
 
-/// The path of a spec below its root; by its name alone where it has no path in Unicode.
-fn own_path(root: &Root, folder: &Path, path: &Path) -> String {
-    let file = path.file_name().unwrap_or_default();
-    let inside = std::fs::canonicalize(folder).ok().and_then(|folder| root.relative(&folder.join(file)));
-    inside.unwrap_or_else(|| file.to_string_lossy().into_owned())
-}
-
 fn analyzed(path: &str, text: String, root: &Root) -> Spec {
     let analysis = analyze(path, Arc::from(text), root);
-    let here = std::env::current_dir().and_then(std::fs::canonicalize).unwrap_or_default();
+    let here = files::here();
     let name = |file: &layshaft_semantics::analysis::SourceFile| match file.path.as_str() {
         STDIN => String::from(STDIN),
         path => from_here(root, path, &here),

@@ -5,6 +5,7 @@
 
 #![allow(clippy::disallowed_methods, reason = "this is the module of the command that touches files")]
 
+use std::ffi::OsStr;
 use std::fs;
 use std::io::{self, Read, Write};
 use std::path::{Component, Path, PathBuf};
@@ -46,9 +47,14 @@ impl Root {
         &self.folder
     }
 
-    /// A path below the root with `/` between names; `None` if it is elsewhere or not in Unicode.
+    /// The path below the root of a file in `folder`.
     #[must_use]
-    pub fn relative(&self, path: &Path) -> Option<String> {
+    pub fn below(&self, folder: &Path, file: &OsStr) -> Option<String> {
+        self.relative(&fs::canonicalize(folder).ok()?.join(file))
+    }
+
+    /// A path below the root with `/` between names; `None` if it is elsewhere or not in Unicode.
+    fn relative(&self, path: &Path) -> Option<String> {
         let inside = path.strip_prefix(&self.folder).ok()?;
         let names: Option<Vec<&str>> = inside.components().map(|part| part.as_os_str().to_str()).collect();
         names.map(|names| names.join("/"))
@@ -68,6 +74,18 @@ impl Files for Root {
         }
         read(&real).map(Arc::from)
     }
+}
+
+/// The current folder, no links in it; empty where it cannot be had.
+#[must_use]
+pub fn here() -> PathBuf {
+    std::env::current_dir().and_then(fs::canonicalize).unwrap_or_default()
+}
+
+/// Whether a path leads to a folder.
+#[must_use]
+pub fn is_folder(path: &Path) -> bool {
+    path.is_dir()
 }
 
 /// The text of a file.

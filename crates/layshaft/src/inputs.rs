@@ -25,7 +25,7 @@ pub fn inputs(paths: &[PathBuf], out: &mut Output) -> (Vec<Input>, Exit) {
     for path in paths {
         if path.as_os_str() == STDIN {
             found.push(Input::Stdin);
-        } else if path.is_dir() {
+        } else if files::is_folder(path) {
             match files::specs_below(path) {
                 Ok(specs) if specs.is_empty() => {
                     out.message(&format!("there is no .shaft file below {}", path.display()));

@@ -68,7 +68,10 @@ fn heading(analysis: &Analysis, sheet: &Sheet, options: &Options) -> String {
 /// The path of the spec as it is shown.
 fn name(analysis: &Analysis, options: &Options) -> String {
     let own = analysis.files.first().map(|file| file.path.as_str());
-    terminal(options.names.first().map(String::as_str).or(own).unwrap_or("?")).into_owned()
+    match options.names.first().map(String::as_str).or(own).unwrap_or("?") {
+        "-" => String::from("standard input"),
+        name => terminal(name).into_owned(),
+    }
 }
 
 /// The last line: the verdict, and how many findings there are.
