@@ -12,6 +12,7 @@ use crate::curve::Law;
 use crate::model::Motion;
 use crate::registry::Formula;
 use crate::scalar::Real;
+use std::sync::Arc;
 
 /// Between two points.
 pub const BETWEEN: Formula = Formula {
@@ -58,11 +59,11 @@ fn between(x: &[f64]) -> f64 {
     Table::new(points).map_or(f64::NAN, |table| table.eval(x[2]))
 }
 
-/// Points in rising order of the variable, at least two.
+/// Points in rising order of the variable, at least two; a copy shares them.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Table {
-    points: Vec<(f64, f64)>,
-    breaks: Vec<f64>,
+    points: Arc<[(f64, f64)]>,
+    breaks: Arc<[f64]>,
 }
 
 /// Why points make no curve.
@@ -94,7 +95,7 @@ impl Table {
             return Err(TableError::TooFew);
         }
         let breaks = points[1..points.len() - 1].iter().map(|(x, _)| *x).collect();
-        Ok(Self { points, breaks })
+        Ok(Self { points: points.into(), breaks })
     }
 
     /// The first and the last place measured.
@@ -131,7 +132,7 @@ impl Law for Table {
     }
 
     fn kinks(&self) -> Vec<f64> {
-        self.breaks.clone()
+        self.breaks.to_vec()
     }
 }
 

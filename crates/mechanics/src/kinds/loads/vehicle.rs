@@ -39,7 +39,8 @@ static FIELDS: &[Field] = &[
         "number",
         Need::Required,
         range(5e-4, 0.3),
-        "rolling resistance over the force that presses on the road: about 0.002 on rail, 0.005 to 0.015 on asphalt",
+        "rolling resistance over the force that presses on the road: common practice is 0.002 on rail, 0.005 to 0.015 \
+         on asphalt",
     ),
     not_negative(
         "rolling_breakaway",

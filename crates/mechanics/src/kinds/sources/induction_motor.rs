@@ -7,7 +7,7 @@ use crate::kinds::fields::{
     FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, SUPPLY, default, positive, quantity, range,
 };
 use crate::kinds::reading::{HoldBack, bad_value, differ, done, inertia, missing, returning};
-use crate::laws::induction_curve::{self, InductionCurve, flux_factor};
+use crate::laws::induction_curve::{self, CataloguePoint, InductionCurve, flux_factor};
 use crate::laws::{kloss, synchronous};
 use crate::model::{Characteristic, Feed, Known, Model, Motion, Ratings, Source, SourceState};
 use crate::registry::{Bounds, Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
@@ -279,7 +279,8 @@ impl Source for InductionMotor {
         ];
         out.extend(supply.frequency.map(|f| ("f", f)));
         out.extend(supply.voltage.map(|u| ("U", u)));
-        if let Some(low) = plate.pull_up {
+        let locked = plate.locked_rotor.map(|torque| CataloguePoint { slip: 1.0, torque });
+        if let Some(low) = plate.pull_up.or(locked) {
             out.extend([("T_u", low.torque), ("K_u", kloss(low.slip))]);
         }
         out

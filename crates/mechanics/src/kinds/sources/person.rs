@@ -18,8 +18,8 @@ pub static ROW: KindRow = KindRow {
     results: &[],
     formulas: &[law::TORQUE],
     cautions: &[
-        "What a person keeps up depends on training, age, heat and time: some 75 W for a working day, more only for \
-         minutes. Local rules bound the forces at work.",
+        "What a person keeps up depends on training, age, heat and time: common practice counts on some 75 W for a \
+         working day and on more only for minutes. Local rules bound the forces at work.",
         "A hand crank that a load can turn back breaks arms: it needs a ratchet or a brake.",
     ],
     example: "source rider: person { sustained_power = 90 W; cadence = 50 rpm .. 90 rpm }",
