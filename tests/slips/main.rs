@@ -68,9 +68,7 @@ fn judge(slip: &Slip) -> Result<(), String> {
         return Err(line);
     }
     match (slip.promise.as_str(), found.fixes.as_slice()) {
-        ("tells", []) if explains(found) => {
-            Ok(())
-        }
+        ("tells", []) if explains(found) => Ok(()),
         ("offers", [_, ..]) => Ok(()),
         ("mends", [fix, ..]) => {
             let mended = support::analyze(&support::apply(&slip.bad, fix));
