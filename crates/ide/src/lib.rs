@@ -5,6 +5,9 @@
 pub mod definition;
 #[cfg(test)]
 mod fixture;
+pub mod folding;
+pub mod references;
 pub mod snapshot;
+pub mod symbols;
 
 pub use snapshot::Snapshot;
