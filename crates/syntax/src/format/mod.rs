@@ -97,6 +97,9 @@ fn write(text: &str, span: Span, tokens: &[Token], comments: &[Comment]) -> Opti
     let comments = within(comments, span, |comment| comment.span);
     let before = atoms(text, tokens, comments)?;
     let written = layout::lay_out(text, comments, &before);
+    if written == slice(text, span) {
+        return Some(written);
+    }
     let lexed = crate::lex(&written);
     let written_comments = lexed.comments.clone();
     let again = cut(&written, lexed);
