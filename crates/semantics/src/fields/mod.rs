@@ -132,7 +132,10 @@ fn put_defaults(part: &PartDef<'_>, built: &mut Built) {
             && let Some(value) = default_value(field, si)
         {
             built.values.set(field.name, value);
-            built.defaults.push(field);
+            // That a source drives when nothing is said is no assumption about the machine.
+            if row.fields.iter().any(|own| own.name == field.name) {
+                built.defaults.push(field);
+            }
         }
     }
 }
