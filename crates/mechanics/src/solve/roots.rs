@@ -167,10 +167,10 @@ impl Task<'_> {
                 break;
             }
             let step = x - here.value / here.slope;
-            let next = if step > lo && step < hi && !halved { step } else { middle };
+            let next = if step >= lo && step <= hi && !halved { step } else { middle };
             // Newton's step is bound to halve the bracket every other time.
             halved = !halved && (next - x).abs() > 0.25 * (hi - lo);
-            if next == x || (next - x).abs() <= 0.5 * f64::EPSILON * x.abs() {
+            if next == x || (next - x).abs() <= 2.0 * f64::EPSILON * x.abs() {
                 return next;
             }
             x = next;

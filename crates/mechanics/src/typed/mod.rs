@@ -27,9 +27,11 @@
 //! # }
 //! ```
 //!
-//! For laws of your own see [`operating_points`]; for many drives at once [`straight_lines_against_quadratics`].
+//! For laws of your own see [`operating_points`]; for many drives at once [`straight_lines_against_quadratics`] and
+//! [`sole_operating_point`].
 
 mod points;
+mod sole;
 
 use uom::si::angular_velocity::radian_per_second;
 use uom::si::f64::{AngularVelocity, Power, Ratio, Torque};
@@ -38,6 +40,7 @@ use uom::si::ratio::ratio;
 use uom::si::torque::newton_meter;
 
 pub use points::{Point, operating_points};
+pub use sole::{Sole, sole_operating_point};
 
 /// A quantity that the law cannot take.
 #[derive(Clone, Copy, Debug, PartialEq)]

@@ -1,0 +1,142 @@
+//! A million drives: the kernels of the typed door beside the bare loops that somebody would write by hand, in the
+//! same run.
+
+use divan::counter::ItemsCount;
+use divan::{Bencher, black_box};
+use layshaft_mechanics::curve::Law;
+use layshaft_mechanics::scalar::Real;
+use layshaft_mechanics::typed::{
+    Quadratic, Sole, StraightLine, sole_operating_point, straight_lines_against_quadratics,
+};
+use uom::si::angular_velocity::radian_per_second;
+use uom::si::f64::{AngularVelocity, Torque};
+use uom::si::torque::newton_meter;
+
+const DRIVES: usize = 1_000_000;
+
+fn main() {
+    divan::main();
+}
+
+fn rads(value: f64) -> AngularVelocity {
+    AngularVelocity::new::<radian_per_second>(value)
+}
+
+/// Stall torque, no-load speed and load coefficient of every drive.
+fn numbers() -> Vec<(f64, f64, f64)> {
+    let one = |n: usize| (1.0 + n as f64 * 1e-5, 250.0 + (n % 97) as f64, 1e-4 + (n % 31) as f64 * 1e-5);
+    (0..DRIVES).map(one).collect()
+}
+
+#[divan::bench(sample_count = 20)]
+fn baseline_straight_lines(bencher: Bencher) {
+    let numbers = numbers();
+    let (stall, (no_load, load)): (Vec<f64>, (Vec<f64>, Vec<f64>)) =
+        numbers.into_iter().map(|(t, w, c)| (t, (w, c))).unzip();
+    let mut speeds = vec![0.0; DRIVES];
+    bencher.counter(ItemsCount::new(DRIVES)).bench_local(|| {
+        let drives = black_box(&stall).iter().zip(&no_load).zip(&load);
+        for (((stall, no_load), load), speed) in drives.zip(&mut speeds) {
+            let b = stall / no_load;
+            *speed = 2.0 * stall / (b + (b * b + 4.0 * load * stall).sqrt());
+        }
+        black_box(&speeds);
+    });
+}
+
+#[divan::bench(sample_count = 20)]
+fn straight_lines(bencher: Bencher) {
+    let made = |(t, w, c): (f64, f64, f64)| {
+        let source = StraightLine::new(Torque::new::<newton_meter>(t), rads(w)).expect("above zero");
+        let load = Quadratic::through(Torque::new::<newton_meter>(c), rads(1.0)).expect("above zero");
+        (source, load)
+    };
+    let (sources, loads): (Vec<_>, Vec<_>) = numbers().into_iter().map(made).unzip();
+    let mut speeds = vec![rads(0.0); DRIVES];
+    bencher.counter(ItemsCount::new(DRIVES)).bench_local(|| {
+        straight_lines_against_quadratics(black_box(&sources), &loads, &mut speeds);
+        black_box(&speeds);
+    });
+}
+
+/// An induction machine by Kloss's formula.
+struct Machine {
+    breakdown: f64,
+    slip: f64,
+    synchronous: f64,
+}
+
+impl Law for Machine {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        let s = (R::of(self.synchronous) - speed) * (1.0 / (self.synchronous * self.slip));
+        s * (2.0 * self.breakdown) / (s.square() + 1.0)
+    }
+}
+
+struct Fan(f64);
+
+impl Law for Fan {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        speed.square() * self.0
+    }
+}
+
+const CURVED: usize = 100_000;
+
+fn curved() -> Vec<(Machine, Fan)> {
+    let one = |n: usize| {
+        let machine = Machine { breakdown: 60.0 + n as f64 * 1e-4, slip: 0.2, synchronous: 157.0 };
+        (machine, Fan(5e-4 + (n % 31) as f64 * 1e-5))
+    };
+    (0..CURVED).map(one).collect()
+}
+
+/// Newton's method kept inside a bracket.
+fn newton(machine: &Machine, fan: &Fan) -> f64 {
+    let (mut low, mut high) = (machine.synchronous * (1.0 - machine.slip), machine.synchronous);
+    let mut w = 0.5 * (low + high);
+    for _ in 0..60 {
+        let s = (machine.synchronous - w) / (machine.synchronous * machine.slip);
+        let below = 1.0 + s * s;
+        let net = 2.0 * machine.breakdown * s / below - fan.0 * w * w;
+        let slope = -2.0 * machine.breakdown * (1.0 - s * s)
+            / (below * below * machine.slip * machine.synchronous)
+            - 2.0 * fan.0 * w;
+        if net > 0.0 {
+            low = w;
+        } else {
+            high = w;
+        }
+        let step = w - net / slope;
+        if (step - w).abs() <= 1e-14 * w {
+            return step;
+        }
+        w = if step > low && step < high { step } else { 0.5 * (low + high) };
+    }
+    w
+}
+
+#[divan::bench(sample_count = 20)]
+fn baseline_curved(bencher: Bencher) {
+    let drives = curved();
+    let all = || black_box(&drives).iter().map(|(machine, fan)| newton(machine, fan)).sum::<f64>();
+    bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
+}
+
+#[divan::bench(sample_count = 20)]
+fn curved_proved(bencher: Bencher) {
+    let drives = curved();
+    let one = |(machine, fan): &(Machine, Fan)| {
+        let range = (rads(machine.synchronous * (1.0 - machine.slip)), rads(machine.synchronous));
+        match sole_operating_point(machine, fan, range) {
+            Sole::Stable(point) => point.speed.get::<radian_per_second>(),
+            other => panic!("{other:?}"),
+        }
+    };
+    for drive in drives.iter().step_by(1000) {
+        let (ours, bare) = (one(drive), newton(&drive.0, &drive.1));
+        assert!((ours / bare - 1.0).abs() < 1e-12, "{ours} {bare}");
+    }
+    let all = || black_box(&drives).iter().map(one).sum::<f64>();
+    bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
+}
