@@ -40,6 +40,7 @@ impl Enclosure {
 
 impl Neg for Enclosure {
     type Output = Self;
+    #[inline]
     fn neg(self) -> Self {
         Self { value: -self.value, slope: -self.slope }
     }
@@ -47,6 +48,7 @@ impl Neg for Enclosure {
 
 impl Add for Enclosure {
     type Output = Self;
+    #[inline]
     fn add(self, other: Self) -> Self {
         Self { value: self.value + other.value, slope: self.slope + other.slope }
     }
@@ -54,6 +56,7 @@ impl Add for Enclosure {
 
 impl Sub for Enclosure {
     type Output = Self;
+    #[inline]
     fn sub(self, other: Self) -> Self {
         self + -other
     }
@@ -61,6 +64,7 @@ impl Sub for Enclosure {
 
 impl Mul for Enclosure {
     type Output = Self;
+    #[inline]
     fn mul(self, other: Self) -> Self {
         Self { value: self.value * other.value, slope: self.slope * other.value + self.value * other.slope }
     }
@@ -68,6 +72,7 @@ impl Mul for Enclosure {
 
 impl Div for Enclosure {
     type Output = Self;
+    #[inline]
     fn div(self, other: Self) -> Self {
         let value = self.value / other.value;
         Self { value, slope: (self.slope - value * other.slope) / other.value }
@@ -76,6 +81,7 @@ impl Div for Enclosure {
 
 impl Add<f64> for Enclosure {
     type Output = Self;
+    #[inline]
     fn add(self, other: f64) -> Self {
         Self { value: self.value + Interval::point(other), slope: self.slope }
     }
@@ -83,6 +89,7 @@ impl Add<f64> for Enclosure {
 
 impl Sub<f64> for Enclosure {
     type Output = Self;
+    #[inline]
     fn sub(self, other: f64) -> Self {
         self + -other
     }
@@ -90,6 +97,7 @@ impl Sub<f64> for Enclosure {
 
 impl Mul<f64> for Enclosure {
     type Output = Self;
+    #[inline]
     fn mul(self, other: f64) -> Self {
         if other.is_nan() {
             return Self { value: Interval::ENTIRE, slope: Interval::ENTIRE };
@@ -100,6 +108,7 @@ impl Mul<f64> for Enclosure {
 
 impl Div<f64> for Enclosure {
     type Output = Self;
+    #[inline]
     fn div(self, other: f64) -> Self {
         let divisor = Interval::point(other);
         Self { value: self.value / divisor, slope: self.slope / divisor }
@@ -130,13 +139,14 @@ fn sine(x: Interval) -> Interval {
 }
 
 impl Real for Enclosure {
+    #[inline]
     fn of(value: f64) -> Self {
         Self { value: Interval::point(value), slope: Interval::ZERO }
     }
 
+    #[inline]
     fn square(self) -> Self {
-        let twice = self.value + self.value;
-        Self { value: self.value.square(), slope: twice * self.slope }
+        Self { value: self.value.square(), slope: self.value.times(2.0) * self.slope }
     }
 
     fn sqrt(self) -> Self {
@@ -220,6 +230,7 @@ impl Real for Enclosure {
         -(-self).min(-other)
     }
 
+    #[inline]
     fn by_sign(self, above: f64, below: f64) -> Self {
         if self.value.lo >= 0.0 {
             return self * above;

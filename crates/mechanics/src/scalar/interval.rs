@@ -11,16 +11,22 @@ pub struct Interval {
     pub hi: f64,
 }
 
-/// A lower bound just below a rounded result.
+/// More than half a unit in the last place, as a share: taken off a rounded result it gives a lower neighbour at
+/// least, whatever the rounding.
+const BEYOND: f64 = 1.2e-16;
+/// The same for results near zero.
+const TINY: f64 = f64::from_bits(1);
+
+/// A lower bound just below a rounded result; open where the result is no number.
 #[inline]
 fn down(value: f64) -> f64 {
-    value.next_down()
+    f64::max(value - (value.abs() * BEYOND + TINY), f64::NEG_INFINITY)
 }
 
-/// An upper bound just above a rounded result.
+/// An upper bound just above a rounded result; open where the result is no number.
 #[inline]
 fn up(value: f64) -> f64 {
-    value.next_up()
+    f64::min(value + (value.abs() * BEYOND + TINY), f64::INFINITY)
 }
 
 impl Interval {
@@ -97,19 +103,23 @@ impl Interval {
 
     /// Times itself.
     #[must_use]
+    #[inline]
     pub fn square(self) -> Self {
-        let product = self * self;
-        if self.lo <= 0.0 && self.hi >= 0.0 {
-            Self { lo: 0.0, hi: product.hi }
+        let (least, most) = if self.lo >= 0.0 {
+            (self.lo, self.hi)
+        } else if self.hi <= 0.0 {
+            (self.hi, self.lo)
         } else {
-            Self { lo: f64::max(product.lo, 0.0), hi: product.hi }
-        }
+            (0.0, f64::max(-self.lo, self.hi))
+        };
+        Self { lo: f64::max(down(least * least), 0.0), hi: up(most * most) }
     }
 }
 
 impl Interval {
     /// Times one number.
     #[must_use]
+    #[inline]
     pub(crate) fn times(self, factor: f64) -> Self {
         if factor == 1.0 {
             return self;
@@ -121,6 +131,7 @@ impl Interval {
 
 impl Neg for Interval {
     type Output = Self;
+    #[inline]
     fn neg(self) -> Self {
         Self { lo: -self.hi, hi: -self.lo }
     }
@@ -131,9 +142,6 @@ impl Add for Interval {
     #[inline]
     fn add(self, other: Self) -> Self {
         let (lo, hi) = (self.lo + other.lo, self.hi + other.hi);
-        if lo.is_nan() || hi.is_nan() {
-            return Self::ENTIRE;
-        }
         // A sum that rounds to zero is zero.
         Self { lo: if lo == 0.0 { lo } else { down(lo) }, hi: if hi == 0.0 { hi } else { up(hi) } }
     }
@@ -141,6 +149,7 @@ impl Add for Interval {
 
 impl Sub for Interval {
     type Output = Self;
+    #[inline]
     fn sub(self, other: Self) -> Self {
         self + -other
     }
@@ -185,11 +194,20 @@ impl Mul for Interval {
 
 impl Div for Interval {
     type Output = Self;
+    #[inline]
     fn div(self, other: Self) -> Self {
-        if other.lo <= 0.0 && other.hi >= 0.0 {
-            return quotient_over_zero(self, other);
+        if other.lo > 0.0 {
+            let lo = if self.lo >= 0.0 { self.lo / other.hi } else { self.lo / other.lo };
+            let hi = if self.hi >= 0.0 { self.hi / other.lo } else { self.hi / other.hi };
+            return Self {
+                lo: if lo == 0.0 && self.lo == 0.0 { 0.0 } else { down(lo) },
+                hi: if hi == 0.0 && self.hi == 0.0 { 0.0 } else { up(hi) },
+            };
         }
-        self * Self { lo: down(1.0 / other.hi), hi: up(1.0 / other.lo) }
+        if other.hi < 0.0 {
+            return -self / -other;
+        }
+        quotient_over_zero(self, other)
     }
 }
 
