@@ -1,5 +1,6 @@
 //! From a text to a file of items.
 
+use std::cell::LazyCell;
 use std::collections::BTreeMap;
 use std::sync::Arc;
 
@@ -46,7 +47,8 @@ pub fn parse_with(text: &str, memo: &mut Memo) -> File {
     let mut pieces = cut(text, lex(text));
     let known = recall(text, &pieces.items, memo);
     rebase(&mut pieces, &known);
-    let rule = item();
+    // Built at the first item that is not known.
+    let rule = LazyCell::new(item);
     let spans: Vec<Span> = pieces.items.iter().map(|piece| Span::new(piece.base, piece.end)).collect();
     let tokens = &pieces.tokens;
     let mut items = Vec::with_capacity(pieces.items.len());

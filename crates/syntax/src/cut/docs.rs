@@ -5,7 +5,12 @@ use super::Piece;
 use crate::token::{Comment, Token, TokenKind};
 
 /// Hands documentation to the items; what is left describes the file.
-pub(super) fn attach(text: &str, raw: &[Token], comments: &[Comment], items: &mut [Piece]) -> Vec<Comment> {
+pub(super) fn attach(
+    text: &str,
+    tokens: &[Token],
+    comments: &[Comment],
+    items: &mut [Piece],
+) -> Vec<Comment> {
     let mut of_file = Vec::new();
     let docs: Vec<Comment> = comments.iter().copied().filter(|comment| comment.doc).collect();
     if docs.is_empty() {
@@ -21,7 +26,7 @@ pub(super) fn attach(text: &str, raw: &[Token], comments: &[Comment], items: &mu
             below = docs[first].span.start;
         }
         of_file.extend_from_slice(&docs[next..first]);
-        if kind_at(raw, item.first) == Some(TokenKind::Title) {
+        if tokens.get(item.tokens.start).is_some_and(|token| token.kind == TokenKind::Title) {
             of_file.extend_from_slice(&docs[first..above]);
         } else if first < above {
             item.docs = docs[first..above].to_vec();
@@ -40,9 +45,4 @@ pub(crate) fn directly_above(text: &str, end: u32, start: u32) -> bool {
     let between = between.replace("\r\n", "\n");
     let ends = between.chars().filter(|&c| c == '\n' || c == '\r').count();
     ends == 1 && between.chars().all(|c| c.is_whitespace() || c == '\u{feff}')
-}
-
-fn kind_at(raw: &[Token], start: u32) -> Option<TokenKind> {
-    let index = raw.binary_search_by_key(&start, |token| token.span.start).ok()?;
-    Some(raw[index].kind)
 }

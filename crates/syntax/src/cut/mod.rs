@@ -50,7 +50,7 @@ pub(crate) fn cut(text: &str, lexed: Lexed) -> Pieces {
     let mut cutter = Cutter::new(text, &lexed);
     cutter.run();
     let (tokens, mut items, mut problems) = (cutter.out, cutter.items, cutter.problems);
-    let docs = docs::attach(text, &lexed.tokens, &lexed.comments, &mut items);
+    let docs = docs::attach(text, &tokens, &lexed.comments, &mut items);
     distribute(lexed.problems, &mut items, &mut problems);
     Pieces { tokens, items, problems, docs }
 }
@@ -206,7 +206,7 @@ impl<'a> Cutter<'a> {
                 }
             }
             K::Points => {
-                self.item.table_ahead = self.raw.get(self.at + 1).is_some_and(|t| t.kind == K::LeftParen);
+                self.item.table_ahead |= self.raw.get(self.at + 1).is_some_and(|t| t.kind == K::LeftParen);
                 self.push(token);
             }
             K::Equal | K::String => {

@@ -39,6 +39,9 @@ pub(super) fn exprs<'s>() -> Exprs<'s> {
         )
     });
     let sum = custom(move |inp| {
+        if let Some(alone) = alone(inp, ends_sum) {
+            return Ok(alone);
+        }
         left_to_right(
             inp,
             |inp| inp.parse(&product),
@@ -61,6 +64,40 @@ pub(super) fn exprs<'s>() -> Exprs<'s> {
     .boxed();
     condition.define(choice_of_two(condition.clone(), or).boxed());
     Exprs { condition: condition.boxed(), sum }
+}
+
+/// A number or a path alone, where nothing that joins it to more stands behind it: most values are that, and need no
+/// way through all the ranks.
+fn alone(inp: &mut In<'_, '_>, ends: impl Fn(K) -> bool) -> Option<Expr> {
+    let first = peek(inp)?;
+    let length = match (first, peek_at(inp, 1)) {
+        (K::Number | K::SignedNumber, Some(K::Unit)) => 2,
+        (K::Number | K::SignedNumber | K::Name, _) => 1,
+        _ => return None,
+    };
+    if !peek_at(inp, length).is_none_or(ends) {
+        return None;
+    }
+    if first != K::Name {
+        return quantity(inp).ok();
+    }
+    let name = take_name(inp).ok()?;
+    let span = name.span;
+    Some(Expr { kind: ExprKind::Path(Path { names: vec![name], span }), span })
+}
+
+/// What ends any expression.
+const fn ends_condition(kind: K) -> bool {
+    matches!(kind, K::Newline | K::Semicolon | K::RightBrace | K::Comma | K::From | K::Measured | K::Assumed)
+}
+
+/// What ends a sum.
+const fn ends_sum(kind: K) -> bool {
+    ends_condition(kind)
+        || matches!(
+            kind,
+            K::LessEqual | K::GreaterEqual | K::Less | K::Greater | K::RightParen | K::At | K::Only
+        )
 }
 
 /// Operands with operators of one rank between, grouped from the left.
@@ -87,6 +124,9 @@ fn choice_of_two<'s>(
     or: Rule<'s, Expr>,
 ) -> impl Parser<'s, Input<'s>, Expr, Extra<'s>> + Clone {
     custom(move |inp| {
+        if let Some(alone) = alone(inp, ends_condition) {
+            return Ok(alone);
+        }
         let Some(start) = maybe(inp, K::If) else { return inp.parse(&or) };
         let before = std::mem::replace(&mut inp.state().equal_compares, true);
         let test = inp.parse(&condition);

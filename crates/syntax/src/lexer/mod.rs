@@ -199,7 +199,12 @@ impl<'a> Lexer<'a> {
     /// A minus: the sign of the number it stands tight before, where no value stands before it.
     fn minus(&mut self, length: usize) {
         let tight = self.peek(length).is_ascii_digit();
-        if tight && self.last.takes_sign() {
+        // `max(` at the end of a line is followed by a sign as well.
+        let before = match self.last {
+            TokenKind::Newline => self.tokens.iter().rev().nth(1).map_or(self.last, |token| token.kind),
+            last => last,
+        };
+        if tight && before.takes_sign() {
             self.number(self.at + length);
         } else {
             self.take(TokenKind::Minus, length);
