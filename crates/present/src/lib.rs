@@ -3,6 +3,7 @@
 //!
 //! [`sheet::sheet`] turns an analysis into what a reader is shown; [`shown::shown`] writes one value.
 
+pub mod derivation;
 pub mod escape;
 pub mod note;
 pub mod number;

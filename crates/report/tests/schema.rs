@@ -178,11 +178,19 @@ fn full() -> Analysis {
             name: String::from("plain"),
             place,
             overrides: vec![(String::from("a.b"), String::from("1"))],
+            changes: Vec::new(),
         }],
         drives: vec![DriveRecord {
             name: String::from("d"),
             place,
-            cases: vec![DriveCase { case: 0, gear: None, spec: None, solution: None, faults: Vec::new() }],
+            cases: vec![DriveCase {
+                case: 0,
+                gear: None,
+                spec: None,
+                solution: None,
+                faults: Vec::new(),
+                parts: Vec::new(),
+            }],
             docs: Vec::new(),
         }],
         criteria: vec![CriterionRecord {

@@ -116,6 +116,23 @@ pub struct CaseRecord {
     pub place: FileSpan,
     /// What it changes: path and value as text.
     pub overrides: Vec<(String, String)>,
+    /// The same with places and values.
+    pub changes: Vec<Change>,
+}
+
+/// What a case lays over one value, field or setting.
+#[derive(Clone, Debug)]
+pub struct Change {
+    /// The place of the name of the value, part or drive.
+    pub owner: FileSpan,
+    /// The field or setting; none for a `let`.
+    pub field: Option<String>,
+    /// The key's place.
+    pub place: FileSpan,
+    /// The value's place.
+    pub value_place: FileSpan,
+    /// What it comes to, where it is a single value.
+    pub value: Option<Datum>,
 }
 
 /// A drive with its solution in every case.
@@ -144,6 +161,8 @@ pub struct DriveCase {
     pub solution: Option<Arc<Solution>>,
     /// Why it could not answer.
     pub faults: Vec<Fault>,
+    /// The place of the name of each part of `spec`, in its order.
+    pub parts: Vec<FileSpan>,
 }
 
 /// What became of a criterion.

@@ -8,10 +8,11 @@ use layshaft_syntax::{
 };
 
 use crate::analysis::{
-    Analysis, Assumption, CaseRecord, DriveCase, DriveRecord, FieldRecord, PartRecord, ValueRecord,
+    Analysis, Assumption, CaseRecord, Change, DriveCase, DriveRecord, FieldRecord, PartRecord, ValueRecord,
 };
 use crate::cases::State;
-use crate::eval::Shared;
+use crate::defs::Given;
+use crate::eval::{Shared, Slot};
 use crate::world::ItemRef;
 
 /// Title, revision and language.
@@ -205,8 +206,29 @@ fn cases(shared: Shared<'_>, states: &[&State<'_>], analysis: &mut Analysis) {
             name: state.name.to_string(),
             place: state.place,
             overrides,
+            changes: changes(shared, state),
         });
     }
+}
+
+fn changes(shared: Shared<'_>, state: &State<'_>) -> Vec<Change> {
+    let world = shared.world;
+    let change = |(slot, given): (&Slot, &Given<'_>)| {
+        let (item, field, value) = match slot {
+            Slot::Let(item) => (*item, None, state.eval.let_value(*item)),
+            Slot::Field(item, name) => {
+                (*item, Some(crate::defs::slot_text(name)), state.eval.field(*item, name))
+            }
+        };
+        Some(Change {
+            owner: world.place(item, world.name(item)?.span),
+            field,
+            place: world.place(given.at, given.entry.key.span),
+            value_place: world.place(given.at, given.value.span),
+            value,
+        })
+    };
+    state.eval.overlay.iter().filter_map(change).collect()
 }
 
 fn drives(shared: Shared<'_>, states: &[&State<'_>], analysis: &mut Analysis) {
@@ -220,6 +242,7 @@ fn drives(shared: Shared<'_>, states: &[&State<'_>], analysis: &mut Analysis) {
                 spec: solved.spec.clone(),
                 solution: solved.solution.clone(),
                 faults: solved.faults.clone(),
+                parts: solved.items.iter().map(|item| name_place(shared, *item)).collect(),
             });
         }
         analysis.drives.push(DriveRecord {
@@ -229,6 +252,11 @@ fn drives(shared: Shared<'_>, states: &[&State<'_>], analysis: &mut Analysis) {
             docs: docs(&shared.world.tree(*at).docs),
         });
     }
+}
+
+fn name_place(shared: Shared<'_>, item: ItemRef) -> layshaft_diagnostics::FileSpan {
+    let span = shared.world.name(item).map_or_else(layshaft_diagnostics::Span::default, |name| name.span);
+    shared.world.place(item, span)
 }
 
 fn assumptions(shared: Shared<'_>, plain: &State<'_>, analysis: &mut Analysis) {

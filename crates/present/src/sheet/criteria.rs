@@ -1,7 +1,9 @@
 //! Criteria: what was required, what was found, how much room is left, where it is tightest.
 
 use layshaft_semantics::Analysis;
-use layshaft_semantics::analysis::{CriterionOutcome, CriterionRecord, Measure, Verdict};
+use layshaft_semantics::analysis::{
+    CriterionOutcome, CriterionRecord, Measure, ShowOutcome, ShowRecord, Verdict,
+};
 use layshaft_semantics::quantity::{Datum, Quantity};
 
 use super::{CriterionLine, Margin, OutcomeLine, ShowLine, ShowOutcomeLine, label};
@@ -10,14 +12,24 @@ use crate::shown::{Number, Shown, joined, result, shown, unit_of};
 use crate::unit::{Habits, convert, convert_difference, kind_of, of_difference};
 
 pub(super) fn criteria(analysis: &Analysis, habits: &Habits) -> Vec<CriterionLine> {
-    analysis.criteria.iter().map(|criterion| line(analysis, criterion, habits)).collect()
+    analysis.criteria.iter().map(|criterion| line(analysis, criterion, habits, usize::MAX)).collect()
 }
 
-fn line(analysis: &Analysis, criterion: &CriterionRecord, habits: &Habits) -> CriterionLine {
+/// A criterion with its first `most` outcomes and the governing one.
+pub(super) fn line(
+    analysis: &Analysis,
+    criterion: &CriterionRecord,
+    habits: &Habits,
+    most: usize,
+) -> CriterionLine {
+    let known = criterion.outcomes.len();
+    let governing = criterion.governing.filter(|at| *at < known);
+    let mut shown: Vec<usize> = (0..known.min(most)).collect();
+    shown.extend(governing.filter(|at| *at >= shown.len()));
     let outcomes: Vec<OutcomeLine> =
-        criterion.outcomes.iter().map(|outcome| outcome_line(analysis, outcome, habits)).collect();
-    let count = |verdict| outcomes.iter().filter(|outcome| outcome.verdict == verdict).count();
-    let governing = criterion.governing.filter(|at| *at < outcomes.len());
+        shown.iter().map(|at| outcome_line(analysis, &criterion.outcomes[*at], habits)).collect();
+    let count = |verdict| criterion.outcomes.iter().filter(|outcome| outcome.verdict == verdict).count();
+    let governing = governing.and_then(|at| shown.iter().position(|known| *known == at));
     let measured = governing.and_then(|at| outcomes.get(at)).or(outcomes.first());
     let required = measured.and_then(required).unwrap_or_else(|| criterion.condition.clone());
     CriterionLine {
@@ -159,18 +171,19 @@ fn margin(measure: &Measure, unit: Option<&str>) -> Margin {
 }
 
 pub(super) fn shows(analysis: &Analysis, habits: &Habits) -> Vec<ShowLine> {
-    let outcome = |outcome: &layshaft_semantics::analysis::ShowOutcome| ShowOutcomeLine {
+    analysis.shows.iter().map(|show| show_line(analysis, show, habits, usize::MAX)).collect()
+}
+
+/// A `show` with its first `most` outcomes.
+pub(super) fn show_line(analysis: &Analysis, show: &ShowRecord, habits: &Habits, most: usize) -> ShowLine {
+    let outcome = |outcome: &ShowOutcome| ShowOutcomeLine {
         case: outcome.case,
         label: label(analysis, outcome.case, outcome.gear.as_deref()),
         gear: outcome.gear.clone(),
         value: outcome.value.as_ref().map(|datum| result(datum, usual(datum, habits).as_deref(), DIGITS)),
         remark: outcome.remark.clone(),
     };
-    let line = |show: &layshaft_semantics::analysis::ShowRecord| ShowLine {
-        text: show.text.clone(),
-        outcomes: show.outcomes.iter().map(outcome).collect(),
-    };
-    analysis.shows.iter().map(line).collect()
+    ShowLine { text: show.text.clone(), outcomes: show.outcomes.iter().take(most).map(outcome).collect() }
 }
 
 fn usual(datum: &Datum, habits: &Habits) -> Option<String> {

@@ -20,27 +20,31 @@ pub(super) fn drives(
     habits: &Habits,
     detail: Detail,
 ) -> Vec<DriveSheet> {
-    let sheet = |drive: &DriveRecord| {
-        let units = units(drive, habits);
-        let row = |case: &DriveCase| {
-            let mut row = Row { case, units: &units, habits, detail }.build();
-            row.label = label(analysis, case.case, case.gear.as_deref());
-            row.governs = governs(criteria, case);
-            row
-        };
-        DriveSheet {
-            name: drive.name.clone(),
-            chain: drive
-                .cases
-                .iter()
-                .find_map(|case| case.spec.as_deref())
-                .map_or_else(String::new, chain_text),
-            docs: drive.docs.clone(),
-            rows: drive.cases.iter().map(row).collect(),
-            units,
-        }
+    analysis.drives.iter().map(|drive| sheet_of(analysis, drive, criteria, habits, detail)).collect()
+}
+
+/// The sheet of one drive.
+pub(super) fn sheet_of(
+    analysis: &Analysis,
+    drive: &DriveRecord,
+    criteria: &[CriterionLine],
+    habits: &Habits,
+    detail: Detail,
+) -> DriveSheet {
+    let units = units(drive, habits);
+    let row = |case: &DriveCase| {
+        let mut row = Row { case, units: &units, habits, detail }.build();
+        row.label = label(analysis, case.case, case.gear.as_deref());
+        row.governs = governs(criteria, case);
+        row
     };
-    analysis.drives.iter().map(sheet).collect()
+    DriveSheet {
+        name: drive.name.clone(),
+        chain: drive.cases.iter().find_map(|case| case.spec.as_deref()).map_or_else(String::new, chain_text),
+        docs: drive.docs.clone(),
+        rows: drive.cases.iter().map(row).collect(),
+        units,
+    }
 }
 
 /// Clauses whose governing outcome is this case; the beginning up to the first blank is enough to know them.
@@ -233,26 +237,35 @@ impl Row<'_> {
     }
 
     fn entry(&self, answer: Answer, unit: &str) -> Entry {
-        match answer {
-            Answer::Quantity { si, kind, marks } if si.is_finite() => {
-                Entry::Number(Box::new(Number::computed(si, kind, unit, DIGITS).marked(marks)))
-            }
-            Answer::Quantity { .. } => Entry::Absent(String::from("not a finite number")),
-            Answer::Flag(flag) => Entry::Flag(flag),
-            Answer::Word(word) => Entry::Word(word),
-            Answer::Unbounded(why) => Entry::Unbounded(note::fill(&why, self.habits)),
-            Answer::Absent(why) => Entry::Absent(note::fill(&why, self.habits)),
-            Answer::Refused(faults) => Entry::Absent(self.sentences(&faults).join("; ")),
-            Answer::NoSuch => Entry::None,
-        }
+        entry(answer, unit, self.case, self.habits)
     }
 
-    /// Why something could not be had, a sentence each.
     fn sentences(&self, faults: &[Fault]) -> Vec<String> {
-        let name = |part: Option<usize>| {
-            let parts = &self.case.spec.as_deref()?.parts;
-            parts.get(part?).map(|part| part.name.as_str())
-        };
-        faults.iter().map(|fault| note::fault(fault, name(fault.part), self.habits)).collect()
+        sentences(faults, self.case, self.habits)
     }
+}
+
+/// An answer as it is shown, a number in `unit`.
+pub(super) fn entry(answer: Answer, unit: &str, case: &DriveCase, habits: &Habits) -> Entry {
+    match answer {
+        Answer::Quantity { si, kind, marks } if si.is_finite() => {
+            Entry::Number(Box::new(Number::computed(si, kind, unit, DIGITS).marked(marks)))
+        }
+        Answer::Quantity { .. } => Entry::Absent(String::from("not a finite number")),
+        Answer::Flag(flag) => Entry::Flag(flag),
+        Answer::Word(word) => Entry::Word(word),
+        Answer::Unbounded(why) => Entry::Unbounded(note::fill(&why, habits)),
+        Answer::Absent(why) => Entry::Absent(note::fill(&why, habits)),
+        Answer::Refused(faults) => Entry::Absent(sentences(&faults, case, habits).join("; ")),
+        Answer::NoSuch => Entry::None,
+    }
+}
+
+/// Why something could not be had, a sentence each.
+fn sentences(faults: &[Fault], case: &DriveCase, habits: &Habits) -> Vec<String> {
+    let name = |part: Option<usize>| {
+        let parts = &case.spec.as_deref()?.parts;
+        parts.get(part?).map(|part| part.name.as_str())
+    };
+    faults.iter().map(|fault| note::fault(fault, name(fault.part), habits)).collect()
 }

@@ -12,7 +12,9 @@ mod record;
 pub use lines::*;
 pub use record::role_word;
 
+use layshaft_mechanics::solution::Answer;
 use layshaft_semantics::Analysis;
+use layshaft_semantics::analysis::{DriveCase, DriveRecord};
 
 use crate::unit::Habits;
 
@@ -55,6 +57,47 @@ fn label(analysis: &Analysis, case: usize, gear: Option<&str>) -> String {
         Some(gear) => format!("{case}, gear {gear}"),
         None => case.to_string(),
     }
+}
+
+/// The sheet of one drive with its first `most` rows, without what they govern; none where there is no such drive.
+#[must_use]
+pub fn drive(analysis: &Analysis, index: usize, habits: &Habits, most: usize) -> Option<DriveSheet> {
+    let record = analysis.drives.get(index)?;
+    let few = DriveRecord {
+        name: record.name.clone(),
+        place: record.place,
+        cases: record.cases.iter().take(most).cloned().collect(),
+        docs: record.docs.clone(),
+    };
+    Some(drives::sheet_of(analysis, &few, &[], habits, Detail::Tables))
+}
+
+/// One criterion with its first `most` outcomes and the governing one; none where there is no such criterion.
+#[must_use]
+pub fn criterion(analysis: &Analysis, index: usize, habits: &Habits, most: usize) -> Option<CriterionLine> {
+    Some(criteria::line(analysis, analysis.criteria.get(index)?, habits, most))
+}
+
+/// One `show` with its first `most` outcomes; none where there is no such `show`.
+#[must_use]
+pub fn show(analysis: &Analysis, index: usize, habits: &Habits, most: usize) -> Option<ShowLine> {
+    Some(criteria::show_line(analysis, analysis.shows.get(index)?, habits, most))
+}
+
+/// An answer of a solved drive as it is shown, in the unit the author uses for its kind.
+#[must_use]
+pub fn answer(answer: Answer, case: &DriveCase, habits: &Habits) -> Entry {
+    let unit = match &answer {
+        Answer::Quantity { si, kind, .. } => habits.unit(kind, [*si]),
+        _ => String::new(),
+    };
+    drives::entry(answer, &unit, case, habits)
+}
+
+/// The label of a case, with the gear where the spec gives none: `corner[360 V], gear 2`.
+#[must_use]
+pub fn case_label(analysis: &Analysis, case: usize, gear: Option<&str>) -> String {
+    label(analysis, case, gear)
 }
 
 /// The habits of an author, for callers that write notes of their own.

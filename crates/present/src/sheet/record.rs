@@ -9,6 +9,7 @@ use layshaft_semantics::quantity::{Datum, Quantity};
 use super::{AcceptedLine, AssumptionLine, CaseLine, LawLine, PartLine, ValueLine};
 use crate::shown::shown;
 use crate::unit::{Habits, kind_of};
+use layshaft_units::kind;
 
 /// Said wherever a drive has results, for a drive can hurt someone.
 const ALWAYS: &str = "The numbers are as good as the data behind them and replace neither a test nor the judgement \
@@ -21,28 +22,35 @@ const OVERHAULING: &str = "This drive lifts, lowers or holds a load: brakes, rop
 const FALLING: &[&str] = &["hoist", "incline", "vehicle", "winder"];
 
 /// The units an author uses: limits of criteria first, then `show … as`.
+///
+/// Only speeds have units of one size that two trades choose differently; of the rest the prefix follows the size.
 pub(super) fn habits(analysis: &Analysis) -> Habits {
     let mut habits = Habits::default();
     let measures =
         analysis.criteria.iter().flat_map(|criterion| &criterion.outcomes).filter_map(|o| o.measure.as_ref());
-    for measure in measures {
-        for datum in [measure.high.as_ref(), measure.low.as_ref(), Some(&measure.found)].into_iter().flatten()
-        {
-            note(&mut habits, datum);
+    let measured = measures.flat_map(|measure| {
+        [measure.high.as_ref(), measure.low.as_ref(), Some(&measure.found)].into_iter().flatten()
+    });
+    let shown =
+        analysis.shows.iter().flat_map(|show| &show.outcomes).filter_map(|outcome| outcome.value.as_ref());
+    let speeds = ["speed", "rotational_speed"].map(|name| kind(name).map(|kind| (kind.name, kind.ty().dim)));
+    let mut open: Vec<_> = speeds.into_iter().flatten().collect();
+    for datum in measured.chain(shown) {
+        let Datum::Quantity(Quantity { ty, unit: Some(unit), .. }) = datum else { continue };
+        // A look at the dimension spares the search of the table for nearly every value.
+        if open.iter().all(|(_, dim)| *dim != ty.dim) {
+            continue;
+        }
+        let Some(of) = kind_of(ty) else { continue };
+        if let Some(at) = open.iter().position(|(name, _)| *name == of.name) {
+            habits.note(of.name, unit);
+            open.remove(at);
+        }
+        if open.is_empty() {
+            break;
         }
     }
-    let shows =
-        analysis.shows.iter().flat_map(|show| &show.outcomes).filter_map(|outcome| outcome.value.as_ref());
-    shows.for_each(|datum| note(&mut habits, datum));
     habits
-}
-
-fn note(habits: &mut Habits, datum: &Datum) {
-    let Datum::Quantity(Quantity { ty, unit: Some(unit), .. }) = datum else { return };
-    // Only speeds have units of one size that two trades choose differently; of the rest the prefix follows the size.
-    if let Some(kind) = kind_of(ty).filter(|kind| matches!(kind.name, "speed" | "rotational_speed")) {
-        habits.note(kind.name, unit);
-    }
 }
 
 pub(super) fn cases(analysis: &Analysis) -> Vec<CaseLine> {
