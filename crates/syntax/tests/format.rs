@@ -178,10 +178,12 @@ fn a_code_stays_whole() {
 }
 
 #[test]
-fn a_negative_number_does_not_begin_a_line() {
-    let name = "a_value_with_a_long_name_of_its_own_that_goes_on";
+fn a_negative_number_keeps_its_sign_at_the_beginning_of_a_line() {
+    stays("let a = max(\n    -20 °C, b)\nlet c = d +\n    -5\n");
+    becomes("let a = max(\n- 20 K, b)\n", "let a = max(\n    - 20 K, b)\n");
+    let name = "a_value_with_a_long_name_of_its_own_that_goes";
     becomes(
         &format!("let a = max({name}, {name}, -20 °C, b)\n"),
-        &format!("let a = max({name},\n    {name}, -20 °C, b)\n"),
+        &format!("let a = max({name}, {name},\n    -20 °C, b)\n"),
     );
 }

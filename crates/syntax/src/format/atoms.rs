@@ -234,8 +234,6 @@ impl<'t> Maker<'t, '_> {
     /// How gladly a line breaks before a token.
     fn soft(&self, last: Option<K>, token: Token) -> u8 {
         let breaks = match (last, token.kind) {
-            // At the beginning of a line a minus is an operator.
-            (_, K::SignedNumber) => false,
             (_, K::And | K::Or | K::Then | K::Else) => true,
             (Some(K::Comma | K::Plus), _) => true,
             (

@@ -199,12 +199,15 @@ impl<'a> Lexer<'a> {
     /// A minus: the sign of the number it stands tight before, where no value stands before it.
     fn minus(&mut self, length: usize) {
         let tight = self.peek(length).is_ascii_digit();
-        // `max(` at the end of a line is followed by a sign as well.
-        let before = match self.last {
-            TokenKind::Newline => self.tokens.iter().rev().nth(1).map_or(self.last, |token| token.kind),
-            last => last,
+        let signs = match self.last {
+            // Where the line before leaves something open, and only there: an item is read without its neighbours.
+            TokenKind::Newline => self.tokens.iter().rev().nth(1).is_some_and(|token| match token.kind {
+                TokenKind::LeftParen | TokenKind::LeftSquare => true,
+                kind => kind.leaves_line_open() && kind.takes_sign(),
+            }),
+            last => last.takes_sign(),
         };
-        if tight && before.takes_sign() {
+        if tight && signs {
             self.number(self.at + length);
         } else {
             self.take(TokenKind::Minus, length);
