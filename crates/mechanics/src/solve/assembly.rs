@@ -1,5 +1,7 @@
 //! A drive put together: models, shafts with their fixed speed ratios, what each source gives on its supply.
 
+use std::sync::Arc;
+
 use super::balance::Program;
 use super::chain::{Between, Hung, Tree, tree};
 use super::shafts::{directed, gears_engaged, inertias, root, self_locking_in_branch, shafts, stages, turn};
@@ -95,7 +97,7 @@ pub(crate) struct Assembly {
     /// What was asked.
     pub spec: DriveSpec,
     /// The models, one a part.
-    pub models: Vec<Model>,
+    pub models: Vec<Arc<Model>>,
     /// Where everything stands.
     pub tree: Tree,
     /// The shafts.
@@ -138,7 +140,7 @@ impl Assembly {
             .loads
             .iter()
             .filter_map(|at| {
-                let Model::Load(load) = &models[at.part] else { return None };
+                let Model::Load(load) = models[at.part].as_ref() else { return None };
                 Some(LoadAt { at: *at, demand: load.demand(), sense: shafts[at.shaft].sense })
             })
             .collect();
@@ -169,7 +171,7 @@ impl Assembly {
 
     /// The transmission of a stage.
     pub fn transmission(&self, stage: &Stage) -> Option<&dyn Transmission> {
-        match &self.models[stage.at.part] {
+        match self.models[stage.at.part].as_ref() {
             Model::Transmission(model) => Some(model.as_ref()),
             _ => None,
         }
@@ -177,7 +179,7 @@ impl Assembly {
 
     /// The model of a load.
     pub fn load(&self, load: &LoadAt) -> Option<&dyn Load> {
-        match &self.models[load.at.part] {
+        match self.models[load.at.part].as_ref() {
             Model::Load(model) => Some(model.as_ref()),
             _ => None,
         }
@@ -261,12 +263,12 @@ impl Assembly {
     }
 }
 
-fn models(spec: &DriveSpec) -> Result<Vec<Model>, Vec<Fault>> {
+fn models(spec: &DriveSpec) -> Result<Vec<Arc<Model>>, Vec<Fault>> {
     let mut models = Vec::with_capacity(spec.parts.len());
     let mut faults = Vec::new();
     for (index, part) in spec.parts.iter().enumerate() {
         match (part.row.build)(&part.values) {
-            Ok(model) => models.push(model),
+            Ok(model) => models.push(Arc::new(model)),
             Err(found) => {
                 faults.extend(found.into_iter().map(|f| Fault { part: f.part.or(Some(index)), ..f }));
             }

@@ -2,6 +2,8 @@
 //!
 //! Every shaft has one motion; every transmission stands between two shafts; the shafts form one tree.
 
+use std::sync::Arc;
+
 use crate::drive::Chain;
 use crate::fault::{Fault, FaultKind, Note};
 use crate::model::{Model, Motion};
@@ -52,7 +54,7 @@ fn fault(part: Option<usize>, how: &'static str) -> Fault {
 }
 
 /// Builds the tree.
-pub(crate) fn tree(chain: &Chain, roles: &[Role], models: &[Model]) -> Result<Tree, Vec<Fault>> {
+pub(crate) fn tree(chain: &Chain, roles: &[Role], models: &[Arc<Model>]) -> Result<Tree, Vec<Fault>> {
     let mut walk = Walk { roles, models, tree: Tree::default(), used: vec![false; models.len()] };
     let out = walk.chain(chain, None, 0).map_err(|fault| vec![fault])?;
     let mut faults = Vec::new();
@@ -70,7 +72,7 @@ pub(crate) fn tree(chain: &Chain, roles: &[Role], models: &[Model]) -> Result<Tr
 
 struct Walk<'a> {
     roles: &'a [Role],
-    models: &'a [Model],
+    models: &'a [Arc<Model>],
     tree: Tree,
     used: Vec<bool>,
 }
@@ -163,7 +165,7 @@ impl Walk<'_> {
             return Err(fault(at, "none of this part: the number before it must be 1 or more"));
         }
         let count = f64::from(count);
-        match (&self.models[index], entering) {
+        match (self.models[index].as_ref(), entering) {
             (Model::Source(source), None) => {
                 let shaft = self.shaft(source.motion());
                 self.tree.sources.push(Hung { part: index, count, shaft });

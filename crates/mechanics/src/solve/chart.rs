@@ -91,7 +91,7 @@ impl Solution {
                 reached: self.here.as_ref().is_ok_and(|here| here.x == state.x),
             })
         });
-        let continuous = source.and_then(|s| match &drive.models[s.at.part] {
+        let continuous = source.and_then(|s| match drive.models[s.at.part].as_ref() {
             Model::Source(model) => model.ratings(drive.spec.settings.duty).effort,
             _ => None,
         });

@@ -246,7 +246,7 @@ impl Solution {
         let back = effort * speed < 0.0;
         let unused = if back { "eta" } else { "eta_b" };
         let fits = |formula: &&Formula| {
-            let stage = matches!(self.drive.models[part], Model::Transmission(_));
+            let stage = matches!(self.drive.models[part].as_ref(), Model::Transmission(_));
             !(stage && formula.symbols.iter().any(|(symbol, _, _)| *symbol == unused))
         };
         let mut steps: Vec<Step> =
@@ -269,7 +269,7 @@ impl Solution {
             let source = &drive.sources[index];
             let speed = here.x * drive.shafts[source.at.shaft].speed;
             let effort = here.flow.sources[index];
-            let Model::Source(model) = &drive.models[part] else { return None };
+            let Model::Source(model) = drive.models[part].as_ref() else { return None };
             let symbols = model.symbols(&SourceState { speed, effort, feed: &source.feed });
             return Some((symbols, speed, effort, source.at.shaft));
         }

@@ -247,7 +247,7 @@ impl Solution {
             return Err(absent("no source is on"));
         };
         let source = &self.drive.sources[index];
-        match &self.drive.models[source.at.part] {
+        match self.drive.models[source.at.part].as_ref() {
             Model::Source(model) => {
                 Ok(model.limited_by(&source.feed, here.x * self.drive.shafts[source.at.shaft].speed))
             }

@@ -94,7 +94,7 @@ impl Solution {
     fn too_fast(&self, found: &mut Vec<Finding>) {
         let drive = &self.drive;
         for source in &drive.sources {
-            let Model::Source(model) = &drive.models[source.at.part] else { continue };
+            let Model::Source(model) = drive.models[source.at.part].as_ref() else { continue };
             if let Some(limit) = model.ratings(drive.spec.settings.duty).max_speed {
                 self.speed_limit(source.at.part, source.at.shaft, limit, found);
             }
@@ -146,11 +146,11 @@ impl Solution {
             return;
         }
         for (source, effort) in self.drive.sources.iter().zip(&here.flow.sources) {
-            let Model::Source(model) = &self.drive.models[source.at.part] else { continue };
+            let Model::Source(model) = self.drive.models[source.at.part].as_ref() else { continue };
             let shaft = &self.drive.shafts[source.at.shaft];
             let ratings = model.ratings(self.drive.spec.settings.duty);
             let speed = here.x * shaft.speed;
-            let current = source.draw.as_ref().and_then(|d| d.at(speed, *effort).current).unwrap_or(0.0);
+            let current = self.drawn(here, source, *effort, speed).current.unwrap_or(0.0);
             let checks = [
                 (ratings.effort, effort.abs(), shaft.motion.effort_kind()),
                 (ratings.power, (effort * speed).abs(), "mechanical_power"),
@@ -246,7 +246,7 @@ impl Solution {
             }
         }
         for (source, effort) in drive.sources.iter().zip(&here.flow.sources) {
-            let Model::Source(model) = &drive.models[source.at.part] else { continue };
+            let Model::Source(model) = drive.models[source.at.part].as_ref() else { continue };
             let Some(value) = model.ratings(drive.spec.settings.duty).max_effort else { continue };
             let limit = Limit { field: "", on: LimitOn::OutputEffort, value, code: "part-limit" };
             let kind = drive.shafts[source.at.shaft].motion.effort_kind();

@@ -24,6 +24,7 @@ mod rest;
 mod roots;
 mod run_up;
 mod shafts;
+mod shared;
 mod source;
 mod state;
 mod stated;
@@ -37,6 +38,8 @@ pub use answers::{OperatingPoint, Solution};
 pub use chart::{Chart, ChartCurve, ChartPoint, CurveRole};
 pub use derive::{DRIVE_FORMULAS, Step, Symbol};
 pub use over::{Extremes, Question, worst_over};
+
+use std::sync::Arc;
 
 use crate::drive::{DriveSpec, StatedSpeed};
 use crate::fault::Fault;
@@ -100,7 +103,8 @@ pub(crate) fn zeros(
 /// The gears a drive can be in: the names all its gearboxes have; empty without a gearbox, or when it cannot be built.
 #[must_use]
 pub fn gears(spec: &DriveSpec) -> Vec<String> {
-    let built: Result<Vec<_>, _> = spec.parts.iter().map(|part| (part.row.build)(&part.values)).collect();
+    let built: Result<Vec<_>, _> =
+        spec.parts.iter().map(|part| (part.row.build)(&part.values).map(Arc::new)).collect();
     let Ok(models) = built else { return Vec::new() };
     let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
     chain::tree(&spec.chain, &roles, &models)

@@ -9,7 +9,7 @@ use super::points::pieces;
 use super::solve_at;
 use crate::curve::Law;
 use crate::drive::{DriveSpec, Port, StatedSpeed};
-use crate::fault::Fault;
+use crate::fault::{Fault, FaultKind, Note};
 use crate::model::Model;
 use crate::scalar::{Dual, Enclosure, Interval, Real};
 use crate::solution::Answer;
@@ -48,6 +48,18 @@ pub fn worst_over(
     question: Question<'_>,
 ) -> Result<Extremes, Vec<Fault>> {
     let drive = Assembly::new(spec)?;
+    let electrical = ["current", "voltage", "input_power", "efficiency"].contains(&question.name)
+        || question
+            .part
+            .is_some_and(|part| matches!(drive.models.get(part).map(AsRef::as_ref), Some(Model::Supply(_))));
+    if electrical && drive.sources.iter().any(|s| s.coupled.is_some()) {
+        let how = "over a range of speeds the currents of different sources on one sagging supply are not covered: ask \
+                   at single speeds";
+        return Err(vec![Fault {
+            part: question.part,
+            kind: FaultKind::Unsettled { how: Note::plain(how) },
+        }]);
+    }
     let stated = |speed| StatedSpeed { part: station.0, port: station.1, speed };
     let (from, to) = (drive.coordinate(&stated(low))?, drive.coordinate(&stated(high))?);
     let ratio = low / from;
@@ -332,7 +344,7 @@ impl Stated<'_> {
                 current = current + each * source.at.count;
             }
         }
-        let data = match &self.drive.models[part] {
+        let data = match self.drive.models[part].as_ref() {
             Model::Supply(model) => model.data(),
             _ => return current,
         };

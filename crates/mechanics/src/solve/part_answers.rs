@@ -22,7 +22,7 @@ impl Solution {
             self.of_stage(index, port, name)
         } else if let Some(index) = self.drive.loads.iter().position(|l| l.at.part == part) {
             self.of_load(index, name)
-        } else if let Some(Model::Supply(_)) = self.drive.models.get(part) {
+        } else if let Some(Model::Supply(_)) = self.drive.models.get(part).map(AsRef::as_ref) {
             self.of_supply(part, name)
         } else {
             return Answer::NoSuch;
@@ -96,7 +96,7 @@ impl Solution {
             }
             _ if self.effort_word(shaft, name) => self.effort(shaft, effort, here.marks),
             _ => {
-                let Model::Source(model) = &self.drive.models[source.at.part] else {
+                let Model::Source(model) = self.drive.models[source.at.part].as_ref() else {
                     return Ok(Answer::NoSuch);
                 };
                 let state = SourceState { speed, effort, feed: &source.feed };
@@ -149,7 +149,11 @@ impl Solution {
         Ok(self.quantity(ratio, "number", here.marks))
     }
 
-    fn drawn(&self, source: &SourceAt, effort: f64, speed: f64) -> Drawn<f64> {
+    /// What each machine of a source takes in.
+    pub(super) fn drawn(&self, here: &State, source: &SourceAt, effort: f64, speed: f64) -> Drawn<f64> {
+        if let Some((group, index)) = &source.coupled {
+            return group.drawn(*index, here.x, &here.flow.sources);
+        }
         source.draw.as_ref().map_or(Drawn::NOTHING, |draw| draw.at(speed, effort))
     }
 
@@ -164,7 +168,7 @@ impl Solution {
         if source.character.is_none() {
             return Err(absent("this source is off"));
         }
-        let drawn = self.drawn(source, effort, speed);
+        let drawn = self.drawn(here, source, effort, speed);
         let unknown = || absent("its data do not say it: no electrical side is made up from a torque curve");
         let (value, kind) = match name {
             "current" => (drawn.current.map(f64::abs), "current"),
@@ -184,7 +188,7 @@ impl Solution {
     }
 
     fn of_supply(&self, part: usize, name: &str) -> Result<Answer, Answer> {
-        let Model::Supply(model) = &self.drive.models[part] else { return Ok(Answer::NoSuch) };
+        let Model::Supply(model) = self.drive.models[part].as_ref() else { return Ok(Answer::NoSuch) };
         let own = self.drive.spec.parts[part].row.results.iter().any(|r| r.name == name);
         if !own && !["current", "voltage", "power"].contains(&name) {
             return Ok(Answer::NoSuch);
@@ -197,7 +201,7 @@ impl Solution {
             }
             let behind = here.behind[source.at.shaft];
             let speed = here.x * self.drive.shafts[source.at.shaft].speed;
-            let drawn = self.drawn(source, if behind { 0.0 } else { *effort }, speed);
+            let drawn = self.drawn(here, source, if behind { 0.0 } else { *effort }, speed);
             let Some(each) = drawn.supply_current else {
                 return Err(absent("a source on this supply does not know its current"));
             };

@@ -1,5 +1,7 @@
 //! Which way efforts are gathered, how fast each shaft turns, and what inertia sits on it.
 
+use std::sync::Arc;
+
 use super::assembly::{Far, Shaft, Stage};
 use super::chain::{Hung, Tree};
 use crate::drive::{Direction, DriveSpec};
@@ -7,10 +9,10 @@ use crate::fault::{Fault, FaultKind, Note};
 use crate::model::{Known, Model, Motion};
 
 /// The names of the gears a drive can be in: those all its gearboxes have.
-pub(crate) fn gear_names(tree: &Tree, models: &[Model]) -> Vec<String> {
+pub(crate) fn gear_names(tree: &Tree, models: &[Arc<Model>]) -> Vec<String> {
     let mut common: Option<Vec<String>> = None;
     for stage in &tree.stages {
-        let Model::Transmission(model) = &models[stage.part] else { continue };
+        let Model::Transmission(model) = models[stage.part].as_ref() else { continue };
         let names = model.gears();
         if names.is_empty() {
             continue;
@@ -27,12 +29,12 @@ pub(crate) fn gear_names(tree: &Tree, models: &[Model]) -> Vec<String> {
 pub(super) fn gears_engaged(
     spec: &DriveSpec,
     tree: &Tree,
-    models: &[Model],
+    models: &[Arc<Model>],
 ) -> Result<Vec<usize>, Vec<Fault>> {
     let mut engaged = Vec::new();
     let mut faults = Vec::new();
     for stage in &tree.stages {
-        let Model::Transmission(model) = &models[stage.part] else { continue };
+        let Model::Transmission(model) = models[stage.part].as_ref() else { continue };
         let names = model.gears();
         let kind = match (&spec.settings.gear, names.len()) {
             (_, 0) | (None, 1) => {
@@ -94,7 +96,7 @@ fn way(tree: &Tree, from: usize, to: usize) -> Vec<usize> {
 
 /// Where to balance: on the shaft at which the ways of all sources that are on to the first load have met, so that a
 /// single source is balanced at its own shaft; but behind the last freewheel on the common way.
-pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Model]) -> usize {
+pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Arc<Model>]) -> usize {
     let goal = tree.loads[0].shaft;
     let on = |source: &&Hung| spec.parts[source.part].on;
     let mut ways: Vec<Vec<usize>> =
@@ -113,7 +115,7 @@ pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Model]) -> usize {
     let mut root = shared.first().map_or(goal, |index| tree.stages[*index].input);
     for index in shared {
         let stage = &tree.stages[*index];
-        if matches!(&models[stage.part], Model::Transmission(t) if t.one_way()) {
+        if matches!(models[stage.part].as_ref(), Model::Transmission(t) if t.one_way()) {
             root = stage.output;
         }
     }
@@ -150,10 +152,10 @@ pub(super) fn directed(tree: &Tree, root: usize) -> (Vec<Far>, Vec<usize>) {
     (far, order)
 }
 
-pub(super) fn stages(tree: &Tree, models: &[Model], gears: &[usize], far: &[Far]) -> Vec<Stage> {
+pub(super) fn stages(tree: &Tree, models: &[Arc<Model>], gears: &[usize], far: &[Far]) -> Vec<Stage> {
     let mut stages = Vec::with_capacity(tree.stages.len());
     for (index, at) in tree.stages.iter().enumerate() {
-        let Model::Transmission(model) = &models[at.part] else { continue };
+        let Model::Transmission(model) = models[at.part].as_ref() else { continue };
         stages.push(Stage {
             at: *at,
             gear: gears[index],
@@ -167,11 +169,11 @@ pub(super) fn stages(tree: &Tree, models: &[Model], gears: &[usize], far: &[Far]
 }
 
 /// A self-locking stage between two sources cannot be solved from its source side.
-pub(super) fn self_locking_in_branch(stages: &[Stage], models: &[Model]) -> Result<(), Vec<Fault>> {
+pub(super) fn self_locking_in_branch(stages: &[Stage], models: &[Arc<Model>]) -> Result<(), Vec<Fault>> {
     let locked = |stage: &&Stage| {
         stage.far == Far::Input
             && matches!(stage.coupling.backward, Known::Value(value) if value <= 0.0)
-            && matches!(models[stage.at.part], Model::Transmission(_))
+            && matches!(models[stage.at.part].as_ref(), Model::Transmission(_))
     };
     match stages.iter().find(locked) {
         None => Ok(()),
@@ -217,7 +219,7 @@ pub(super) fn turn(shafts: &mut [Shaft], tree: &Tree, direction: Direction) {
     }
 }
 
-pub(super) fn inertias(shafts: &mut [Shaft], tree: &Tree, models: &[Model]) -> Vec<Fault> {
+pub(super) fn inertias(shafts: &mut [Shaft], tree: &Tree, models: &[Arc<Model>]) -> Vec<Fault> {
     let mut faults = Vec::new();
     let mut put = |shaft: usize, count: f64, part: usize, known: Known| match known {
         Known::Value(value) => shafts[shaft].inertia += count * value,
@@ -228,14 +230,14 @@ pub(super) fn inertias(shafts: &mut [Shaft], tree: &Tree, models: &[Model]) -> V
         }
     };
     for hung in tree.sources.iter().chain(&tree.loads) {
-        match &models[hung.part] {
+        match models[hung.part].as_ref() {
             Model::Source(source) => put(hung.shaft, hung.count, hung.part, source.inertia()),
             Model::Load(load) => put(hung.shaft, hung.count, hung.part, load.inertia()),
             _ => {}
         }
     }
     for stage in &tree.stages {
-        if let Model::Transmission(model) = &models[stage.part] {
+        if let Model::Transmission(model) = models[stage.part].as_ref() {
             put(stage.input, stage.count, stage.part, model.input_inertia());
             put(stage.output, stage.count, stage.part, model.output_inertia());
         }

@@ -1,9 +1,12 @@
 //! A source in its place: what it hangs on, what it gives at full command, and how a set speed bounds it.
 
+use std::sync::Arc;
+
 use super::assembly::Assembly;
 use super::chain::Hung;
+use super::shared::{Coupled, Group, Hangs, sort_out};
 use crate::fault::{Fault, FaultKind, Note};
-use crate::model::{Braking, Characteristic, Draw, Feed, Model, Supply};
+use crate::model::{Braking, Characteristic, Draw, Feed, Model, Supply, SupplyData};
 use crate::scalar::Real;
 use crate::values::FieldValue;
 
@@ -17,8 +20,10 @@ pub(crate) struct SourceAt {
     pub feed: Feed,
     /// What it gives; none when it is off.
     pub character: Option<Characteristic>,
-    /// Its electrical side.
+    /// Its electrical side, where its supply is its own or stiff.
     pub draw: Option<Box<dyn Draw>>,
+    /// The sources it shares a sagging supply with, and its place among them.
+    pub coupled: Option<(Arc<Group>, usize)>,
     /// How a set speed bounds it.
     pub governor: Option<Governor>,
 }
@@ -103,23 +108,24 @@ fn natural<R: Real>(character: &Characteristic, speed: R) -> R {
 /// Places all sources of a drive.
 pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
     let mut placed = Vec::new();
-    let mut faults = shared_supplies(drive);
+    let mut faults = Vec::new();
     let mut followed = drive.set.is_none();
-    for at in &drive.tree.sources {
+    for (at, hangs) in drive.tree.sources.iter().zip(sort_out(drive)?) {
         let supply = supply_of(drive, at.part);
-        let feed = feed(drive, at, supply);
+        let feed = feed(drive, &hangs, supply);
         let mut source = SourceAt {
             at: *at,
             supply: supply.map(|(i, _)| i),
             feed,
             character: None,
             draw: None,
+            coupled: None,
             governor: None,
         };
-        let Model::Source(model) = &drive.models[at.part] else { continue };
+        let Model::Source(model) = drive.models[at.part].as_ref() else { continue };
         if drive.spec.parts[at.part].on {
             match model.characteristic(&feed) {
-                Ok(character) => {
+                Ok(mut character) => {
                     if !character.reversible && drive.shafts[at.shaft].sense < 0.0 {
                         let how = "this source runs one way only, and the drive asks for the other: put a reversing \
                                    stage behind it";
@@ -128,7 +134,12 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
                             kind: FaultKind::Chain { how: Note::plain(how) },
                         });
                     }
-                    source.draw = model.draw(&feed);
+                    if let Hangs::Coupled(group, index) = hangs {
+                        character.drive = Box::new(Coupled { group: Arc::clone(&group), index });
+                        source.coupled = Some((group, index));
+                    } else {
+                        source.draw = model.draw(&feed);
+                    }
                     source.governor = governor(drive, at, &character);
                     followed |= character.follows_set_speed;
                     source.character = Some(character);
@@ -162,37 +173,23 @@ fn governor(drive: &Assembly, at: &Hung, character: &Characteristic) -> Option<G
 /// The supply named in a source's field, and its model.
 fn supply_of(drive: &Assembly, part: usize) -> Option<(usize, &dyn Supply)> {
     let Some(FieldValue::Part(index)) = drive.spec.parts[part].values.get("supply") else { return None };
-    match drive.models.get(*index)? {
+    match drive.models.get(*index)?.as_ref() {
         Model::Supply(model) => Some((*index, model.as_ref())),
         _ => None,
     }
 }
 
-fn feed(drive: &Assembly, at: &Hung, supply: Option<(usize, &dyn Supply)>) -> Feed {
+/// What a source sees; one that shares a supply with different ones starts from its open-circuit voltage.
+fn feed(drive: &Assembly, hangs: &Hangs, supply: Option<(usize, &dyn Supply)>) -> Feed {
+    let data = supply.map(|(_, model)| model.data());
+    let (data, machines) = match hangs {
+        Hangs::Alone(machines) => (data, *machines),
+        Hangs::Coupled(..) => (data.map(|d| SupplyData { resistance: Some(0.0), ..d }), 1.0),
+    };
     Feed {
-        supply: supply.map(|(_, model)| model.data()),
-        machines: at.count,
+        supply: data,
+        machines,
         ambient: drive.spec.settings.ambient,
         altitude: drive.spec.settings.altitude,
     }
-}
-
-/// Different sources on one supply that sags would pull each other down; that is refused, not neglected.
-fn shared_supplies(drive: &Assembly) -> Vec<Fault> {
-    let mut faults = Vec::new();
-    let mut seen: Vec<usize> = Vec::new();
-    for at in &drive.tree.sources {
-        let Some((index, model)) = supply_of(drive, at.part).filter(|_| drive.spec.parts[at.part].on) else {
-            continue;
-        };
-        let data = model.data();
-        let stiff = data.resistance.unwrap_or(0.0) == 0.0 && data.current_limit.is_none();
-        if seen.contains(&index) && !stiff {
-            let how = "different sources hang on one supply that sags or limits its current; how they pull each \
-                       other down is not covered yet: give each its own supply, or declare this one stiff";
-            faults.push(Fault { part: Some(at.part), kind: FaultKind::Unsettled { how: Note::plain(how) } });
-        }
-        seen.push(index);
-    }
-    faults
 }

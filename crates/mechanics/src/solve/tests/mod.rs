@@ -3,5 +3,6 @@
 mod outcomes;
 mod published;
 mod random;
+mod supplies;
 mod transient;
 mod worked;
