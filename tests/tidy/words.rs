@@ -88,6 +88,20 @@ fn grammar_and_lexer_have_the_same_words() {
     none(&complaints(grammar, &Tables::of_the_lexer()));
 }
 
+/// Words of the lexer that fuzzing does not know.
+fn unknown_to_fuzzing<'a>(dictionary: &str, all: &BTreeSet<&'a str>) -> Vec<&'a str> {
+    let listed: BTreeSet<&str> = dictionary.lines().map(|line| line.trim_matches('"')).collect();
+    all.difference(&listed).copied().collect()
+}
+
+#[test]
+fn fuzzing_knows_every_word() {
+    let tree = Tree::of_the_repository();
+    let dictionary = tree.text("tests/fuzz/words.dict").expect("fuzzing has its words");
+    assert_eq!(unknown_to_fuzzing(dictionary, &Tables::of_the_lexer().all), [""; 0]);
+    assert_eq!(unknown_to_fuzzing("# words\n\"let\"\n", &BTreeSet::from(["let", "show"])), ["show"]);
+}
+
 #[test]
 fn a_word_on_one_side_only_is_seen() {
     let grammar = "(* words *) let = \"let\" , NAME , \"=\" , x , \"as\" , NAME ;\n\
