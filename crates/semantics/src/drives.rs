@@ -8,7 +8,7 @@ use layshaft_diagnostics::{Code, Diagnostic, Span};
 use layshaft_mechanics::drive::{self, Direction, DriveSpec, PartSpec, Port, Settings, StatedSpeed};
 use layshaft_mechanics::fault::{Fault, FaultKind};
 use layshaft_mechanics::model::Motion;
-use layshaft_mechanics::registry::{self, Role, Shape};
+use layshaft_mechanics::registry::{self, ResultShape, Role, Shape};
 use layshaft_mechanics::solution::Answer;
 use layshaft_mechanics::solve::Solution;
 use layshaft_mechanics::values::FieldValue;
@@ -295,11 +295,15 @@ impl Solved {
                 && let Some(span) = spans.and_then(|spans| spans.get(part))
             {
                 let place = eval.place(drive, *span);
+                eval.remark_reported(crate::say::note(how));
                 eval.report(Diagnostic::new(Code::BadChain, place, crate::say::note(how)));
                 continue;
             }
             let owner = fault.part.and_then(|part| self.items.get(part)).copied().unwrap_or(drive);
-            crate::faults::report(eval, owner, fault);
+            if let Some(found) = crate::faults::cook(eval, owner, fault) {
+                eval.remark_reported(found.message.clone());
+                eval.report(found);
+            }
         }
     }
 
@@ -337,6 +341,23 @@ impl Solved {
         crate::fields::quantity(f64::INFINITY, kind)
     }
 
+    /// The kind of a result whose value is not to be had; none for flags and words.
+    pub fn unknown(&self, station: &crate::eval::Station) -> Option<Datum> {
+        let motion = || {
+            let part = match station.part {
+                Some(part) => Some(self.items.iter().position(|item| *item == part)?),
+                None => None,
+            };
+            self.solution.as_ref()?.motion(part, station.port)
+        };
+        match station.shape {
+            ResultShape::Quantity(kind) => crate::eval::unknown(kind),
+            ResultShape::Speed => crate::eval::unknown(motion()?.speed_kind()),
+            ResultShape::Effort => crate::eval::unknown(motion()?.effort_kind()),
+            _ => None,
+        }
+    }
+
     /// Whether a station runs straight.
     pub fn is_linear(&self, part: Option<usize>, port: Option<Port>) -> Option<bool> {
         let motion = self.solution.as_ref()?.motion(part, port)?;
@@ -348,7 +369,7 @@ impl Solved {
         let fault = faults.first()?;
         let owner = fault.part.and_then(|part| self.items.get(part)).copied();
         let found = crate::faults::cook(eval, owner?, fault)?;
-        eval.remark(found.message);
+        eval.remark_reported(found.message);
         None
     }
 }

@@ -5,7 +5,8 @@ use layshaft_units::Type;
 /// A number with its kind.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Quantity {
-    /// SI value, always finite.
+    /// SI value: finite in every analysis; infinite for a result that grows above every limit. Within the evaluation
+    /// alone, not a number for a value that is unknown though its kind is known.
     pub si: f64,
     /// Dimension, angle state, tag and scale.
     pub ty: Type,
@@ -15,6 +16,18 @@ pub struct Quantity {
     pub confidence: Option<f64>,
     /// The unit it was written in or is best shown in, canonical spelling.
     pub unit: Option<Box<str>>,
+}
+
+impl Quantity {
+    /// A quantity of a known kind whose value is not to be had; the reason has been reported.
+    pub(crate) fn unknown(ty: Type) -> Self {
+        Self { si: f64::NAN, ty, limits: None, confidence: None, unit: None }
+    }
+
+    /// Whether there is a value.
+    pub(crate) fn is_known(&self) -> bool {
+        !self.si.is_nan()
+    }
 }
 
 /// A value.
@@ -28,4 +41,14 @@ pub enum Datum {
     Word(Box<str>),
     /// A text.
     Text(Box<str>),
+}
+
+impl Datum {
+    /// The value, unless only its kind is known.
+    pub(crate) fn known(self) -> Option<Self> {
+        match self {
+            Self::Quantity(quantity) if !quantity.is_known() => None,
+            datum => Some(datum),
+        }
+    }
 }

@@ -214,3 +214,29 @@ require \"5\" pumping.motor.torque <= 50 N·m at pumping.power = 300 W   #! wron
     let measure = analysis.criteria[0].outcomes[0].measure.as_ref().expect("a measure");
     assert!((measure.margin - (2.0 - 4.5 / 1.9) / 2.0).abs() < 1e-9, "{measure:?}");
 }
+
+#[test]
+fn the_kind_of_a_value_outlives_the_value() {
+    // The supply is misspelled, so nothing is solved; the limit without a unit is a mistake of its own.
+    check(
+        "supply pack: battery { open_circuit_voltage = 36 V; resistance = 50 mΩ }
+source motor: dc_motor { supply = pak; torque_constant = 0.11 N·m/A; resistance = 0.2 ohm }   #! unknown-name
+load w: constant { torque = 2 N·m }
+drive d = motor -> w
+require \"1\" d.motor.current <= 20   #! missing-unit
+require \"2\" d.motor.current <= 20 A",
+    );
+    check("let a: torque = 5 foo  #! unknown-unit\nlet b = a + 3 s  #! kind-mismatch\nlet c = a + 3 N·m");
+    check(&with(
+        "require \"1\" pumping.motor.speed >= 1450 min-1   #! kind-mismatch: this reads as min less 1",
+    ));
+}
+
+#[test]
+fn multiples_of_a_rated_value_are_values() {
+    check(
+        "source s: servo { rated_torque = 4 N·m; rated_speed = 3000 rpm; max_speed = 4000 rpm; peak_torque = 3 × rated; braking = into_resistor; inertia = 0.001 kg·m² }
+let t: torque = s.peak_torque
+let e: energy = s.peak_torque   #! kind-mismatch",
+    );
+}

@@ -43,7 +43,7 @@ fn one_mistake_one_message() {
     check(
         "let a = 5 foo  #! unknown-unit
 let b: torque = a * 2
-let c = b + 3 s",
+let c = b + 3 N·m",
     );
     check("let x = y + z  #! unknown-name: `y` | unknown-name: `z`");
 }

@@ -16,7 +16,7 @@ use layshaft_syntax::{At, BinaryOp, Expr, ExprKind, ItemKind, UnaryOp};
 
 use crate::analysis::{CriterionOutcome, CriterionRecord, Measure, Verdict};
 use crate::cases::State;
-use crate::eval::{Eval, Reading, Shared};
+use crate::eval::{Eval, Reading, Remark, Shared};
 use crate::world::ItemRef;
 
 /// Judges every criterion. States that only a scope names (`plain with { … }`) are added to `extra`.
@@ -100,7 +100,7 @@ fn outcome(state: &State<'_>, at: ItemRef, condition: &Expr, asked: Option<&At>)
         None => Verdict::NotJudged,
     };
     if verdict == Verdict::NotJudged
-        && let Some(why) = &remark
+        && let Some(Remark { why, reported: false }) = &remark
     {
         let place = eval.place(at, condition.span);
         let message = format!("not judged in `{}`: {why}", state.label);
@@ -108,7 +108,7 @@ fn outcome(state: &State<'_>, at: ItemRef, condition: &Expr, asked: Option<&At>)
     }
     let remark = match (verdict, remark) {
         (Verdict::NotJudged, None) => Some("an error in the spec stands in the way".to_owned()),
-        (_, remark) => remark,
+        (_, remark) => remark.map(|remark| remark.why),
     };
     CriterionOutcome {
         case: state.case,

@@ -60,10 +60,11 @@ fn shown(
             }
         }
     }
+    let found = found.and_then(Datum::known);
     ShowOutcome {
         case: state.case,
         gear: state.gear.as_ref().map(ToString::to_string),
         value: found,
-        remark: eval.take_remark(),
+        remark: eval.take_remark().map(|remark| remark.why),
     }
 }

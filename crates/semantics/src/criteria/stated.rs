@@ -7,7 +7,7 @@ use layshaft_syntax::{At, BinaryOp, Expr, ExprKind, Path, ValueKind};
 
 use super::{Judged, judged};
 use crate::eval::{Ask, Eval, Reading};
-use crate::quantity::Datum;
+use crate::quantity::{Datum, Quantity};
 use crate::world::{Declared, ItemRef};
 
 /// At a stated speed, or at the worst place of a range of speeds.
@@ -22,7 +22,9 @@ pub(super) fn judged_at(eval: &Eval<'_>, at: ItemRef, condition: &Expr, asked: &
             .and_then(|found| found.limits.map(|(low, high)| (found, low, high))),
         _ => None,
     };
-    let Some((found, low, high)) = speeds else { return Judged::default() };
+    let Some((found, low, high)) = speeds.filter(|(found, ..)| found.is_known()) else {
+        return Judged::default();
+    };
     let wanted = station.kind();
     if eval.demand(found, wanted, at, asked.value.span).is_none() {
         return Judged::default();
@@ -187,7 +189,7 @@ pub(super) fn stated(eval: &Eval<'_>, at: ItemRef, value: &Expr, asked: &At) -> 
         eval.report(Diagnostic::new(Code::WrongValue, eval.place(at, asked.value.span), message));
         return None;
     };
-    let found = eval.quantity(expr, Reading::plain(at))?;
+    let found = eval.quantity(expr, Reading::plain(at)).filter(Quantity::is_known)?;
     let found = eval.demand(found, station.kind(), at, expr.span)?;
     let ask = Ask { drive, speed: StatedSpeed { part: station.part, port: station.port, speed: found.si } };
     eval.datum(value, Reading { ask: Some(&ask), ..Reading::plain(at) })

@@ -29,6 +29,9 @@ impl Eval<'_> {
             return self.equality(op, equal, left.span.cover(right.span), reading);
         }
         let (a, b) = self.operands(left, right, reading)?;
+        if !(a.is_known() && b.is_known()) {
+            return None;
+        }
         Some(match op {
             CompareOp::Less => a.si < b.si,
             CompareOp::LessEqual => a.si <= b.si,

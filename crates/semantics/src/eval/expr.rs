@@ -164,6 +164,11 @@ impl Eval<'_> {
             _ => layshaft_units::divide(&a.ty, &b.ty),
         };
         let span = left.span.cover(right.span);
+        if let (BinaryOp::Subtract, Err(_)) = (op, &ty)
+            && self.is_written_power(left, right, reading)
+        {
+            return None;
+        }
         let ty = self.allowed(ty, reading, if adds { span } else { op_span })?;
         if !adds {
             self.hint_factor(left, &b, reading);
@@ -175,6 +180,9 @@ impl Eval<'_> {
             BinaryOp::Multiply => a.si * b.si,
             _ => a.si / b.si,
         };
+        if !(a.is_known() && b.is_known()) {
+            return Some(Quantity::unknown(ty));
+        }
         let unit = match op {
             BinaryOp::Add | BinaryOp::Subtract => a.unit.or(b.unit),
             BinaryOp::Multiply if b.ty.is_plain_number() => a.unit,
@@ -183,6 +191,30 @@ impl Eval<'_> {
             _ => None,
         };
         self.finite(Quantity { si, ty, limits: None, confidence: None, unit }, reading, span)
+    }
+
+    /// `1450 min-1`, a power written without its sign: says so, and whether it was that.
+    fn is_written_power(&self, left: &Expr, right: &Expr, reading: Reading<'_>) -> bool {
+        let (ExprKind::Quantity { unit: Some(unit), .. }, ExprKind::Quantity { number, unit: None }) =
+            (&left.kind, &right.kind)
+        else {
+            return false;
+        };
+        let tight = right.span.start == left.span.end + 1 && number.text.len() == 1;
+        if !tight {
+            return false;
+        }
+        let power = format!("{}^-{}", unit.text, number.text);
+        let Ok(meant) = layshaft_units::parse_unit(&power) else { return false };
+        let place = self.place(reading.at, unit.span.cover(right.span));
+        let message = format!("this reads as {} less {}", unit.text, number.text);
+        let text = meant.text;
+        self.report(Diagnostic::new(Code::KindMismatch, place, message).fix(
+            format!("write `{text}`"),
+            place,
+            text,
+        ));
+        true
     }
 
     /// A hint where a plain factor beside a quantity looks like a conversion by hand.
@@ -223,6 +255,9 @@ impl Eval<'_> {
         let e = self.quantity(exponent, reading.wanting(None))?;
         let constant = is_constant_exponent(exponent).then_some(e.si);
         let ty = self.allowed(layshaft_units::raise(&a.ty, &e.ty, constant), reading, expr.span)?;
+        if !(a.is_known() && e.is_known()) {
+            return Some(Quantity::unknown(ty));
+        }
         let si = libm::pow(a.si, e.si);
         self.finite(Quantity { si, ty, limits: None, confidence: None, unit: None }, reading, expr.span)
     }
@@ -261,6 +296,9 @@ impl Eval<'_> {
         let found: Vec<Quantity> = found.into_iter().collect::<Option<_>>()?;
         let types: Vec<_> = found.iter().map(|value| value.ty).collect();
         let ty = self.allowed(layshaft_units::apply(function, &types), reading, expr.span)?;
+        if !found.iter().all(Quantity::is_known) {
+            return Some(Datum::Quantity(Quantity::unknown(ty)));
+        }
         let numbers: Vec<_> = found.iter().map(|value| value.si).collect();
         let Some(si) = function.evaluate(&numbers) else {
             let message = format!("`{}` has no value here", name.text);

@@ -25,7 +25,7 @@ use crate::world::{ItemRef, World};
 
 pub(crate) use compare::compare_words;
 pub(crate) use expr::is_literal;
-pub(crate) use path::{Station, is_constant};
+pub(crate) use path::{Station, is_constant, unknown};
 
 /// A place that a case can override.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -99,7 +99,14 @@ pub(crate) struct Eval<'w> {
     /// What is being computed right now, outermost first: a name met twice is a cycle.
     stack: RefCell<Vec<(Box<str>, FileSpan)>>,
     /// Why the last result asked for is not there, in words.
-    remark: RefCell<Option<String>>,
+    remark: RefCell<Option<Remark>>,
+}
+
+/// Why a result is not there.
+pub(crate) struct Remark {
+    pub why: String,
+    /// Whether a finding says so already.
+    pub reported: bool,
 }
 
 impl<'w> Eval<'w> {
@@ -125,11 +132,16 @@ impl<'w> Eval<'w> {
 
     /// Notes why a result is not there; the first reason stands.
     pub fn remark(&self, why: String) {
-        self.remark.borrow_mut().get_or_insert(why);
+        self.remark.borrow_mut().get_or_insert(Remark { why, reported: false });
+    }
+
+    /// Notes a reason that a finding gives already.
+    pub fn remark_reported(&self, why: String) {
+        self.remark.borrow_mut().get_or_insert(Remark { why, reported: true });
     }
 
     /// Takes the reason noted since the last call.
-    pub fn take_remark(&self) -> Option<String> {
+    pub fn take_remark(&self) -> Option<Remark> {
         self.remark.borrow_mut().take()
     }
 
@@ -196,6 +208,11 @@ impl<'w> Eval<'w> {
 
     /// The value of a `let`.
     pub fn let_value(&self, at: ItemRef) -> Option<Datum> {
+        self.let_typed(at)?.known()
+    }
+
+    /// The same, of a known kind where the value is not to be had.
+    pub(super) fn let_typed(&self, at: ItemRef) -> Option<Datum> {
         let world = self.shared.world;
         let ItemKind::Let { name, kind, value } = &world.tree(at).kind else { return None };
         let slot = Slot::Let(at);
@@ -211,10 +228,11 @@ impl<'w> Eval<'w> {
                     return None;
                 }
                 let wanted = wanted.flatten();
-                match self.overlay.get(&slot) {
+                let found = match self.overlay.get(&slot) {
                     Some(given) => self.value_of(given, Some(&slot), wanted),
                     None => self.value_of(&Given { at, entry: no_entry(), value }, None, wanted),
-                }
+                };
+                found.or_else(|| wanted.map(|kind| Datum::Quantity(Quantity::unknown(kind.ty()))))
             },
         )
     }

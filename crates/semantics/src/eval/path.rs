@@ -2,7 +2,7 @@
 
 use layshaft_diagnostics::{Code, Diagnostic};
 use layshaft_mechanics::drive::Port;
-use layshaft_mechanics::registry::{self, ResultRow};
+use layshaft_mechanics::registry::{self, ResultRow, ResultShape, Shape};
 use layshaft_mechanics::solution::Answer;
 use layshaft_syntax::Path;
 use layshaft_units::Type;
@@ -25,6 +25,12 @@ pub(crate) struct Station {
     pub part: Option<ItemRef>,
     pub port: Option<Port>,
     pub result: Box<str>,
+    pub shape: ResultShape,
+}
+
+/// A value of which only the kind is known.
+pub(crate) fn unknown(kind: &str) -> Option<Datum> {
+    Some(Datum::Quantity(Quantity::unknown(layshaft_units::kind(kind)?.ty())))
 }
 
 impl Eval<'_> {
@@ -37,9 +43,9 @@ impl Eval<'_> {
         match (declared, rest) {
             (Declared::Let, []) => {
                 if reading.own == Some(&Slot::Let(at)) {
-                    return self.plain.as_ref()?.let_value(at);
+                    return self.plain.as_ref()?.let_typed(at);
                 }
-                self.let_value(at)
+                self.let_typed(at)
             }
             (Declared::Part, [field]) => self.part_field(path, at, &field.text, reading),
             (Declared::Part, []) => {
@@ -114,11 +120,11 @@ impl Eval<'_> {
         if reading.own == Some(&Slot::Field(at, (field.into(), None))) {
             return self.plain.as_ref()?.field(at, &slot);
         }
-        if self.given(at, &slot).is_some() {
-            return self.field(at, &slot);
-        }
         let part = self.shared.parts.get(&at)?;
         let row = part.row?;
+        if self.given(at, &slot).is_some() {
+            return self.given_field(path, at, &slot, reading);
+        }
         let built = self.built(at)?;
         if let Some(datum) = built.given_result(field) {
             return Some(datum);
@@ -155,6 +161,30 @@ impl Eval<'_> {
         None
     }
 
+    /// A field that is given: its value, or its kind where the value is not to be had.
+    fn given_field(
+        &self,
+        path: &Path,
+        at: ItemRef,
+        slot: &crate::defs::SlotName,
+        reading: Reading<'_>,
+    ) -> Option<Datum> {
+        let field = self.shared.parts.get(&at)?.field(&slot.0)?;
+        match field.shape {
+            Shape::Quantity(kind) | Shape::OfRated(kind) | Shape::Interval(kind) => {
+                let found = self.field(at, slot).or_else(|| crate::fields::rated_value(self, at, slot));
+                found.or_else(|| unknown(kind))
+            }
+            Shape::Flag | Shape::Choice(_) | Shape::Part(_) => self.field(at, slot),
+            _ => {
+                // `reduction` of a gear given by its teeth is a result, the teeth are not a number.
+                let message = format!("`{}` is not a single value", path_text(path));
+                self.report(Diagnostic::new(Code::KindMismatch, self.place(reading.at, path.span), message));
+                None
+            }
+        }
+    }
+
     fn drive_path(&self, path: &Path, at: ItemRef, used: usize, reading: Reading<'_>) -> Option<Datum> {
         if let [setting] = &path.names[used..]
             && registry::DRIVE_FIELDS.iter().any(|field| field.name == &*setting.text)
@@ -168,16 +198,19 @@ impl Eval<'_> {
         }
         let station = self.station(path, at, used, reading.at)?;
         let solved = self.solved(at);
-        let answer = solved.answer(self, &station, reading.ask.filter(|ask| ask.drive == at))?;
+        let answer = solved.answer(self, &station, reading.ask.filter(|ask| ask.drive == at));
+        let Some(answer) = answer else { return solved.unknown(&station) };
         if let Answer::Unbounded(note) = &answer {
             self.remark(crate::say::note(note));
             return solved.unbounded(&station);
         }
         if let Answer::Refused(faults) = &answer {
             solved.report(self, at, faults);
-            return None;
+            return solved.unknown(&station);
         }
-        self.answer(path, answer, reading)
+        let absent = matches!(answer, Answer::Absent(_));
+        let found = self.answer(path, answer, reading);
+        if absent { solved.unknown(&station) } else { found }
     }
 
     fn setting(
@@ -271,8 +304,9 @@ impl Eval<'_> {
                 row.results.iter().chain(registry::common_results(def.role)).collect()
             }
         };
-        if known.iter().any(|row| row.name == &*result.text) {
-            return Some(Station { part, port, result: result.text.clone() });
+        if let Some(row) = known.iter().find(|row| row.name == &*result.text) {
+            let shape = row.shape;
+            return Some(Station { part, port, result: result.text.clone(), shape });
         }
         let place = self.place(at, result.span);
         let whose = match part {

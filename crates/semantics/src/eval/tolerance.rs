@@ -38,6 +38,9 @@ impl Eval<'_> {
             let t = self.difference(tolerance, &a, reading)?;
             t.si
         };
+        if !a.is_known() || half.is_nan() {
+            return Some(Quantity::unknown(a.ty));
+        }
         if !(half >= 0.0 && half.is_finite()) {
             let message = "a tolerance is written without a sign, `±` says both";
             self.report(Diagnostic::new(Code::WrongValue, self.place(reading.at, tolerance.span), message));
@@ -116,6 +119,9 @@ impl Eval<'_> {
             self.report(Diagnostic::new(Code::KindMismatch, place, refusal.message()));
             return None;
         }
+        if !a.is_known() || !span.is_known() {
+            return Some(Quantity::unknown(a.ty));
+        }
         let (low, high) = span.limits?;
         if !(low..=high).contains(&a.si) {
             let message = "the value lies outside its own limits";
@@ -150,6 +156,9 @@ impl Eval<'_> {
                 return None;
             }
         };
+        if !(a.is_known() && b.is_known()) {
+            return Some(Quantity::unknown(ty));
+        }
         if a.si > b.si {
             let message = "the lower end of the range lies above the upper end";
             self.report(

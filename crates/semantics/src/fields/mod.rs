@@ -181,9 +181,14 @@ pub(crate) fn rated_value(eval: &Eval<'_>, at: ItemRef, slot: &SlotName) -> Opti
     let built = eval.built(at)?;
     let FieldValue::OfRated(times) = built.values.get(&slot.0)? else { return None };
     let ty = layshaft_units::kind(kind)?.ty();
-    let rated = built.given.iter().find_map(|(name, datum)| match datum {
+    let given = built.given.iter().find_map(|(name, datum)| match datum {
         Datum::Quantity(found) if name.starts_with("rated_") && found.ty == ty => Some(found.si),
         _ => None,
+    });
+    let rated = given.or_else(|| {
+        let mut fields = part.row?.fields.iter();
+        let field = fields.find(|f| f.name.starts_with("rated_") && f.shape == Shape::Quantity(kind))?;
+        built.values.si(field.name)
     })?;
     quantity(times * rated, kind)
 }

@@ -54,6 +54,11 @@ impl Reader<'_, '_> {
         Diagnostic::new(code, self.eval.place(self.given.at, self.given.value.span), message)
     }
 
+    /// A quantity with a value.
+    fn known(&self, expr: &Expr) -> Option<Quantity> {
+        self.eval.quantity(expr, self.reading()).filter(Quantity::is_known)
+    }
+
     fn expr(&self) -> Option<&Expr> {
         match &self.given.value.kind {
             ValueKind::Expr(expr) => Some(expr),
@@ -65,7 +70,7 @@ impl Reader<'_, '_> {
         let kind = self.set_speed_of_a_load().unwrap_or(kind);
         let datum = self.eval.value_of(self.given, Some(self.slot), Some(kind))?;
         let Datum::Quantity(found) = &datum else { return None };
-        if !self.in_range(found, kind) {
+        if !found.is_known() || !self.in_range(found, kind) {
             return None;
         }
         Some(FieldRead { value: FieldValue::Si(found.si), datum: Some(datum), link: None })
@@ -123,7 +128,7 @@ impl Reader<'_, '_> {
         let Some(multiple) = self.expr().and_then(rated_multiple) else { return self.quantity(kind) };
         let times = match multiple {
             Some(expr) => {
-                let found = self.eval.quantity(expr, self.reading())?;
+                let found = self.known(expr)?;
                 if !found.ty.is_plain_number() {
                     let message = format!("`rated` is multiplied by {}", found.ty.describe());
                     self.eval.report(
@@ -147,7 +152,7 @@ impl Reader<'_, '_> {
     fn interval(&self, kind: &'static Kind) -> Option<FieldRead> {
         let datum = self.eval.value_of(self.given, Some(self.slot), Some(kind))?;
         let Datum::Quantity(found) = &datum else { return None };
-        if !self.in_range(found, kind) {
+        if !found.is_known() || !self.in_range(found, kind) {
             return None;
         }
         let (low, high) = found.limits.unwrap_or((found.si, found.si));
@@ -253,7 +258,7 @@ impl Reader<'_, '_> {
 
     fn wheel(&self, expr: &Expr, diameters: bool) -> Option<f64> {
         let kind = layshaft_units::kind(if diameters { "length" } else { "number" })?;
-        let found = self.eval.quantity(expr, self.reading())?;
+        let found = self.known(expr)?;
         let found = self.eval.demand(found, kind, self.given.at, expr.span)?;
         let whole = diameters || (found.si - found.si.round()).abs() < 1e-9;
         if found.si > 0.0 && whole {
@@ -291,7 +296,7 @@ impl Reader<'_, '_> {
                 driven? / driver?
             }
             ValueKind::Ratio { word, value } => {
-                let found = self.eval.quantity(value, self.reading())?;
+                let found = self.known(value)?;
                 let number = layshaft_units::kind("number")?;
                 let found = self.eval.demand(found, number, self.given.at, value.span)?;
                 if !(found.si > 0.0 && found.si.is_finite()) {
@@ -330,7 +335,7 @@ impl Reader<'_, '_> {
         let number = match value {
             Some(expr) => {
                 let kind = layshaft_units::kind(if class == 2 { "time" } else { "number" })?;
-                let found = self.eval.quantity(expr, self.reading())?;
+                let found = self.known(expr)?;
                 Some((self.eval.demand(found, kind, self.given.at, expr.span)?.si, expr.span))
             }
             None => None,

@@ -12,6 +12,7 @@ use layshaft_units::Unit;
 
 use crate::defs::Given;
 use crate::eval::{Eval, Reading};
+use crate::quantity::Quantity;
 use crate::world::ItemRef;
 
 /// How many rows a CSV file may have.
@@ -89,7 +90,7 @@ impl Reader<'_, '_> {
         for pair in pairs {
             let mut row = BTreeMap::new();
             for expr in &pair.values {
-                let found = self.eval.quantity(expr, Reading::plain(self.at))?;
+                let found = self.eval.quantity(expr, Reading::plain(self.at)).filter(Quantity::is_known)?;
                 let fits = |column: &&ColumnRow| {
                     !row.contains_key(column.name)
                         && layshaft_units::kind(column.kind)
@@ -218,7 +219,7 @@ impl Reader<'_, '_> {
         let columns = heads.iter().map(|(row, _)| (row.name, Vec::new())).collect();
         let mut at = Vec::new();
         for expr in conditions {
-            let found = self.eval.quantity(expr, Reading::plain(self.at))?;
+            let found = self.eval.quantity(expr, Reading::plain(self.at)).filter(Quantity::is_known)?;
             let kind = CONDITIONS.iter().find(|name| {
                 layshaft_units::kind(name).is_some_and(|kind| layshaft_units::demand(&found.ty, kind).is_ok())
             });

@@ -9,7 +9,7 @@ use crate::kinds::fields::{
 use crate::kinds::reading::{braking, contradiction, done, inertia, missing};
 use crate::laws::servo_envelope::{self as law, Envelope};
 use crate::model::{Characteristic, Feed, Known, Model, Motion, Ratings, Source, SourceState};
-use crate::registry::{Field, KindRow, Need, Role};
+use crate::registry::{Field, KindRow, Need, Role, Shape};
 use crate::values::{Duty, Values};
 
 /// The row.
@@ -35,13 +35,16 @@ pub static ROW: KindRow = KindRow {
 
 static FIELDS: &[Field] = &[
     SUPPLY_IF_ANY,
-    positive(
-        "peak_torque",
-        "torque",
-        Need::Required,
-        range(1e-3, 1e6),
-        "most torque, for seconds, up to its speed",
-    ),
+    Field {
+        shape: Shape::OfRated("torque"),
+        ..positive(
+            "peak_torque",
+            "torque",
+            Need::Required,
+            range(1e-3, 1e6),
+            "most torque, for seconds, up to its speed; also as a multiple of the rated torque",
+        )
+    },
     Field { need: Need::Required, ..RATED_TORQUE },
     positive(
         "rated_speed",
@@ -82,7 +85,8 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let inertia = inertia(values, &mut faults);
     let field = |name| values.si(name).unwrap_or(0.0);
-    let (peak, rated) = (field("peak_torque"), field("rated_torque"));
+    let rated = field("rated_torque");
+    let peak = values.of_rated("peak_torque", Some(rated)).unwrap_or(0.0);
     let (rated_speed, highest) = (field("rated_speed"), field("max_speed"));
     let corner = values.si("peak_torque_speed").unwrap_or(rated_speed);
     if peak < rated {
