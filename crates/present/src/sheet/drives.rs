@@ -31,9 +31,10 @@ pub(super) fn sheet_of(
     habits: &Habits,
     detail: Detail,
 ) -> DriveSheet {
-    let units = units(drive, habits);
-    let row = |case: &DriveCase| {
-        let mut row = Row { case, units: &units, habits, detail }.build();
+    let asked: Vec<Option<Asked<'_>>> = drive.cases.iter().map(Asked::new).collect();
+    let units = units(&asked, habits);
+    let row = |(case, asked): (&DriveCase, &Option<Asked<'_>>)| {
+        let mut row = Row { case, units: &units, habits, detail }.build(asked.as_ref());
         row.label = label(analysis, case.case, case.gear.as_deref());
         row.governs = governs(criteria, case);
         row
@@ -42,7 +43,7 @@ pub(super) fn sheet_of(
         name: drive.name.clone(),
         chain: drive.cases.iter().find_map(|case| case.spec.as_deref()).map_or_else(String::new, chain_text),
         docs: drive.docs.clone(),
-        rows: drive.cases.iter().map(row).collect(),
+        rows: drive.cases.iter().zip(&asked).map(row).collect(),
         units,
     }
 }
@@ -99,44 +100,69 @@ fn sources(spec: &DriveSpec) -> impl Iterator<Item = usize> {
     spec.parts.iter().enumerate().filter(|(_, part)| part.row.role == Role::Source).map(|(at, _)| at)
 }
 
-/// One unit a column, chosen by its largest number.
-fn units(drive: &DriveRecord, habits: &Habits) -> DriveUnits {
-    let solved =
-        || drive.cases.iter().filter_map(|case| Some((case.spec.as_deref()?, case.solution.as_deref()?)));
-    let unit = |answers: Vec<Answer>| {
-        let mut kind = None;
-        let mut values = Vec::new();
-        for answer in answers {
-            if let Answer::Quantity { si, kind: of, .. } = answer {
-                kind = kind.or(Some(of));
-                values.push(si);
+/// What the table asks of a solved drive, asked once: an answer may cost a search of a whole curve.
+struct Asked<'a> {
+    spec: &'a DriveSpec,
+    solution: &'a Solution,
+    speed: Answer,
+    sources: Vec<AskedSource>,
+}
+
+struct AskedSource {
+    part: usize,
+    speed: Answer,
+    effort: Answer,
+    power: Answer,
+    peak_power: Answer,
+    power_share: Answer,
+    current: Answer,
+}
+
+impl<'a> Asked<'a> {
+    fn new(case: &'a DriveCase) -> Option<Self> {
+        let (spec, solution) = case.spec.as_deref().zip(case.solution.as_deref())?;
+        let source = |part: usize| {
+            let ask = |name: &str| solution.answer(Some(part), None, name);
+            let torque = ask("torque");
+            AskedSource {
+                part,
+                speed: ask("speed"),
+                effort: if torque == Answer::NoSuch { ask("force") } else { torque },
+                power: ask("power"),
+                peak_power: ask("peak_power"),
+                power_share: ask("power_share"),
+                current: ask("current"),
             }
-        }
-        kind.map(|kind| habits.unit(kind, values)).unwrap_or_default()
-    };
-    let of_drive = |name: &str| solved().map(|(_, solution)| solution.answer(None, None, name)).collect();
-    let of_sources = |names: &[&str]| {
-        let answers = solved().flat_map(|(spec, solution)| {
-            sources(spec).map(move |at| first(solution, Some(at), names)).collect::<Vec<_>>()
-        });
-        answers.collect()
-    };
-    DriveUnits {
-        speed: unit(of_drive("speed")),
-        source_speed: unit(of_sources(&["speed"])),
-        effort: unit(of_sources(EFFORT)),
-        power: unit([of_sources(&["power"]), of_sources(&["peak_power"])].concat()),
-        current: unit(of_sources(&["current"])),
+        };
+        let sources = sources(spec).map(source).collect();
+        Some(Self { spec, solution, speed: solution.answer(None, None, "speed"), sources })
     }
 }
 
-/// Torque on rotary, force on linear motion.
-const EFFORT: &[&str] = &["torque", "force"];
+/// One unit a column, chosen by its largest number.
+fn units(asked: &[Option<Asked<'_>>], habits: &Habits) -> DriveUnits {
+    let solved = || asked.iter().flatten();
+    let sources = || solved().flat_map(|asked| &asked.sources);
+    DriveUnits {
+        speed: unit(solved().map(|asked| &asked.speed), habits),
+        source_speed: unit(sources().map(|source| &source.speed), habits),
+        effort: unit(sources().map(|source| &source.effort), habits),
+        power: unit(sources().flat_map(|source| [&source.power, &source.peak_power]), habits),
+        current: unit(sources().map(|source| &source.current), habits),
+    }
+}
 
-/// The first of these results that the part has.
-fn first(solution: &Solution, part: Option<usize>, names: &[&str]) -> Answer {
-    let mut answers = names.iter().map(|name| solution.answer(part, None, name));
-    answers.find(|answer| *answer != Answer::NoSuch).unwrap_or(Answer::NoSuch)
+/// The unit for the numbers among answers of one kind.
+fn unit<'a>(answers: impl Iterator<Item = &'a Answer>, habits: &Habits) -> String {
+    let mut kind = None;
+    let mut values = Vec::new();
+    for answer in answers {
+        if let Answer::Quantity { si, kind: of, .. } = answer {
+            kind = kind.or(Some(*of));
+            values.push(*si);
+        }
+    }
+    kind.map(|kind| habits.unit(kind, values)).unwrap_or_default()
 }
 
 struct Row<'a> {
@@ -147,27 +173,26 @@ struct Row<'a> {
 }
 
 impl Row<'_> {
-    fn build(&self) -> DriveRow {
-        let solved = self.case.spec.as_deref().zip(self.case.solution.as_deref());
-        let (outcome, moves) = match solved {
-            Some((_, solution)) => super::outcome::words(solution, &self.units.speed),
+    fn build(&self, asked: Option<&Asked<'_>>) -> DriveRow {
+        let unit = &self.units.speed;
+        let (outcome, moves) = match asked {
+            Some(asked) => super::outcome::words(asked.solution, unit),
             None => (String::from("not solved"), false),
         };
+        let limited_by = asked.map_or(Answer::NoSuch, |of| of.solution.answer(None, None, "limited_by"));
         DriveRow {
             case: self.case.case,
             label: String::new(),
             gear: self.case.gear.clone(),
-            solved: solved.is_some(),
+            solved: asked.is_some(),
             outcome,
             moves,
-            speed: solved
-                .map_or(Entry::None, |(_, of)| self.entry(of.answer(None, None, "speed"), &self.units.speed)),
-            limited_by: solved
-                .map_or(Entry::None, |(_, of)| self.entry(of.answer(None, None, "limited_by"), "")),
-            sources: solved.map_or_else(Vec::new, |(spec, of)| self.sources(spec, of)),
-            points: solved.map_or_else(Vec::new, |(_, of)| super::outcome::points(of, &self.units.speed)),
-            results: match (solved, self.detail) {
-                (Some((spec, of)), Detail::Everything) => self.everything(spec, of),
+            speed: asked.map_or(Entry::None, |of| self.entry(of.speed.clone(), unit)),
+            limited_by: self.entry(limited_by, ""),
+            sources: asked.map_or_else(Vec::new, |of| self.sources(of)),
+            points: asked.map_or_else(Vec::new, |of| super::outcome::points(of.solution, unit)),
+            results: match (asked, self.detail) {
+                (Some(of), Detail::Everything) => self.everything(of.spec, of.solution),
                 _ => Vec::new(),
             },
             faults: self.sentences(&self.case.faults),
@@ -175,27 +200,25 @@ impl Row<'_> {
         }
     }
 
-    fn sources(&self, spec: &DriveSpec, solution: &Solution) -> Vec<SourceRow> {
+    fn sources(&self, asked: &Asked<'_>) -> Vec<SourceRow> {
         let mut known = Vec::new();
-        counts(&spec.chain, &mut known);
-        let row = |at: usize| {
-            let ask = |names: &[&str], unit: &str| self.entry(first(solution, Some(at), names), unit);
-            SourceRow {
-                part: spec.parts[at].name.clone(),
-                count: known.iter().find(|(index, _)| *index == at).map_or(1, |(_, count)| *count),
-                speed: ask(&["speed"], &self.units.source_speed),
-                effort: ask(EFFORT, &self.units.effort),
-                power: ask(&["power"], &self.units.power),
-                peak_power: ask(&["peak_power"], &self.units.power),
-                power_share: ask(&["power_share"], "%"),
-                current: ask(&["current"], &self.units.current),
-                mode: ask(&["mode"], ""),
-            }
+        counts(&asked.spec.chain, &mut known);
+        let units = self.units;
+        let row = |source: &AskedSource| SourceRow {
+            part: asked.spec.parts[source.part].name.clone(),
+            count: known.iter().find(|(index, _)| *index == source.part).map_or(1, |(_, count)| *count),
+            speed: self.entry(source.speed.clone(), &units.source_speed),
+            effort: self.entry(source.effort.clone(), &units.effort),
+            power: self.entry(source.power.clone(), &units.power),
+            peak_power: self.entry(source.peak_power.clone(), &units.power),
+            power_share: self.entry(source.power_share.clone(), "%"),
+            current: self.entry(source.current.clone(), &units.current),
+            mode: self.entry(asked.solution.answer(Some(source.part), None, "mode"), ""),
         };
-        sources(spec).map(row).collect()
+        asked.sources.iter().map(row).collect()
     }
 
-    /// Every result of the drive and of every part, at the part itself and at both its sides.
+    /// Every result of the drive and of every part: at the usual side of each, and at the input of what has two.
     fn everything(&self, spec: &DriveSpec, solution: &Solution) -> Vec<PartResults> {
         let mut all = vec![PartResults {
             part: String::new(),
@@ -203,15 +226,12 @@ impl Row<'_> {
             results: self.answers(solution, None, None, registry::DRIVE_RESULTS.iter()),
         }];
         for (at, part) in spec.parts.iter().enumerate() {
-            let rows = || registry::common_results(part.row.role).iter().chain(part.row.results);
-            let mut push = |port: Option<Port>, word| {
-                let results = self.answers(solution, Some(at), port, rows());
-                all.push(PartResults { part: part.name.clone(), port: word, results });
-            };
-            push(None, None);
+            let common = registry::common_results(part.row.role).iter();
+            let results = self.answers(solution, Some(at), None, common.clone().chain(part.row.results));
+            all.push(PartResults { part: part.name.clone(), port: None, results });
             if part.row.role == Role::Transmission {
-                push(Some(Port::Input), Some("input"));
-                push(Some(Port::Output), Some("output"));
+                let results = self.answers(solution, Some(at), Some(Port::Input), common);
+                all.push(PartResults { part: part.name.clone(), port: Some("input"), results });
             }
         }
         all.retain(|part| !part.results.is_empty());

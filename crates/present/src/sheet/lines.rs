@@ -150,7 +150,7 @@ pub struct PointRow {
 pub struct PartResults {
     /// The part; empty for the drive itself.
     pub part: String,
-    /// The side, where the result is asked there: `input`, `output`.
+    /// `input` for results at the input of a part with two sides; none at its usual side, which is its output.
     pub port: Option<&'static str>,
     /// Name and answer.
     pub results: Vec<(&'static str, Entry)>,
