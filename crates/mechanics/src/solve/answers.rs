@@ -177,6 +177,11 @@ fn come_to(drive: &Assembly, path: &Path) -> Result<State, Answer> {
         return Err(Answer::Refused(vec![fault.clone()]));
     }
     if path.outcome == Outcome::Stalls {
+        if path.start > 0.0 && super::rest::about_to_move(drive, false, true).net > 0.0 {
+            return Err(absent(
+                "the engine does not pull the load up to its idle speed: its clutch would slip on and burn",
+            ));
+        }
         return Ok(at_rest(drive));
     }
     let Some(meet) = path.reached.and_then(|index| path.meets.get(index)) else {

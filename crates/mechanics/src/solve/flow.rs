@@ -60,34 +60,8 @@ pub(crate) fn flow<R: Real>(drive: &Assembly, x: R, back: bool, acting: &impl Ac
         sources: Vec::with_capacity(drive.sources.len()),
         loads: Vec::with_capacity(drive.loads.len()),
     };
-    for (index, source) in drive.sources.iter().enumerate() {
-        let effort = acting.source(index, x * drive.shafts[source.at.shaft].speed);
-        sums[source.at.shaft] = sums[source.at.shaft] + effort * source.at.count;
-        if source.at.shaft == drive.root {
-            out.driving = out.driving + effort * source.at.count;
-        }
-        out.sources.push(effort);
-    }
-    for (index, load) in drive.loads.iter().enumerate() {
-        let effort = acting.load(index, x * drive.shafts[load.at.shaft].speed);
-        sums[load.at.shaft] = sums[load.at.shaft] - effort * load.at.count;
-        out.loads.push(effort);
-    }
-    if let Some(acceleration) = acting.acceleration() {
-        for (sum, shaft) in sums.iter_mut().zip(&drive.shafts) {
-            *sum = *sum - acceleration * (shaft.inertia * shaft.speed);
-        }
-    }
-    let against = if back { -1.0 } else { 1.0 };
-    for (index, stage) in drive.stages.iter().enumerate() {
-        let shaft = stage.at.input;
-        let mut hold = R::of(against * acting.brake(index));
-        if let Some(drag) = &stage.drag {
-            hold = hold + (x * drive.shafts[shaft].speed).on(drag.as_ref()) * stage.at.count;
-        }
-        sums[shaft] = sums[shaft] - hold;
-        out.through[index].hold = hold;
-    }
+    hang(drive, x, acting, &mut sums, &mut out);
+    hold(drive, x, back, acting, &mut sums, &mut out);
     for index in &drive.order {
         let stage = &drive.stages[*index];
         let (from, to) = (stage.at.input, stage.at.output);
@@ -121,4 +95,47 @@ pub(crate) fn flow<R: Real>(drive: &Assembly, x: R, back: bool, acting: &impl Ac
     }
     out.net = sums[drive.root];
     out
+}
+
+/// What hangs on the shafts: sources, loads and, while the drive gains speed, inertias.
+fn hang<R: Real>(drive: &Assembly, x: R, acting: &impl Acting<R>, sums: &mut [R], out: &mut Flow<R>) {
+    for (index, source) in drive.sources.iter().enumerate() {
+        let effort = acting.source(index, x * drive.shafts[source.at.shaft].speed);
+        sums[source.at.shaft] = sums[source.at.shaft] + effort * source.at.count;
+        if source.at.shaft == drive.root {
+            out.driving = out.driving + effort * source.at.count;
+        }
+        out.sources.push(effort);
+    }
+    for (index, load) in drive.loads.iter().enumerate() {
+        let effort = acting.load(index, x * drive.shafts[load.at.shaft].speed);
+        sums[load.at.shaft] = sums[load.at.shaft] - effort * load.at.count;
+        out.loads.push(effort);
+    }
+    if let Some(acceleration) = acting.acceleration() {
+        for (sum, shaft) in sums.iter_mut().zip(&drive.shafts) {
+            *sum = *sum - acceleration * (shaft.inertia * shaft.speed);
+        }
+    }
+}
+
+/// Drags and brakes, at the inputs of the stages.
+fn hold<R: Real>(
+    drive: &Assembly,
+    x: R,
+    back: bool,
+    acting: &impl Acting<R>,
+    sums: &mut [R],
+    out: &mut Flow<R>,
+) {
+    let against = if back { -1.0 } else { 1.0 };
+    for (index, stage) in drive.stages.iter().enumerate() {
+        let shaft = stage.at.input;
+        let mut hold = R::of(against * acting.brake(index));
+        if let Some(drag) = &stage.drag {
+            hold = hold + (x * drive.shafts[shaft].speed).on(drag.as_ref()) * stage.at.count;
+        }
+        sums[shaft] = sums[shaft] - hold;
+        out.through[index].hold = hold;
+    }
 }

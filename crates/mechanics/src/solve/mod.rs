@@ -24,6 +24,7 @@ mod rest;
 mod roots;
 mod run_up;
 mod shafts;
+mod share;
 mod shared;
 mod source;
 mod state;

@@ -104,9 +104,9 @@ pub(crate) fn size(drive: &Assembly, x: f64) -> f64 {
 }
 
 /// All meetings above zero, or below.
-pub(crate) fn meets(drive: &Assembly, back: bool, from: f64) -> Meets {
+pub(crate) fn meets(drive: &Assembly, back: bool) -> Meets {
     let (near, far) = range(drive);
-    let (lo, hi) = if back { (-far, -near) } else { (f64::max(near, from), far) };
+    let (lo, hi) = if back { (-far, -near) } else { (near, far) };
     let net = Net { drive, back };
     let magnitude = |x: f64| size(drive, x);
     let task = Task { curve: &net, size: &magnitude };

@@ -41,11 +41,7 @@ impl<R: Real> Acting<R> for AtRest<'_> {
         if !self.powered {
             return R::of(0.0);
         }
-        // An idling engine pushes through its clutch with what it gives at idle.
-        match source.character.as_ref().and_then(|c| c.idle) {
-            Some(idle) => source.effort(R::of(idle)),
-            None => source.effort(speed),
-        }
+        source.effort(speed)
     }
 
     fn load(&self, index: usize, _: R) -> R {
@@ -82,9 +78,8 @@ pub(crate) fn path(drive: &Assembly) -> Path {
     let ahead = about_to_move(drive, false, true);
     let net = Net { drive, back: false };
     let (near, far) = range(drive);
-    let from = f64::max(start, near);
-    let forward = meets(drive, false, from);
-    let unsettled = forward.undecided.map(undecided);
+    let forward = meets(drive, false);
+    let unsettled = forward.undecided.map(|range| undecided(drive, range));
     let mut path = Path {
         outcome: Outcome::Stalls,
         back: false,
@@ -94,18 +89,24 @@ pub(crate) fn path(drive: &Assembly) -> Path {
         refused: Vec::new(),
         unsettled,
     };
-    if ahead.net > 0.0 && net.eval(from) > 0.0 {
+    if ahead.net > 0.0 && net.eval(near) > 0.0 {
         let alone = about_to_move(drive, false, false);
         let self_moving = alone.net > 0.0;
         if self_moving {
             path.refused = unknowns(drive, near, &alone);
         }
         path.reached = path.meets.iter().position(|m| m.crossing != Crossing::Rising);
+        let below_idle = path.reached.is_some_and(|index| path.meets[index].x < start * (1.0 - 1e-9));
         path.outcome = match (path.reached, self_moving) {
             (None, _) => Outcome::Runaway,
+            // The engine does not pull the load up to its idle speed: the clutch would slip on.
+            (Some(_), _) if below_idle => Outcome::Stalls,
             (Some(_), true) => Outcome::SelfMoving,
             (Some(_), false) => Outcome::Starts,
         };
+        if below_idle {
+            path.reached = None;
+        }
         if path.reached.is_none() {
             let end = flow(drive, far, false, &super::points::Full(drive));
             path.refused.extend(unknowns(drive, far, &end));
@@ -123,8 +124,8 @@ pub(crate) fn path(drive: &Assembly) -> Path {
 fn driven_back(drive: &Assembly, path: &mut Path, behind: &Flow<f64>) {
     let (near, far) = range(drive);
     path.refused = unknowns(drive, -near, behind);
-    let found = meets(drive, true, 0.0);
-    path.unsettled = path.unsettled.take().or(found.undecided.map(undecided));
+    let found = meets(drive, true);
+    path.unsettled = path.unsettled.take().or(found.undecided.map(|range| undecided(drive, range)));
     path.back = true;
     path.meets = found.all;
     path.reached = path.meets.iter().rposition(|m| m.crossing != Crossing::Rising);
@@ -135,9 +136,10 @@ fn driven_back(drive: &Assembly, path: &mut Path, behind: &Flow<f64>) {
     }
 }
 
-fn undecided((lo, hi): (f64, f64)) -> Fault {
+fn undecided(drive: &Assembly, (lo, hi): (f64, f64)) -> Fault {
+    let kind = drive.shafts[drive.root].motion.speed_kind();
     let template = "between {0} and {1} at the shaft of the source the bounds on the efforts did not settle whether \
                     there is an operating point";
-    let how = Note { template, quantities: vec![(lo, "rotational_speed"), (hi, "rotational_speed")] };
+    let how = Note { template, quantities: vec![(lo, kind), (hi, kind)] };
     Fault { part: None, kind: FaultKind::Unsettled { how } }
 }

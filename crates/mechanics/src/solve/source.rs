@@ -38,9 +38,14 @@ pub(crate) struct Governor {
 }
 
 impl SourceAt {
-    /// Effort at full command, bounded by the set speed.
+    /// Effort at full command, bounded by the set speed. Below its idle speed an engine idles on and pushes through
+    /// its slipping clutch with what it gives at idle.
     pub fn effort<R: Real>(&self, speed: R) -> R {
         let Some(character) = &self.character else { return R::of(0.0) };
+        let speed = match character.idle {
+            Some(idle) => speed.max(R::of(idle)),
+            None => speed,
+        };
         match self.governor {
             None => natural(character, speed),
             Some(Governor { speed: set, stiffness: None }) => speed.piecewise(&[set], |piece, speed| {

@@ -247,3 +247,36 @@ fn hanging_below_the_highest_point() {
     let hangs = number(&solution, None, "hangs_at").unwrap();
     near(hangs, number(&solution, None, "speed").unwrap(), 1e-15);
 }
+
+#[test]
+fn an_engine_starts_from_idle() {
+    let engine = &[("c0", 40.0), ("c1", -0.2), ("top_speed", 200.0), ("idle", 80.0), ("inertia", 0.5)];
+    let solution = Rig::new().source(engine).load(&[("c0", 10.0), ("inertia", 0.5)]).solved();
+    near(number(&solution, None, "speed").unwrap(), 150.0, 1e-12);
+    // From idle on: M = 1, 30 - 0.2 w, so t = ln(14 / 1.5) / 0.2 to 95 %.
+    near(number(&solution, None, "run_up_time").unwrap(), libm::log(14.0 / 1.5) / 0.2, 1e-9);
+    // At idle it gives 24: through the clutch that moves 20 from rest, not 26.
+    let moved = |weight| Rig::new().source(engine).load(&[("weight", weight)]).solved().outcome();
+    assert_eq!(moved(20.0), Some(Outcome::Starts));
+    assert_eq!(moved(26.0), Some(Outcome::Runaway));
+    // A fan that takes 30 at idle: the clutch slips on below it.
+    let fan = Rig::new().source(engine).load(&[("c2", 30.0 / 6400.0)]).solved();
+    assert_eq!(fan.outcome(), Some(Outcome::Stalls));
+    assert!(matches!(number(&fan, None, "speed"), Err(Answer::Absent(_))));
+}
+
+#[test]
+fn several_loads_on_a_shaft_and_a_reversing_stage_between() {
+    // A pump on the shaft and, through a reversing pair 1:2, a generator that counts its own sense.
+    let pair = values(&[("ratio", 0.5), ("forward", 0.8)]).with("reverses", FieldValue::Flag(true));
+    let mut rig = Rig::new().source(LINE).load(&[("c0", 5.0)]).stage_of(pair).load(&[("c0", 4.0)]);
+    let part = |index| crate::drive::Chain::Part { index, count: 1 };
+    let branch = crate::drive::Chain::Series(vec![part(2), part(3)]);
+    rig.spec.chain =
+        crate::drive::Chain::Series(vec![part(0), crate::drive::Chain::Joined(vec![part(1), branch])]);
+    let solution = rig.solved();
+    // 5 + 4 / (0.5 · 0.8) = 15 of 50 - 0.5 w.
+    near(number(&solution, Some(0), "speed").unwrap(), 70.0, 1e-12);
+    near(number(&solution, Some(3), "speed").unwrap(), 140.0, 1e-12);
+    near(number(&solution, Some(3), "torque").unwrap(), 4.0, 1e-12);
+}

@@ -1,7 +1,10 @@
 //! Operating points and their stability, as published.
 
+use crate::drive::{Chain, StatedSpeed};
 use crate::solution::{Outcome, Stability};
-use crate::solve::testing::{Rig, near, number};
+use crate::solve::solve_at;
+use crate::solve::testing::{Rig, near, number, values};
+use crate::values::FieldValue;
 
 /// Speeds and stability of all points.
 fn points(rig: &Rig) -> Vec<(f64, Stability)> {
@@ -100,4 +103,56 @@ fn constant_power_on_a_straight_line() {
     // At the most the source can give, the two merge; above, there is none.
     assert_eq!(points(&drive(625.0)).len(), 1);
     assert_eq!(points(&drive(626.0)).len(), 0);
+}
+
+/// G. K. Dubey, Fundamentals of Electrical Drives, 2nd ed., 2004, ex. 2.1: a load through a gear (0.1, 90 %) and a
+/// weight of 1000 kg hauled at 1.5 m/s (85 %) by one motor at 1420 rpm; g = 9.81. Equivalent torque 117.53 N·m, and
+/// inertia 0.4018 kg·m² by kinetic energy.
+#[test]
+fn two_loads_referred_to_one_motor() {
+    let speed = 1420.0 * std::f64::consts::PI / 30.0;
+    let winch = values(&[("ratio", speed / 1.5), ("forward", 0.85), ("backward", 0.85)])
+        .with("linear", FieldValue::Flag(true));
+    let weight =
+        values(&[("weight", 1000.0 * 9.81), ("inertia", 1000.0)]).with("linear", FieldValue::Flag(true));
+    let mut rig = Rig::new()
+        .source(&[("c0", 200.0), ("top_speed", speed), ("inertia", 0.2), ("brake_effort", 0.0)])
+        .stage(&[("ratio", 10.0), ("forward", 0.9), ("backward", 0.9)])
+        .load(&[("c0", 10.0), ("inertia", 10.0)])
+        .stage_of(winch)
+        .load_of(weight);
+    let part = |index| Chain::Part { index, count: 1 };
+    let (gear, haul) = (Chain::Series(vec![part(1), part(2)]), Chain::Series(vec![part(3), part(4)]));
+    rig.spec.chain = Chain::Series(vec![part(0), Chain::Joined(vec![gear, haul])]);
+    let stated = StatedSpeed { part: Some(0), port: None, speed };
+    let solution = solve_at(&rig.spec, stated).unwrap();
+    near(number(&solution, Some(0), "torque").unwrap(), 117.530_248_854, 1e-10);
+    let inertia: f64 = solution.drive.shafts.iter().map(|s| s.inertia * s.speed * s.speed).sum();
+    near(inertia, 0.401_753_321_204, 1e-10);
+}
+
+/// The same book, ex. 10.2: four motors of 5000 N·m, gear 0.25 at 98 %, wheels of 0.54 m, a train of 100 t whose
+/// rotating parts add a tenth, 25 N/t and a grade of 50 per mille (taken as rise over way), g = 9.81: 32.63 s to
+/// 100 km/h. The book counts no loss on the accelerating force of the rotating parts, nor does this model of one mass.
+#[test]
+fn a_train_uphill() {
+    let mass = 100e3;
+    let wheel = values(&[("ratio", 1.0 / (0.25 * 0.54)), ("forward", 0.98), ("backward", 0.98)])
+        .with("linear", FieldValue::Flag(true));
+    let train = values(&[("weight", mass * 9.81 * 0.05), ("c0", 25.0 * 100.0), ("inertia", 1.1 * mass)])
+        .with("linear", FieldValue::Flag(true));
+    let end = 100.0 / 3.6;
+    let mut rig = Rig::new()
+        .source(&[("c0", 5000.0), ("top_speed", 300.0), ("inertia", 0.0), ("brake_effort", 0.0)])
+        .stage_of(wheel)
+        .load_of(train);
+    rig.spec.chain = Chain::Series(vec![
+        Chain::Part { index: 0, count: 4 },
+        Chain::Part { index: 1, count: 1 },
+        Chain::Part { index: 2, count: 1 },
+    ]);
+    rig.spec.settings.set_speed = Some(StatedSpeed { part: None, port: None, speed: end });
+    rig.spec.settings.run_up_to = 1.0;
+    let solution = rig.solved();
+    near(number(&solution, None, "run_up_time").unwrap(), 32.632_557_403_6, 1e-6);
 }

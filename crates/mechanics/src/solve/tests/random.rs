@@ -37,7 +37,7 @@ proptest! {
     fn no_operating_point_is_missed(rig in drives()) {
         let drive = Assembly::new(&rig.spec).unwrap();
         let net = Net { drive: &drive, back: false };
-        let found = crate::solve::points::meets(&drive, false, 0.0);
+        let found = crate::solve::points::meets(&drive, false);
         prop_assert!(found.undecided.is_none());
         let (near, _) = range(&drive);
         let steps: usize = 12_000;
