@@ -21,7 +21,10 @@ pub(super) fn drive(drive: &DriveSheet, options: &Options) -> String {
         );
         out.push('\n');
     }
-    out.push_str(&table(drive).render(options.width, style));
+    // What a case governs stands in the table of criteria too: it goes first where the terminal is narrow.
+    let full = table(drive, true);
+    let grid = if full.fits(options.width) { full } else { table(drive, false) };
+    out.push_str(&grid.render(options.width, style));
     out.push_str(&points(drive, options));
     out.push_str(&unbounded(drive, options));
     out
@@ -34,8 +37,8 @@ struct Source {
     cell: fn(&DriveRow, Option<&SourceRow>, first: bool) -> Cell,
 }
 
-fn table(drive: &DriveSheet) -> Grid {
-    let columns: Vec<Source> = columns(drive);
+fn table(drive: &DriveSheet, governs: bool) -> Grid {
+    let columns: Vec<Source> = columns(drive, governs);
     let mut grid = Grid::default();
     for row in &drive.rows {
         let sources: Vec<Option<&SourceRow>> =
@@ -49,7 +52,7 @@ fn table(drive: &DriveSheet) -> Grid {
     grid
 }
 
-fn columns(drive: &DriveSheet) -> Vec<Source> {
+fn columns(drive: &DriveSheet, governs: bool) -> Vec<Source> {
     let text = |head: &str, cell| Source { head: [head.into(), String::new()], align: Align::Text, cell };
     let number = |head: &str, unit: &str, cell| Source {
         head: [head.into(), unit.into()],
@@ -87,7 +90,7 @@ fn columns(drive: &DriveSheet) -> Vec<Source> {
     if any(|source| matches!(source.current, Entry::Number(_))) {
         columns.push(number("current", &units.current, |_, source, _| entry(source.map(|s| &s.current))));
     }
-    if drive.rows.iter().any(|row| !row.governs.is_empty()) {
+    if governs && drive.rows.iter().any(|row| !row.governs.is_empty()) {
         columns.push(text("governs", |row, _, first| {
             let clauses = || row.governs.iter().map(|clause| name_of_clause(clause)).collect::<Vec<_>>();
             at_first(first, || clauses().join(", "))

@@ -8,7 +8,7 @@ const GAP: usize = 2;
 /// Blanks before a table.
 const INDENT: usize = 2;
 /// A wrapped column is not made narrower than this.
-const NARROWEST: usize = 12;
+const NARROWEST: usize = 9;
 /// A longer word is broken where the terminal is narrow.
 const LONGEST_WORD: usize = 24;
 
@@ -60,13 +60,26 @@ impl Grid {
     /// Writes the table, at most `limit` columns wide where that is possible.
     #[must_use]
     pub fn render(&self, limit: usize, style: Style) -> String {
-        let mut grid = self.clone();
-        grid.line_up_numbers();
-        let natural: Vec<usize> = (0..grid.columns.len()).map(|at| grid.natural_width(at)).collect();
-        match grid.shrunk(&natural, limit) {
+        let (grid, widths) = self.laid_out(limit);
+        match widths {
             Some(widths) => grid.as_table(&widths, style),
             None => self.as_blocks(style),
         }
+    }
+
+    /// Whether the table can be at most `limit` columns wide.
+    #[must_use]
+    pub fn fits(&self, limit: usize) -> bool {
+        self.laid_out(limit).1.is_some()
+    }
+
+    /// The table with its numbers lined up, and the widths of its columns where it fits.
+    fn laid_out(&self, limit: usize) -> (Self, Option<Vec<usize>>) {
+        let mut grid = self.clone();
+        grid.line_up_numbers();
+        let natural: Vec<usize> = (0..grid.columns.len()).map(|at| grid.natural_width(at)).collect();
+        let widths = grid.shrunk(&natural, limit);
+        (grid, widths)
     }
 
     /// Pads numbers on the right so that their decimal points stand under one another.
