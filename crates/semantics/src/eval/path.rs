@@ -250,13 +250,14 @@ impl Eval<'_> {
                     self.remark("from data taken at other conditions and scaled".to_owned());
                 }
                 let kind = layshaft_units::kind(kind)?;
-                let unit = Some(kind.unit.into()).filter(|unit: &Box<str>| !unit.is_empty());
+                // Nobody wrote a unit: the reader is shown the one that suits the number.
+                let ty = kind.ty();
                 return Some(Datum::Quantity(Quantity {
                     si,
-                    ty: kind.ty(),
+                    ty,
                     limits: None,
                     confidence: None,
-                    unit,
+                    unit: None,
                 }));
             }
             Answer::Flag(flag) => return Some(Datum::Flag(flag)),

@@ -3,7 +3,7 @@
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, MAX_INPUT_TORQUE, MAX_OUTPUT_TORQUE, SMALL_INERTIA,
-    default, plain, positive, range,
+    plain, positive, range,
 };
 use crate::kinds::reading::{bad_value, limits, only_one};
 use crate::laws::gear as law;
@@ -40,8 +40,8 @@ static FIELDS: &[Field] = &[
     plain(
         "reversing",
         Shape::Flag,
-        default(0.0, "only the direction of running changes with it, no number"),
-        "whether the output turns against the input",
+        Need::Optional,
+        "whether the output turns against the input; only the direction of running changes with it, no number",
     ),
 ];
 
