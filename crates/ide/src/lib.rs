@@ -6,8 +6,13 @@ pub mod definition;
 #[cfg(test)]
 mod fixture;
 pub mod folding;
+pub mod hover;
+pub mod links;
+mod markup;
+mod numbers;
 pub mod references;
 pub mod snapshot;
 pub mod symbols;
+mod tree;
 
 pub use snapshot::Snapshot;

@@ -1,11 +1,14 @@
 //! An analysis with the index of its names: what every feature works on.
 
-use std::sync::Arc;
+use std::sync::{Arc, OnceLock};
 
 use layshaft_diagnostics::{FileId, FileSpan, Span};
-use layshaft_semantics::analysis::SourceFile;
+use layshaft_present::sheet;
+use layshaft_present::unit::Habits;
+use layshaft_semantics::analysis::{CaseRecord, DriveRecord, PartRecord, SourceFile, ValueRecord};
 use layshaft_semantics::index::{Index, Reference, Target};
 use layshaft_semantics::{Analysis, Files, Memo};
+use layshaft_syntax::Item;
 
 /// One state of a spec and the files it uses. Immutable; a later state is another snapshot.
 #[derive(Clone, Debug)]
@@ -14,6 +17,7 @@ pub struct Snapshot {
     pub analysis: Arc<Analysis>,
     /// Every name with what it stands for.
     pub index: Arc<Index>,
+    habits: Arc<OnceLock<Habits>>,
 }
 
 /// The spec itself; the files it uses come behind it.
@@ -25,7 +29,7 @@ impl Snapshot {
     pub fn new(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Self {
         let analysis = layshaft_semantics::analyze_with(path, text, files, memo);
         let index = Index::of(&analysis);
-        Self { analysis: Arc::new(analysis), index: Arc::new(index) }
+        Self { analysis: Arc::new(analysis), index: Arc::new(index), habits: Arc::default() }
     }
 
     /// A file of the snapshot.
@@ -64,4 +68,62 @@ impl Snapshot {
             _ => None,
         }
     }
+
+    /// The units the author uses, made at the first question.
+    #[must_use]
+    pub fn habits(&self) -> &Habits {
+        self.habits.get_or_init(|| sheet::habits(&self.analysis))
+    }
+
+    /// The item at a place, directly behind it included.
+    pub(crate) fn item(&self, file: FileId, offset: u32) -> Option<&Item> {
+        let items = &self.file(file)?.tree.items;
+        let behind = items.partition_point(|item| item.tree.span.start + item.offset <= offset);
+        let item = items.get(behind.checked_sub(1)?)?;
+        item.tree.span.shifted(item.offset).touches(offset).then_some(item)
+    }
+
+    /// The names that stand in a place.
+    pub(crate) fn names_in(&self, place: FileSpan) -> &[Reference] {
+        let all = &self.index.references;
+        let from = all.partition_point(|name| (name.place.file, name.place.span.start) < start(place));
+        let to = all.partition_point(|name| {
+            (name.place.file, name.place.span.start) < (place.file, place.span.end.max(place.span.start))
+        });
+        all.get(from..to).unwrap_or(&[])
+    }
+
+    /// A `let` by the place of its name.
+    pub(crate) fn value(&self, name: FileSpan) -> Option<&ValueRecord> {
+        let values = &self.analysis.values;
+        values.get(values.binary_search_by(|value| value.place.cmp(&name)).ok()?)
+    }
+
+    /// A part by the place of its name.
+    pub(crate) fn part(&self, name: FileSpan) -> Option<&PartRecord> {
+        let parts = &self.analysis.parts;
+        parts.get(parts.binary_search_by(|part| part.place.cmp(&name)).ok()?)
+    }
+
+    /// A drive by the place of its name.
+    pub(crate) fn drive(&self, name: FileSpan) -> Option<(usize, &DriveRecord)> {
+        let drives = &self.analysis.drives;
+        let at = drives.binary_search_by(|drive| drive.place.cmp(&name)).ok()?;
+        Some((at, drives.get(at)?))
+    }
+
+    /// The drives a part takes part in, by index.
+    pub(crate) fn drives_with(&self, part: FileSpan) -> impl Iterator<Item = (usize, &DriveRecord)> {
+        let with = move |drive: &DriveRecord| drive.cases.iter().any(|case| case.parts.contains(&part));
+        self.analysis.drives.iter().enumerate().filter(move |(_, drive)| with(drive))
+    }
+
+    /// The states of a case: one for each combination of `each`.
+    pub(crate) fn states(&self, name: FileSpan) -> impl Iterator<Item = (usize, &CaseRecord)> {
+        self.analysis.cases.iter().enumerate().filter(move |(_, case)| case.place == name)
+    }
+}
+
+const fn start(place: FileSpan) -> (FileId, u32) {
+    (place.file, place.span.start)
 }
