@@ -151,6 +151,14 @@ impl Step {
     }
 }
 
+/// How a part stands at a state.
+struct Standing {
+    symbols: Vec<(&'static str, f64)>,
+    speed: f64,
+    effort: f64,
+    shaft: usize,
+}
+
 impl Solution {
     /// How an answer came about: the formulas of the part's law with the numbers of this point, the one that gives the
     /// answer last; empty where it is no number or needs no formula.
@@ -220,10 +228,8 @@ impl Solution {
 
     fn steps_of_part(&self, here: &State, part: usize, port: Option<Port>, name: &str) -> Vec<Step> {
         let row = self.drive.spec.parts[part].row;
-        let (mut values, speed, effort, shaft) = match self.standing(here, part, port) {
-            Some(found) => found,
-            None => return Vec::new(),
-        };
+        let Some(standing) = self.standing(here, part, port) else { return Vec::new() };
+        let Standing { symbols: mut values, speed, effort, shaft } = standing;
         let motion = self.drive.shafts[shaft].motion;
         let place = Some(part);
         match name {
@@ -257,13 +263,8 @@ impl Solution {
         steps
     }
 
-    /// Symbols, speed, effort and shaft of a part.
-    fn standing(
-        &self,
-        here: &State,
-        part: usize,
-        port: Option<Port>,
-    ) -> Option<(Vec<(&'static str, f64)>, f64, f64, usize)> {
+    /// How a part stands here.
+    fn standing(&self, here: &State, part: usize, port: Option<Port>) -> Option<Standing> {
         let drive = &self.drive;
         if let Some(index) = drive.sources.iter().position(|s| s.at.part == part) {
             let source = &drive.sources[index];
@@ -271,23 +272,24 @@ impl Solution {
             let effort = here.flow.sources[index];
             let Model::Source(model) = drive.models[part].as_ref() else { return None };
             let symbols = model.symbols(&SourceState { speed, effort, feed: &source.feed });
-            return Some((symbols, speed, effort, source.at.shaft));
+            return Some(Standing { symbols, speed, effort, shaft: source.at.shaft });
         }
         if let Some(index) = drive.stages.iter().position(|s| s.at.part == part) {
             let stage = &drive.stages[index];
             let state = self.stage_state(here, index);
             let symbols = drive.transmission(stage)?.symbols(&state);
-            return Some(match port {
-                Some(Port::Input) => (symbols, state.input_speed, state.input_effort, stage.at.input),
-                _ => (symbols, state.output_speed, state.output_effort, stage.at.output),
-            });
+            let (speed, effort, shaft) = match port {
+                Some(Port::Input) => (state.input_speed, state.input_effort, stage.at.input),
+                _ => (state.output_speed, state.output_effort, stage.at.output),
+            };
+            return Some(Standing { symbols, speed, effort, shaft });
         }
         let index = drive.loads.iter().position(|l| l.at.part == part)?;
         let load = &drive.loads[index];
         let speed = here.x * drive.shafts[load.at.shaft].speed;
         let effort = here.flow.loads[index];
         let state = LoadState { speed: load.sense * speed, effort: load.sense * effort };
-        Some((drive.load(load)?.symbols(&state), speed, effort, load.at.shaft))
+        Some(Standing { symbols: drive.load(load)?.symbols(&state), speed, effort, shaft: load.at.shaft })
     }
 
     /// Whether the reached point is stable, for those who show it.
