@@ -157,7 +157,8 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
         placed.push(source);
     }
     if !followed && faults.is_empty() {
-        let how = "a set speed is given, but no source of this drive follows one";
+        let how = "a set speed is given, but no source of this drive follows one: a servo does, or a dc motor with \
+                   the current_limit of its controller";
         faults.push(Fault { part: None, kind: FaultKind::Chain { how: Note::plain(how) } });
     }
     if faults.is_empty() { Ok(placed) } else { Err(faults) }
