@@ -5,6 +5,8 @@ use super::style::{Style, Tone, width};
 
 /// Blanks between two columns.
 const GAP: usize = 2;
+/// Blanks between two columns where the terminal is narrow.
+const NARROW_GAP: usize = 1;
 /// Blanks before a table.
 const INDENT: usize = 2;
 /// A wrapped column is not made narrower than this.
@@ -56,13 +58,19 @@ pub struct Grid {
     pub rows: Vec<Vec<Cell>>,
 }
 
+/// Widths of the columns and blanks between them.
+struct Layout {
+    widths: Vec<usize>,
+    gap: usize,
+}
+
 impl Grid {
     /// Writes the table, at most `limit` columns wide where that is possible.
     #[must_use]
     pub fn render(&self, limit: usize, style: Style) -> String {
-        let (grid, widths) = self.laid_out(limit);
-        match widths {
-            Some(widths) => grid.as_table(&widths, style),
+        let (grid, layout) = self.laid_out(limit);
+        match layout {
+            Some(layout) => grid.as_table(&layout, style),
             None => self.as_blocks(style),
         }
     }
@@ -73,13 +81,16 @@ impl Grid {
         self.laid_out(limit).1.is_some()
     }
 
-    /// The table with its numbers lined up, and the widths of its columns where it fits.
-    fn laid_out(&self, limit: usize) -> (Self, Option<Vec<usize>>) {
+    /// The table with its numbers lined up, and its layout where it fits.
+    fn laid_out(&self, limit: usize) -> (Self, Option<Layout>) {
         let mut grid = self.clone();
         grid.line_up_numbers();
         let natural: Vec<usize> = (0..grid.columns.len()).map(|at| grid.natural_width(at)).collect();
-        let widths = grid.shrunk(&natural, limit);
-        (grid, widths)
+        let gaps = [GAP, NARROW_GAP].into_iter();
+        let mut layouts =
+            gaps.filter_map(|gap| Some(Layout { widths: grid.shrunk(&natural, limit, gap)?, gap }));
+        let layout = layouts.next();
+        (grid, layout)
     }
 
     /// Pads numbers on the right so that their decimal points stand under one another.
@@ -106,12 +117,12 @@ impl Grid {
     }
 
     /// Takes width from the widest text columns until the table fits; `None` where it cannot.
-    fn shrunk(&self, natural: &[usize], limit: usize) -> Option<Vec<usize>> {
+    fn shrunk(&self, natural: &[usize], limit: usize, gap: usize) -> Option<Vec<usize>> {
         let mut widths = natural.to_vec();
         let floors: Vec<usize> = (0..natural.len()).map(|at| self.floor(at, natural[at])).collect();
         let floor = |at: usize| floors[at];
         loop {
-            let total = INDENT + widths.iter().sum::<usize>() + GAP * widths.len().saturating_sub(1);
+            let total = INDENT + widths.iter().sum::<usize>() + gap * widths.len().saturating_sub(1);
             if total <= limit {
                 return Some(widths);
             }
@@ -136,7 +147,7 @@ impl Grid {
         head.max(longest).max(NARROWEST.min(natural))
     }
 
-    fn as_table(&self, widths: &[usize], style: Style) -> String {
+    fn as_table(&self, layout: &Layout, style: Style) -> String {
         let mut out = String::new();
         let lines = self.columns.iter().map(|column| column.head.len()).max().unwrap_or(0);
         for line in 0..lines {
@@ -145,11 +156,11 @@ impl Grid {
                 let text = column.head.get(line).cloned().unwrap_or_default();
                 row.push(Cell { text, tone: Tone::Faint });
             }
-            self.write_line(&mut out, &row, widths, style);
+            self.write_line(&mut out, &row, layout, style);
         }
         for row in &self.rows {
             let wrapped: Vec<Vec<String>> =
-                row.iter().zip(widths).map(|(cell, &width)| wrap(&cell.text, width)).collect();
+                row.iter().zip(&layout.widths).map(|(cell, &width)| wrap(&cell.text, width)).collect();
             let lines = wrapped.iter().map(Vec::len).max().unwrap_or(0);
             for line in 0..lines {
                 let cells: Vec<Cell> = row
@@ -160,25 +171,26 @@ impl Grid {
                         tone: cell.tone,
                     })
                     .collect();
-                self.write_line(&mut out, &cells, widths, style);
+                self.write_line(&mut out, &cells, layout, style);
             }
         }
         out
     }
 
-    fn write_line(&self, out: &mut String, cells: &[Cell], widths: &[usize], style: Style) {
+    fn write_line(&self, out: &mut String, cells: &[Cell], layout: &Layout, style: Style) {
+        let gap = layout.gap;
         let mut line = " ".repeat(INDENT);
         let mut pending = 0;
-        for ((cell, &wide), column) in cells.iter().zip(widths).zip(&self.columns) {
+        for ((cell, &wide), column) in cells.iter().zip(&layout.widths).zip(&self.columns) {
             let free = wide.saturating_sub(width(&cell.text));
             let (before, after) = if column.align == Align::Number { (free, 0) } else { (0, free) };
             if !cell.text.is_empty() {
                 line.extend(std::iter::repeat_n(' ', pending + before));
                 let text = cell.text.trim_end();
                 line.push_str(&style.paint(cell.tone, text));
-                pending = after + width(&cell.text) - width(text) + GAP;
+                pending = after + width(&cell.text) - width(text) + gap;
             } else {
-                pending += wide + GAP;
+                pending += wide + gap;
             }
         }
         out.push_str(line.trim_end());
