@@ -182,7 +182,9 @@ impl Eval<'_> {
         if !hints.is_empty() {
             finding = finding.help(hints.join("; or "));
         }
-        finding.note(refusal.message())
+        // Where the algebra says no more than the message, it is not said twice.
+        let why = refusal.message();
+        if why == finding.message.replace(", and this", ", this") { finding } else { finding.note(why) }
     }
 
     /// The unit of a literal that is all the span holds.
