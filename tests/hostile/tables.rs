@@ -32,17 +32,14 @@ fn a_file_that_is_not_there() {
 
 #[test]
 fn files_outside() {
-    for path in [
-        "../motor.csv",
-        "/etc/motor.csv",
-        "curves/../../motor.csv",
-        "C:/motor.csv",
-        "curves\\\\motor.csv",
-        "",
-    ] {
+    for path in
+        ["../motor.csv", "/etc/motor.csv", "curves/../../motor.csv", "C:/motor.csv", "curves\\\\motor.csv"]
+    {
         let analysis = support::analyze(&SPEC.replace("curves/motor.csv", path));
         assert_eq!(support::codes(&analysis), ["missing-file"], "{path}: {}", lines(&analysis));
     }
+    let empty = support::analyze(&SPEC.replace("curves/motor.csv", ""));
+    assert_eq!(support::codes(&empty), ["syntax"], "{}", lines(&empty));
 }
 
 #[test]
