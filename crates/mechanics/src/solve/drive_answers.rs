@@ -21,17 +21,18 @@ impl Solution {
     }
 
     fn drive_answer(&self, name: &str) -> Result<Answer, Answer> {
-        let none = Marks::default();
+        let scaled = self.drive.sources.iter().any(|s| s.character.as_ref().is_some_and(|c| c.scaled));
+        let of_curve = Marks { outside: false, scaled };
         Ok(match name {
             "speed" => self.speed(None, None)?,
             "power" => {
                 let here = self.here()?;
                 self.quantity(here.source_power(&self.drive).abs(), "mechanical_power", here.marks)
             }
-            "peak_power" => self.quantity(self.peak()?.value, "mechanical_power", none),
+            "peak_power" => self.quantity(self.peak()?.value, "mechanical_power", of_curve),
             "peak_power_speed" => {
                 let own = self.own_shaft()?;
-                self.quantity(self.peak()?.x * own.1, own.0.speed_kind(), none)
+                self.quantity(self.peak()?.x * own.1, own.0.speed_kind(), of_curve)
             }
             "power_share" => {
                 let here = self.here()?;
@@ -163,7 +164,13 @@ impl Solution {
 
     pub(super) fn peak(&self) -> Result<Greatest, Answer> {
         let peak = self.peak.get_or_init(|| {
-            let top = 4.0 * self.drive.scale;
+            let drive = &self.drive;
+            // Along measured curves: what lies beyond their last points is no more than an extrapolation.
+            let measured = drive.sources.iter().filter_map(|s| {
+                let (_, last) = s.character.as_ref()?.measured?;
+                Some(last / drive.shafts[s.at.shaft].speed)
+            });
+            let top = measured.fold(4.0 * drive.scale, f64::min);
             greatest(&Peak(&self.drive), &with_kinks(&self.drive, top)).filter(|p| p.value > 0.0)
         });
         peak.ok_or_else(|| absent("no source is on"))

@@ -61,14 +61,16 @@ impl Solution {
         let source = &self.drive.sources[index];
         let shaft = source.at.shaft;
         let kind = self.drive.shafts[shaft].motion.speed_kind();
+        let scaled = source.character.as_ref().is_some_and(|c| c.scaled);
+        let of_curve = Marks { outside: false, scaled };
         match name {
             "speed" => return self.speed(Some(source.at.part), None),
             "highest_speed" => return self.highest_speed(Some(source.at.part), None),
             "peak_power" => {
-                return Ok(self.quantity(self.source_peak(source)?.1, "mechanical_power", Marks::default()));
+                return Ok(self.quantity(self.source_peak(source)?.1, "mechanical_power", of_curve));
             }
             "peak_power_speed" => {
-                return Ok(self.quantity(self.source_peak(source)?.0, kind, Marks::default()));
+                return Ok(self.quantity(self.source_peak(source)?.0, kind, of_curve));
             }
             _ => {}
         }
@@ -123,7 +125,9 @@ impl Solution {
         let mut jumps = character.drive.jumps();
         jumps.extend(character.drive.kinks());
         jumps.sort_by(f64::total_cmp);
-        match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, 4.0 * character.top_speed)) {
+        // Along a measured curve: what lies beyond its last point is no more than an extrapolation.
+        let top = character.measured.map_or(4.0 * character.top_speed, |(_, last)| last);
+        match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, top)) {
             Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
             _ => Err(absent("this source gives no power at any speed")),
         }

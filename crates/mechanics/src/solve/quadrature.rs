@@ -3,6 +3,9 @@
 //! Nodes and weights: R. Piessens et al., QUADPACK, Springer 1983 (public domain routine qk15), from memory and
 //! checked here against integrals known in closed form.
 
+use std::cmp::Ordering;
+use std::collections::BinaryHeap;
+
 const NODES: [f64; 8] = [
     0.991_455_371_120_812_6,
     0.949_107_912_342_758_5,
@@ -29,43 +32,86 @@ const GAUSS: [f64; 4] =
 /// Two integrals over the same range.
 type Pair = [f64; 2];
 
-/// Pieces looked at before an integral counts as not settled.
+/// Pieces looked at before an integral is taken as it stands.
 const BUDGET: usize = 3_000;
 
-/// Share of the whole at which the two rules must agree.
+/// Share of the whole to which the two rules must agree.
 const AGREE: f64 = 1e-11;
 
-/// Integrates two functions at once over the pieces; `None` where a value is not finite or the integral does not
-/// settle.
-pub(crate) fn integrate(f: impl Fn(f64) -> Option<Pair>, pieces: &[(f64, f64)]) -> Option<Pair> {
-    let mut total = [0.0; 2];
-    let mut rough = [0.0; 2];
-    let mut open = Vec::new();
-    for (lo, hi) in pieces.iter().rev() {
-        let first = rules(&f, *lo, *hi)?;
-        for (sum, value) in rough.iter_mut().zip(first.0) {
-            *sum += value.abs();
-        }
-        open.push((*lo, *hi, first));
+/// Share of the whole that may be left open where a curve has more kinks than there are pieces to look at.
+const ENOUGH: f64 = 1e-6;
+
+/// A piece with its integrals and how far the two rules are apart.
+struct Piece {
+    lo: f64,
+    hi: f64,
+    fine: Pair,
+    apart: Pair,
+    /// The greater of the two doubts, as a share of the whole.
+    doubt: f64,
+}
+
+impl PartialEq for Piece {
+    fn eq(&self, other: &Self) -> bool {
+        self.cmp(other).is_eq()
     }
-    let mut left = BUDGET;
-    while let Some((lo, hi, (fine, apart))) = open.pop() {
-        let middle = 0.5 * lo + 0.5 * hi;
-        let settled = (0..2).all(|i| apart[i] <= AGREE * f64::max(rough[i], fine[i].abs()));
-        if settled || middle <= lo || middle >= hi {
-            total[0] += fine[0];
-            total[1] += fine[1];
-            continue;
+}
+
+impl Eq for Piece {}
+
+impl PartialOrd for Piece {
+    fn partial_cmp(&self, other: &Self) -> Option<Ordering> {
+        Some(self.cmp(other))
+    }
+}
+
+impl Ord for Piece {
+    fn cmp(&self, other: &Self) -> Ordering {
+        self.doubt.total_cmp(&other.doubt).then(self.lo.total_cmp(&other.lo))
+    }
+}
+
+/// Integrates two functions at once over the pieces, halving where the doubt is greatest; `None` where a value is not
+/// finite or the integral does not settle.
+pub(crate) fn integrate(f: impl Fn(f64) -> Option<Pair>, pieces: &[(f64, f64)]) -> Option<Pair> {
+    let mut rough = [0.0; 2];
+    let mut first = Vec::with_capacity(pieces.len());
+    for (lo, hi) in pieces {
+        let (fine, apart) = rules(&f, *lo, *hi)?;
+        (0..2).for_each(|i| rough[i] += fine[i].abs());
+        first.push((*lo, *hi, fine, apart));
+    }
+    let doubt = |apart: Pair| {
+        (0..2).map(|i| if apart[i] == 0.0 { 0.0 } else { apart[i] / rough[i] }).fold(0.0, f64::max)
+    };
+    let piece = |lo, hi, (fine, apart): (Pair, Pair)| Piece { lo, hi, fine, apart, doubt: doubt(apart) };
+    let mut open: BinaryHeap<Piece> =
+        first.into_iter().map(|(lo, hi, fine, apart)| piece(lo, hi, (fine, apart))).collect();
+    // Doubts shrink at least eightfold with every halving of a smooth piece: what is below a share of the aim can wait.
+    for _ in 0..BUDGET {
+        let Some(worst) = open.peek() else { break };
+        if worst.doubt <= AGREE / 16.0 {
+            break;
         }
-        if left == 0 {
+        let Some(Piece { lo, hi, .. }) = open.pop() else { break };
+        let middle = 0.5 * lo + 0.5 * hi;
+        if middle <= lo || middle >= hi {
             return None;
         }
-        left -= 1;
-        let (a, b) = (rules(&f, lo, middle)?, rules(&f, middle, hi)?);
-        open.push((middle, hi, b));
-        open.push((lo, middle, a));
+        open.push(piece(lo, middle, rules(&f, lo, middle)?));
+        open.push(piece(middle, hi, rules(&f, middle, hi)?));
     }
-    Some(total)
+    let mut all = open.into_vec();
+    all.sort_by(|a, b| a.lo.total_cmp(&b.lo));
+    let mut total = [0.0; 2];
+    let mut left = [0.0; 2];
+    for piece in &all {
+        for i in 0..2 {
+            total[i] += piece.fine[i];
+            left[i] += piece.apart[i];
+        }
+    }
+    (0..2).all(|i| left[i] <= ENOUGH * total[i].abs()).then_some(total)
 }
 
 /// The integral by 15 points, and how far that by 7 is off.

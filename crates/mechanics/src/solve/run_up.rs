@@ -78,7 +78,7 @@ pub(crate) fn run_up(drive: &Assembly, path: &Path, reached: &State) -> Result<R
     match integrate(rate, &smooth_pieces(drive, start, end)) {
         Some([time, distance]) => Ok(RunUp { time, distance }),
         None => Err(Answer::Absent(Note::plain(
-            "the time to come up to speed did not settle: it hardly gains speed",
+            "the time to come up to speed does not settle: it hardly gains speed on the way, or its curve is too rough",
         ))),
     }
 }
