@@ -19,6 +19,9 @@ use clap::Parser;
 use args::{Args, Command};
 use output::{Exit, Output};
 
+/// Room for the deepest spec that the language allows; the system hands it out as it is used.
+const STACK: usize = 256 << 20;
+
 fn main() -> ExitCode {
     std::panic::set_hook(Box::new(|panic| {
         eprintln!("layshaft: internal error: {panic}");
@@ -26,8 +29,12 @@ fn main() -> ExitCode {
             "This is a mistake in layshaft, not in your spec. Please report it with the spec that shows it."
         );
     }));
-    // The unwinding value says nothing that the hook has not said.
-    std::panic::catch_unwind(run).unwrap_or(Exit::Internal).into()
+    // A thread of its own, for its stack: an expression within the limits of the language nests deeply, and the stack
+    // a system gives the first thread differs. What a panic carries says nothing that the hook has not said.
+    match std::thread::Builder::new().stack_size(STACK).spawn(run) {
+        Ok(thread) => thread.join().unwrap_or(Exit::Internal).into(),
+        Err(_) => std::panic::catch_unwind(run).unwrap_or(Exit::Internal).into(),
+    }
 }
 
 fn run() -> Exit {

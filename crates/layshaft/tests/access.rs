@@ -132,6 +132,35 @@ fn odd_texts_end_with_a_verdict_or_a_message() {
     }
 }
 
+#[test]
+fn a_spec_at_the_limits_of_the_language_ends_with_a_message() {
+    let folder = Folder::new();
+    let chained: String = (1..20_000).map(|n| format!("let a{n} = a{} + 1\n", n - 1)).collect();
+    for (name, text) in [
+        ("sum", format!("let a = {}1\nlet b = {}5 furlong\n", "1 + ".repeat(900), "1 + ".repeat(900))),
+        ("long_sum", format!("let a = {}1\n", "1 + ".repeat(200_000))),
+        ("nested", format!("let a = {}1{}\n", "(".repeat(120), ")".repeat(120))),
+        ("deeper", format!("let a = {}1{}\n", "(".repeat(100_000), ")".repeat(100_000))),
+        ("open", "a { ".repeat(2_000)),
+        ("chained", format!("let a0 = 1\n{chained}")),
+        ("errors", (0..2_000).map(|n| format!("let a{n} = 5 furlongs\n")).collect()),
+        ("wide", format!("let a = 5 furlong # {}\n", "é".repeat(1_000_000))),
+    ] {
+        let file = format!("{name}.shaft");
+        folder.file(&file, text);
+        for format in ["text", "json"] {
+            let ran = folder.run(["check", "--format", format, &file]);
+            assert!(
+                matches!(ran.code, Some(0 | 2)) && ran.err.is_empty(),
+                "{name}: {:?} {}",
+                ran.code,
+                ran.err
+            );
+            assert!(is_harmless(&ran.out), "{name}");
+        }
+    }
+}
+
 /// Everything of the author's that is printed somewhere.
 fn hostile() -> String {
     let bad = "\u{1b}]0;owned\u{7}\u{9b}31m\u{202e}x\u{2028}\u{200b}";
