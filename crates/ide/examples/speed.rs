@@ -4,9 +4,10 @@
 use std::sync::Arc;
 use std::time::Instant;
 
-use layshaft_diagnostics::FileId;
-use layshaft_ide::hover::{Options, hover};
+use layshaft_diagnostics::{FileId, Span};
 use layshaft_ide::Snapshot;
+use layshaft_ide::hints::{Categories, hints};
+use layshaft_ide::hover::{Options, hover};
 use layshaft_semantics::{Memo, NoFiles};
 
 fn main() {
@@ -21,6 +22,10 @@ fn main() {
 fn told(path: &str) {
     let text: Arc<str> = std::fs::read_to_string(path).unwrap_or_default().into();
     let snapshot = Snapshot::new(path, Arc::clone(&text), &NoFiles, &mut Memo::default());
+    for hint in hints(&snapshot, FileId(0), Span::new(0, u32::MAX), Categories::default()) {
+        let start = text[..hint.offset as usize].rfind('\n').map_or(0, |at| at + 1);
+        println!("{:60.60} {}", &text[start..hint.offset as usize], hint.text);
+    }
     let mut last = None;
     for offset in 0..text.len() as u32 {
         let found = hover(&snapshot, FileId(0), offset, Options::default());
@@ -53,12 +58,17 @@ fn measured(lines: usize) {
         .map(|offset| {
             let start = Instant::now();
             let found = hover(&snapshot, FileId(0), offset, Options { charts: false });
-            std::hint::black_box(&found);
-            start.elapsed()
+            (start.elapsed(), found.map(|found| snapshot.text(found.place).to_owned()))
         })
         .collect();
-    println!("first hover {:?}", times.first());
+    println!("first hover {:?}", times.first().map(|first| first.0));
     times.sort();
-    let at = |share: f64| times[((times.len() - 1) as f64 * share) as usize];
+    let at = |share: f64| times[((times.len() - 1) as f64 * share) as usize].0;
     println!("{} hovers: median {:?}, 99 % {:?}, longest {:?}", times.len(), at(0.5), at(0.99), at(1.0));
+    for _ in 0..2 {
+        let start = Instant::now();
+        let found = hints(&snapshot, FileId(0), Span::new(0, u32::MAX), Categories::default());
+        println!("{} hints {:?}", found.len(), start.elapsed());
+    }
+    println!("slowest: {:?}", times.iter().rev().step_by(50).take(20).collect::<Vec<_>>());
 }

@@ -2,17 +2,26 @@
 //!
 //! One feature a file, each a function of a [`Snapshot`] and a place; a handler of the server converts, asks, converts.
 
+pub mod base;
+pub mod call_hierarchy;
 pub mod definition;
+pub mod diagnostics;
+pub mod documents;
 #[cfg(test)]
 mod fixture;
 pub mod folding;
+pub mod hints;
 pub mod hover;
+pub mod implementations;
+pub mod lenses;
 pub mod links;
 mod markup;
 mod numbers;
 pub mod references;
+pub mod sensitivity;
 pub mod snapshot;
 pub mod symbols;
 mod tree;
+pub mod type_definition;
 
 pub use snapshot::Snapshot;

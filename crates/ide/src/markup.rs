@@ -47,7 +47,7 @@ impl Page {
         self.paragraph(lines.join("\n"));
     }
 
-    /// A table, columns after the first aligned right; columns without any entry are left out.
+    /// A table, columns of numbers aligned right; columns without any entry are left out.
     pub fn table(&mut self, head: &[&str], rows: &[Vec<String>]) {
         let used = |at: &usize| rows.iter().any(|row| row.get(*at).is_some_and(|cell| !cell.is_empty()));
         let columns: Vec<usize> = (0..head.len()).filter(used).collect();
@@ -57,7 +57,7 @@ impl Page {
         let line = |cells: Vec<&str>| format!("| {} |", cells.join(" | "));
         let mut lines = vec![
             line(columns.iter().map(|at| head[*at]).collect()),
-            line(columns.iter().map(|at| if *at == 0 { "---" } else { "---:" }).collect()),
+            line(columns.iter().map(|at| if numeric(rows, *at) { "---:" } else { "---" }).collect()),
         ];
         for row in rows {
             lines.push(line(columns.iter().map(|at| row.get(*at).map_or("", String::as_str)).collect()));
@@ -69,6 +69,12 @@ impl Page {
     pub fn finish(self) -> String {
         self.out
     }
+}
+
+/// Whether all that stands in a column begins as a number does.
+fn numeric(rows: &[Vec<String>], at: usize) -> bool {
+    let number = |cell: &str| cell.starts_with(|c: char| c.is_ascii_digit() || c == '-');
+    rows.iter().filter_map(|row| row.get(at)).filter(|cell| !cell.is_empty()).all(|cell| number(cell))
 }
 
 #[cfg(test)]

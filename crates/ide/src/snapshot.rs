@@ -1,5 +1,6 @@
 //! An analysis with the index of its names: what every feature works on.
 
+use std::collections::BTreeMap;
 use std::sync::{Arc, OnceLock};
 
 use layshaft_diagnostics::{FileId, FileSpan, Span};
@@ -18,7 +19,12 @@ pub struct Snapshot {
     /// Every name with what it stands for.
     pub index: Arc<Index>,
     habits: Arc<OnceLock<Habits>>,
+    criteria: Arc<OnceLock<ByName>>,
+    drives: Arc<OnceLock<ByName>>,
 }
+
+/// Indices of criteria or drives under the place of a name.
+type ByName = BTreeMap<FileSpan, Vec<usize>>;
 
 /// The spec itself; the files it uses come behind it.
 pub const SPEC: FileId = FileId(0);
@@ -29,7 +35,13 @@ impl Snapshot {
     pub fn new(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Self {
         let analysis = layshaft_semantics::analyze_with(path, text, files, memo);
         let index = Index::of(&analysis);
-        Self { analysis: Arc::new(analysis), index: Arc::new(index), habits: Arc::default() }
+        Self {
+            analysis: Arc::new(analysis),
+            index: Arc::new(index),
+            habits: Arc::default(),
+            criteria: Arc::default(),
+            drives: Arc::default(),
+        }
     }
 
     /// A file of the snapshot.
@@ -75,6 +87,24 @@ impl Snapshot {
         self.habits.get_or_init(|| sheet::habits(&self.analysis))
     }
 
+    /// The criteria that ask about a drive, by index; found for all drives at the first question.
+    pub(crate) fn criteria_of(&self, drive: FileSpan) -> &[usize] {
+        let found = self.criteria.get_or_init(|| {
+            let mut found = ByName::new();
+            for (index, criterion) in self.analysis.criteria.iter().enumerate() {
+                for name in self.names_in(criterion.condition_place) {
+                    let Target::Drive(drive) = name.target else { continue };
+                    let of = found.entry(drive).or_default();
+                    if of.last() != Some(&index) {
+                        of.push(index);
+                    }
+                }
+            }
+            found
+        });
+        found.get(&drive).map_or(&[], Vec::as_slice)
+    }
+
     /// The item at a place, directly behind it included.
     pub(crate) fn item(&self, file: FileId, offset: u32) -> Option<&Item> {
         let items = &self.file(file)?.tree.items;
@@ -112,10 +142,22 @@ impl Snapshot {
         Some((at, drives.get(at)?))
     }
 
-    /// The drives a part takes part in, by index.
+    /// The drives a part takes part in, with their index; found for all parts at the first question.
     pub(crate) fn drives_with(&self, part: FileSpan) -> impl Iterator<Item = (usize, &DriveRecord)> {
-        let with = move |drive: &DriveRecord| drive.cases.iter().any(|case| case.parts.contains(&part));
-        self.analysis.drives.iter().enumerate().filter(move |(_, drive)| with(drive))
+        let found = self.drives.get_or_init(|| {
+            let mut found = ByName::new();
+            for (index, drive) in self.analysis.drives.iter().enumerate() {
+                for part in drive.cases.iter().flat_map(|case| &case.parts) {
+                    let of = found.entry(*part).or_default();
+                    if of.last() != Some(&index) {
+                        of.push(index);
+                    }
+                }
+            }
+            found
+        });
+        let indices = found.get(&part).map_or(&[][..], Vec::as_slice);
+        indices.iter().filter_map(|index| Some((*index, self.analysis.drives.get(*index)?)))
     }
 
     /// The states of a case: one for each combination of `each`.

@@ -1,6 +1,7 @@
 //! The declarations of a file, and of all files by a part of their name.
 
 use layshaft_diagnostics::{FileId, FileSpan};
+use layshaft_mechanics::registry::Role;
 use layshaft_syntax::{ItemKind, RoleWord};
 
 use crate::Snapshot;
@@ -140,6 +141,16 @@ fn kind_of(role: RoleWord) -> SymbolKind {
         RoleWord::Source => SymbolKind::Source,
         RoleWord::Transmission => SymbolKind::Transmission,
         RoleWord::Load => SymbolKind::Load,
+    }
+}
+
+/// What a part of this role is.
+pub(crate) const fn kind_of_role(role: Role) -> SymbolKind {
+    match role {
+        Role::Supply => SymbolKind::Supply,
+        Role::Source => SymbolKind::Source,
+        Role::Transmission => SymbolKind::Transmission,
+        Role::Load => SymbolKind::Load,
     }
 }
 

@@ -21,15 +21,21 @@ pub(super) fn case(snapshot: &Snapshot, place: FileSpan) -> Option<String> {
         n => format!(", {n} combinations"),
     };
     page.paragraph(format!("**{}**, a case{count}", text(&first.name)));
-    let mut rows: Vec<Vec<String>> = Vec::new();
+    // One line for each thing changed, with all the values it takes.
+    let mut rows: Vec<(FileSpan, Vec<String>)> = Vec::new();
     let mut seen: BTreeSet<(FileSpan, FileSpan)> = BTreeSet::new();
     for (_, state) in &states {
         for change in &state.changes {
-            if seen.insert((change.place, change.value_place)) {
-                rows.push(row(snapshot, change));
+            if !seen.insert((change.place, change.value_place)) {
+                continue;
+            }
+            match rows.iter_mut().find(|(place, _)| *place == change.place) {
+                Some((_, cells)) => cells[2].push_str(&format!(", {}", to(snapshot, change))),
+                None => rows.push((change.place, row(snapshot, change))),
             }
         }
     }
+    let mut rows: Vec<Vec<String>> = rows.into_iter().map(|(_, cells)| cells).collect();
     let known = rows.len();
     rows.truncate(MOST);
     page.table(&["changes", "plain", "to"], &rows);
@@ -57,9 +63,12 @@ fn row(snapshot: &Snapshot, change: &Change) -> Vec<String> {
         Some(field) => Target::Field(change.owner, field.clone()),
     };
     let plain = numbers::plain_text(snapshot, &target).map(|plain| text(&plain)).unwrap_or_default();
-    let to = match &change.value {
+    vec![text(snapshot.text(change.place)), plain, to(snapshot, change)]
+}
+
+fn to(snapshot: &Snapshot, change: &Change) -> String {
+    match &change.value {
         Some(datum) => text(shown(datum).text()),
         None => text(snapshot.text(change.value_place)),
-    };
-    vec![text(snapshot.text(change.place)), plain, to]
+    }
 }

@@ -4,12 +4,12 @@ use layshaft_present::sheet::{self, OutcomeLine};
 use layshaft_present::shown::Shown;
 use layshaft_semantics::analysis::Verdict;
 
-use super::MOST;
 use crate::Snapshot;
 use crate::markup::{self, Page, text};
 
-pub(super) fn criterion(snapshot: &Snapshot, index: usize) -> Option<String> {
-    let line = sheet::criterion(&snapshot.analysis, index, snapshot.habits(), MOST)?;
+/// The page of a criterion with its first `most` cases and the governing one.
+pub(crate) fn page(snapshot: &Snapshot, index: usize, most: usize) -> Option<String> {
+    let line = sheet::criterion(&snapshot.analysis, index, snapshot.habits(), most)?;
     let known = snapshot.analysis.criteria.get(index)?.outcomes.len();
     let mut page = Page::default();
     page.paragraph(format!("**{}** {}", text(&line.clause), verdict(line.verdict)));

@@ -2,11 +2,9 @@
 
 use layshaft_diagnostics::FileSpan;
 use layshaft_present::sheet::{self, DriveRow, DriveSheet};
-use layshaft_semantics::analysis::CriterionRecord;
-use layshaft_semantics::index::Target;
 
 use super::criterion::{more, verdict};
-use super::part::{cell, remark};
+use super::part::{cell, effort_word, remark};
 use super::value::docs;
 use super::{MOST, Options, chart};
 use crate::Snapshot;
@@ -21,7 +19,7 @@ pub(super) fn drive(snapshot: &Snapshot, place: FileSpan, options: Options) -> O
     page.paragraph(docs(&record.docs));
     rows(&mut page, &sheet);
     page.paragraph(more(record.cases.len(), sheet.rows.len()));
-    points(&mut page, &sheet);
+    points(&mut page, &sheet, 2 * MOST);
     page.list(&judged(snapshot, place));
     if options.charts
         && let Some(case) = plain(record)
@@ -34,17 +32,9 @@ pub(super) fn drive(snapshot: &Snapshot, place: FileSpan, options: Options) -> O
 /// One line a case; of several sources the first, the others are told at their own names.
 pub(crate) fn rows(page: &mut Page, sheet: &DriveSheet) {
     let rows: Vec<Vec<String>> = sheet.rows.iter().map(row).collect();
-    let head = [
-        "case",
-        "from rest",
-        "speed",
-        "source",
-        "torque or force",
-        "power",
-        "of peak",
-        "limited by",
-        "remark",
-    ];
+    let efforts = sheet.rows.iter().filter_map(|row| row.sources.first()).map(|source| &source.effort);
+    let effort = effort_word(efforts);
+    let head = ["case", "from rest", "speed", "source", effort, "power", "of peak", "limited by", "remark"];
     page.table(&head, &rows);
     let faults: Vec<String> =
         sheet.rows.iter().flat_map(|row| &row.faults).map(|fault| text(fault)).collect();
@@ -71,7 +61,7 @@ fn row(row: &DriveRow) -> Vec<String> {
 }
 
 /// Operating points beyond the reached one, and its stability.
-pub(crate) fn points(page: &mut Page, sheet: &DriveSheet) {
+pub(crate) fn points(page: &mut Page, sheet: &DriveSheet, most: usize) {
     let mut rows = Vec::new();
     for row in &sheet.rows {
         for point in &row.points {
@@ -86,34 +76,26 @@ pub(crate) fn points(page: &mut Page, sheet: &DriveSheet) {
         }
     }
     let known = rows.len();
-    rows.truncate(2 * MOST);
+    rows.truncate(most);
     page.table(&["operating points", "speed", "stability", "mode", ""], &rows);
     page.paragraph(more(known, rows.len()));
 }
 
-/// The criteria that ask about a drive, by index.
-pub(crate) fn criteria_of(
-    snapshot: &Snapshot,
-    drive: FileSpan,
-) -> impl Iterator<Item = (usize, &CriterionRecord)> {
-    let target = Target::Drive(drive);
-    snapshot.analysis.criteria.iter().enumerate().filter(move |(_, criterion)| {
-        snapshot.names_in(criterion.condition_place).iter().any(|name| name.target == target)
-    })
-}
-
 fn judged(snapshot: &Snapshot, drive: FileSpan) -> Vec<String> {
-    let mut lines: Vec<String> = criteria_of(snapshot, drive)
+    let criteria = snapshot.criteria_of(drive);
+    let mut lines: Vec<String> = criteria
+        .iter()
         .take(MOST)
-        .map(|(_, criterion)| {
+        .filter_map(|index| {
+            let criterion = snapshot.analysis.criteria.get(*index)?;
             let outcome = criterion.governing.and_then(|at| criterion.outcomes.get(at));
             let place = outcome
                 .map(|outcome| sheet::case_label(&snapshot.analysis, outcome.case, outcome.gear.as_deref()));
             let place = place.map(|label| format!(", governed by {}", text(&label))).unwrap_or_default();
-            format!("{} {}{place}", text(&criterion.clause), verdict(criterion.verdict))
+            Some(format!("{}: {}{place}", text(&criterion.clause), verdict(criterion.verdict)))
         })
         .collect();
-    let left = criteria_of(snapshot, drive).count().saturating_sub(lines.len());
+    let left = criteria.len().saturating_sub(lines.len());
     if left > 0 {
         lines.push(format!("and {left} more criteria"));
     }

@@ -69,7 +69,7 @@ pub(crate) fn entries(item: &Item) -> &[Entry] {
 }
 
 /// `stall_torque`, `gear 1`.
-fn key(entry: &Entry) -> String {
+pub(crate) fn key(entry: &Entry) -> String {
     let name = entry.key.names.last().map_or("", |name| &name.text);
     match &entry.member {
         Some(member) => format!("{name} {}", member.text),

@@ -110,6 +110,7 @@ fn others(quantity: &Quantity, own: &str, si: &str) -> Vec<String> {
         kind.units.iter().copied().filter(|unit| !unit.is_empty() && *unit != own && *unit != si).collect();
     let horses = ["hp", "PS"].map(|horse| units.iter().position(|unit| *unit == horse));
     let last: Vec<&str> = horses.iter().flatten().map(|at| units[*at]).collect();
+    units.retain(|unit| parse_unit(unit).is_ok_and(|unit| handy(unit.from_si(quantity.si))));
     units.truncate(OTHERS);
     units.extend(last.into_iter().filter(|horse| *horse != own));
     let mut seen: Vec<&str> = Vec::new();
@@ -124,6 +125,11 @@ fn others(quantity: &Quantity, own: &str, si: &str) -> Vec<String> {
         Some(joined(&shortened(&digits(value, DIGITS)), unit))
     };
     units.iter().filter_map(write).collect()
+}
+
+/// Whether a number is one that a person reads: nobody does 400000 mV.
+fn handy(value: f64) -> bool {
+    value == 0.0 || (0.01..1e5).contains(&value.abs())
 }
 
 /// The unit in full, where its name says more than the symbol.

@@ -23,10 +23,14 @@ use layshaft_syntax::{Item, ItemKind};
 
 use crate::Snapshot;
 
+pub(crate) use criterion::{page as criterion_page, verdict};
+pub(crate) use drive::{points as drive_points, rows as drive_rows};
+pub(crate) use field::{entries, key};
 pub(crate) use kinds::{part_kind, quantity_kind};
+pub(crate) use result::row_of;
 
 /// Cases listed in a hover; the result table has them all.
-pub(crate) const MOST: usize = 12;
+pub(crate) const MOST: usize = 16;
 
 /// What the client wants.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
@@ -92,5 +96,5 @@ fn clause(snapshot: &Snapshot, file: FileId, item: &Item, here: u32) -> Option<(
     let place = FileSpan { file, span: item.tree.span.shifted(item.offset) };
     let criteria = &snapshot.analysis.criteria;
     let index = criteria.binary_search_by(|criterion| criterion.place.cmp(&place)).ok()?;
-    Some((span, criterion::criterion(snapshot, index)?))
+    Some((span, criterion::page(snapshot, index, MOST)?))
 }

@@ -78,7 +78,7 @@ fn ratio(record: &PartRecord, drive: Option<&DriveRecord>, place: FileSpan) -> S
     if let Some(reduction) = number("reduction").or_else(|| running(drive, place)) {
         return spelled(reduction, efficiency);
     }
-    travel(drive, place)
+    travel(drive, place, efficiency)
 }
 
 fn spelled(reduction: f64, efficiency: Option<f64>) -> String {
@@ -119,7 +119,7 @@ fn running(drive: Option<&DriveRecord>, place: FileSpan) -> Option<f64> {
 }
 
 /// `1000 rpm here is 14.14 m/min`, where one side turns and the other runs straight.
-fn travel(drive: Option<&DriveRecord>, place: FileSpan) -> String {
+fn travel(drive: Option<&DriveRecord>, place: FileSpan, efficiency: Option<f64>) -> String {
     const RPM: f64 = std::f64::consts::PI / 30.0;
     match speeds(drive, place) {
         Some([(input, Motion::Rotary), (output, Motion::Linear)]) => {
@@ -127,7 +127,7 @@ fn travel(drive: Option<&DriveRecord>, place: FileSpan) -> String {
             format!("1 rpm at its input is {travel} m/min at its output")
         }
         Some([(input, Motion::Linear), (output, Motion::Linear)]) if input != output => {
-            spelled(input / output, None).replace("torque", "force")
+            spelled(input / output, efficiency).replace("torque", "force")
         }
         _ => String::new(),
     }
@@ -135,39 +135,76 @@ fn travel(drive: Option<&DriveRecord>, place: FileSpan) -> String {
 
 fn table(snapshot: &Snapshot, page: &mut Page, drive: &DriveRecord, record: &PartRecord, place: FileSpan) {
     page.paragraph(format!("In {}", text(&drive.name)));
-    let rows: Vec<Vec<String>> =
-        drive.cases.iter().take(MOST).map(|case| row(snapshot, case, record, place)).collect();
-    page.table(head(record.role), &rows);
+    let asked: Vec<(String, Vec<Entry>, bool)> = drive
+        .cases
+        .iter()
+        .take(MOST)
+        .map(|case| {
+            let label = sheet::case_label(&snapshot.analysis, case.case, case.gear.as_deref());
+            (text(&label), entries(snapshot, case, record.role, place), case.solution.is_some())
+        })
+        .collect();
+    let mut remarks: Vec<String> = asked
+        .iter()
+        .map(|(_, entries, solved)| if *solved { remark(entries) } else { "not solved".to_owned() })
+        .collect();
+    // What is true of every line is said once.
+    let shared = remarks.first().filter(|first| remarks.iter().all(|other| other == *first)).cloned();
+    if shared.is_some() {
+        remarks.iter_mut().for_each(String::clear);
+    }
+    let rows: Vec<Vec<String>> = asked
+        .iter()
+        .zip(remarks)
+        .map(|((label, entries, _), remark)| {
+            let cells = entries.iter().map(cell);
+            [label.clone()].into_iter().chain(cells).chain([remark]).collect()
+        })
+        .collect();
+    let side = |at: usize| effort_word(asked.iter().filter_map(move |(_, entries, _)| entries.get(at)));
+    let head: Vec<String> = match record.role {
+        Role::Supply => ["voltage", "current", "power"].map(str::to_owned).to_vec(),
+        Role::Source => ["speed", side(1), "power", "of peak", "mode", "current"].map(str::to_owned).to_vec(),
+        Role::Transmission => vec![
+            "speed in".to_owned(),
+            format!("{} in", side(1)),
+            "speed out".to_owned(),
+            format!("{} out", side(3)),
+            "power".to_owned(),
+        ],
+        Role::Load => ["speed", side(1), "power"].map(str::to_owned).to_vec(),
+    };
+    let head: Vec<&str> =
+        ["case"].into_iter().chain(head.iter().map(String::as_str)).chain(["remark"]).collect();
+    page.table(&head, &rows);
+    page.paragraph(shared.unwrap_or_default());
     page.paragraph(more(drive.cases.len(), rows.len()));
 }
 
-fn head(role: Role) -> &'static [&'static str] {
-    match role {
-        Role::Supply => &["case", "voltage", "current", "power", "remark"],
-        Role::Source => {
-            &["case", "speed", "torque or force", "power", "of peak", "current", "mode", "remark"]
-        }
-        Role::Transmission => {
-            &["case", "speed in", "torque or force in", "speed out", "torque or force out", "power", "remark"]
-        }
-        Role::Load => &["case", "speed", "torque or force", "power", "remark"],
-    }
+/// What the effort of a column is called: by the first answer that is a number.
+pub(super) fn effort_word<'a>(mut entries: impl Iterator<Item = &'a Entry>) -> &'static str {
+    let kind = entries.find_map(|entry| match entry {
+        Entry::Number(number) => number.kind,
+        _ => None,
+    });
+    if kind == Some("force") { "force" } else { "torque" }
 }
 
 const EFFORT: &[&str] = &["torque", "force"];
 
-fn row(snapshot: &Snapshot, case: &DriveCase, record: &PartRecord, place: FileSpan) -> Vec<String> {
+fn entries(snapshot: &Snapshot, case: &DriveCase, role: Role, place: FileSpan) -> Vec<Entry> {
     let ask = |port: Option<&str>, names: &[&str]| entry(snapshot, case, Some(place), port, names);
-    let entries = match record.role {
+    match role {
         Role::Supply => vec![ask(None, &["voltage"]), ask(None, &["current"]), ask(None, &["power"])],
-        Role::Source => vec![
-            ask(None, &["speed"]),
-            ask(None, EFFORT),
-            ask(None, &["power"]),
-            ask(None, &["power_share"]),
-            ask(None, &["current"]),
-            ask(None, &["mode"]),
-        ],
+        Role::Source => {
+            let current = match ask(None, &["current"]) {
+                // That no current is known of a motor without electrical data is no news in every line.
+                Entry::Absent(_) => Entry::None,
+                known => known,
+            };
+            let rest = [&["speed"][..], EFFORT, &["power"], &["power_share"], &["mode"]];
+            rest.into_iter().map(|names| ask(None, names)).chain([current]).collect()
+        }
         Role::Transmission => vec![
             ask(Some("input"), &["speed"]),
             ask(Some("input"), EFFORT),
@@ -176,12 +213,7 @@ fn row(snapshot: &Snapshot, case: &DriveCase, record: &PartRecord, place: FileSp
             ask(None, &["power"]),
         ],
         Role::Load => vec![ask(None, &["speed"]), ask(None, EFFORT), ask(None, &["power"])],
-    };
-    let label = sheet::case_label(&snapshot.analysis, case.case, case.gear.as_deref());
-    let mut row = vec![text(&label)];
-    row.extend(entries.iter().map(cell));
-    row.push(if case.solution.is_none() { "not solved".to_owned() } else { remark(&entries) });
-    row
+    }
 }
 
 /// An answer, harmless.
