@@ -1,6 +1,8 @@
 //! How long hovers, hints and lenses take on a long spec: `cargo run --release -p layshaft-ide --example speed [lines]`.
 //! With a path, every hover of that spec is written out instead.
 
+#![allow(clippy::disallowed_methods, reason = "a measurement needs the clock, and the spec a file")]
+
 use std::sync::Arc;
 use std::time::Instant;
 

@@ -1,8 +1,8 @@
 //! The declarations of a file, and of all files by a part of their name.
 
-use layshaft_diagnostics::{FileId, FileSpan};
+use layshaft_diagnostics::{FileId, FileSpan, Span};
 use layshaft_mechanics::registry::Role;
-use layshaft_syntax::{ItemKind, RoleWord};
+use layshaft_syntax::{Entry, Item, ItemKind, PartBase, RoleWord};
 
 use crate::Snapshot;
 
@@ -52,67 +52,59 @@ pub struct Symbol {
 #[must_use]
 pub fn document_symbols(snapshot: &Snapshot, file: FileId) -> Vec<Symbol> {
     let Some(source) = snapshot.file(file) else { return Vec::new() };
-    let mut symbols = Vec::new();
-    for item in &source.tree.items {
-        let place = |span: layshaft_diagnostics::Span| FileSpan { file, span: span.shifted(item.offset) };
-        let whole = place(item.tree.span);
-        let symbol = |name: &str, detail: String, kind, span| Symbol {
-            name: name.to_owned(),
-            detail,
-            kind,
-            place: place(span),
-            whole,
-            children: Vec::new(),
-        };
-        let words = |span| snapshot.text(place(span)).to_owned();
-        match &item.tree.kind {
-            ItemKind::Use { path, alias } => {
-                let (name, span) = match alias {
-                    Some(alias) => (&*alias.text, alias.span),
-                    None => (&*path.value, path.span),
-                };
-                symbols.push(symbol(name, path.value.to_string(), SymbolKind::File, span));
-            }
-            ItemKind::Let { name, value, .. } => {
-                symbols.push(symbol(&name.text, short(&words(value.span)), SymbolKind::Value, name.span));
-            }
-            ItemKind::Part { role, name, block, base, .. } => {
-                let detail = match base {
-                    layshaft_syntax::PartBase::Kind(kind) => kind.text.to_string(),
-                    layshaft_syntax::PartBase::Variant(path) => format!("= {}", words(path.span)),
-                };
-                let mut part = symbol(&name.text, detail, kind_of(*role), name.span);
-                part.children = block
-                    .entries
-                    .iter()
-                    .map(|entry| Symbol {
-                        whole: place(entry.span),
-                        ..symbol(
-                            &words(entry.key.span),
-                            short(&words(entry.value.span)),
-                            SymbolKind::Field,
-                            entry.key.span,
-                        )
-                    })
-                    .collect();
-                symbols.push(part);
-            }
-            ItemKind::Drive { name, chain, .. } => {
-                symbols.push(symbol(&name.text, short(&words(chain.span)), SymbolKind::Drive, name.span));
-            }
-            ItemKind::Case { name, .. } => {
-                symbols.push(symbol(&name.text, String::new(), SymbolKind::Case, name.span));
-            }
-            ItemKind::Require { clause, condition, .. } => {
-                let detail = short(&words(condition.span));
-                symbols.push(symbol(&clause.value, detail, SymbolKind::Criterion, clause.span));
-            }
-            _ => {}
-        }
-    }
+    let symbols = source.tree.items.iter().filter_map(|item| symbol_of(snapshot, file, item));
     // A name half typed is empty, and a list cannot show it.
-    symbols.retain(|symbol| !symbol.name.trim().is_empty());
-    symbols
+    symbols.filter(|symbol| !symbol.name.trim().is_empty()).collect()
+}
+
+fn symbol_of(snapshot: &Snapshot, file: FileId, item: &Item) -> Option<Symbol> {
+    let place = |span: Span| FileSpan { file, span: span.shifted(item.offset) };
+    let symbol = |name: &str, detail: String, kind, span| Symbol {
+        name: name.to_owned(),
+        detail,
+        kind,
+        place: place(span),
+        whole: place(item.tree.span),
+        children: Vec::new(),
+    };
+    let words = |span| snapshot.text(place(span)).to_owned();
+    Some(match &item.tree.kind {
+        ItemKind::Use { path, alias } => {
+            let (name, span) = match alias {
+                Some(alias) => (&*alias.text, alias.span),
+                None => (&*path.value, path.span),
+            };
+            symbol(name, path.value.to_string(), SymbolKind::File, span)
+        }
+        ItemKind::Let { name, value, .. } => {
+            symbol(&name.text, short(&words(value.span)), SymbolKind::Value, name.span)
+        }
+        ItemKind::Part { role, name, block, base, .. } => {
+            let detail = match base {
+                PartBase::Kind(kind) => kind.text.to_string(),
+                PartBase::Variant(path) => format!("= {}", words(path.span)),
+            };
+            let field = |entry: &Entry| Symbol {
+                whole: place(entry.span),
+                ..symbol(
+                    &words(entry.key.span),
+                    short(&words(entry.value.span)),
+                    SymbolKind::Field,
+                    entry.key.span,
+                )
+            };
+            let children = block.entries.iter().map(field).collect();
+            Symbol { children, ..symbol(&name.text, detail, kind_of(*role), name.span) }
+        }
+        ItemKind::Drive { name, chain, .. } => {
+            symbol(&name.text, short(&words(chain.span)), SymbolKind::Drive, name.span)
+        }
+        ItemKind::Case { name, .. } => symbol(&name.text, String::new(), SymbolKind::Case, name.span),
+        ItemKind::Require { clause, condition, .. } => {
+            symbol(&clause.value, short(&words(condition.span)), SymbolKind::Criterion, clause.span)
+        }
+        _ => return None,
+    })
 }
 
 /// The declarations of all files whose name holds the letters of `query` in their order, case aside.

@@ -128,7 +128,7 @@ fn drive(snapshot: &Snapshot, place: FileSpan) -> Option<String> {
     match number(&row.speed) {
         Some(speed) if row.moves => Some(fitting(&[format!("{speed}, {}", row.outcome), speed])),
         Some(speed) => Some(fitting(&[format!("{}, {speed}", row.outcome), row.outcome.clone()])),
-        None => Some(fitting(&[row.outcome.clone()])),
+        None => Some(fitting(std::slice::from_ref(&row.outcome))),
     }
 }
 

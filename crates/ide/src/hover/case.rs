@@ -9,6 +9,7 @@ use layshaft_semantics::index::Target;
 
 use super::MOST;
 use super::criterion::{more, verdict};
+use super::field::plain_value;
 use crate::markup::{Page, text};
 use crate::{Snapshot, numbers};
 
@@ -62,7 +63,11 @@ fn row(snapshot: &Snapshot, change: &Change) -> Vec<String> {
         None => Target::Let(change.owner),
         Some(field) => Target::Field(change.owner, field.clone()),
     };
-    let plain = numbers::plain_text(snapshot, &target).map(|plain| text(&plain)).unwrap_or_default();
+    let plain = match (numbers::plain_text(snapshot, &target), &change.field) {
+        (Some(plain), _) => text(&plain),
+        (None, Some(field)) => plain_value(snapshot, change.owner, field).unwrap_or_default(),
+        (None, None) => String::new(),
+    };
     vec![text(snapshot.text(change.place)), plain, to(snapshot, change)]
 }
 

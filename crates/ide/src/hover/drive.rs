@@ -83,18 +83,20 @@ pub(crate) fn points(page: &mut Page, sheet: &DriveSheet, most: usize) {
 
 fn judged(snapshot: &Snapshot, drive: FileSpan) -> Vec<String> {
     let criteria = snapshot.criteria_of(drive);
-    let mut lines: Vec<String> = criteria
-        .iter()
-        .take(MOST)
-        .filter_map(|index| {
-            let criterion = snapshot.analysis.criteria.get(*index)?;
-            let outcome = criterion.governing.and_then(|at| criterion.outcomes.get(at));
-            let place = outcome
-                .map(|outcome| sheet::case_label(&snapshot.analysis, outcome.case, outcome.gear.as_deref()));
-            let place = place.map(|label| format!(", governed by {}", text(&label))).unwrap_or_default();
-            Some(format!("{}: {}{place}", text(&criterion.clause), verdict(criterion.verdict)))
-        })
-        .collect();
+    listed(snapshot, criteria)
+}
+
+/// Criteria with their verdicts and governing cases, the first ones.
+pub(super) fn listed(snapshot: &Snapshot, criteria: &[usize]) -> Vec<String> {
+    let line = |index: &usize| {
+        let criterion = snapshot.analysis.criteria.get(*index)?;
+        let outcome = criterion.governing.and_then(|at| criterion.outcomes.get(at));
+        let place = outcome
+            .map(|outcome| sheet::case_label(&snapshot.analysis, outcome.case, outcome.gear.as_deref()));
+        let place = place.map(|label| format!(", governed by {}", text(&label))).unwrap_or_default();
+        Some(format!("{}: {}{place}", text(&criterion.clause), verdict(criterion.verdict)))
+    };
+    let mut lines: Vec<String> = criteria.iter().take(MOST).filter_map(line).collect();
     let left = criteria.len().saturating_sub(lines.len());
     if left > 0 {
         lines.push(format!("and {left} more criteria"));

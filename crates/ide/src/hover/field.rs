@@ -14,20 +14,7 @@ use crate::markup::{self, Page, code, text};
 
 pub(super) fn field(snapshot: &Snapshot, owner: FileSpan, name: &str) -> Option<String> {
     let mut page = Page::default();
-    let word = name.split(' ').next().unwrap_or(name);
-    let (label, row, record) = match (snapshot.part(owner), snapshot.drive(owner)) {
-        (Some(part), _) => {
-            let row = part.row?;
-            let common = registry::common_fields(part.role);
-            let row = row.fields.iter().chain(common).find(|field| field.name == word);
-            (text(&part.name), row, part.fields.iter().find(|field| field.name == name))
-        }
-        (None, Some((_, drive))) => {
-            let row = registry::DRIVE_FIELDS.iter().find(|field| field.name == word);
-            (text(&drive.name), row, None)
-        }
-        _ => return None,
-    };
+    let (label, row, record) = known(snapshot, owner, name)?;
     let given = entry(snapshot, owner, name, record);
     page.paragraph(format!("**{label}\\.{}** = {}", text(name), value(snapshot, record, given, row)));
     if let Some(row) = row {
@@ -42,6 +29,29 @@ pub(super) fn field(snapshot: &Snapshot, owner: FileSpan, name: &str) -> Option<
     page.paragraph(basis(record.and_then(|record| record.basis.as_ref())));
     page.paragraph(overridden(snapshot, owner, Some(name)));
     Some(page.finish())
+}
+
+/// The owner's name, made harmless, the row of the field, and what the analysis has of it.
+fn known<'a>(
+    snapshot: &'a Snapshot,
+    owner: FileSpan,
+    name: &str,
+) -> Option<(String, Option<&'static Field>, Option<&'a FieldRecord>)> {
+    let word = name.split(' ').next().unwrap_or(name);
+    if let Some(part) = snapshot.part(owner) {
+        let common = registry::common_fields(part.role);
+        let row = part.row?.fields.iter().chain(common).find(|field| field.name == word);
+        return Some((text(&part.name), row, part.fields.iter().find(|field| field.name == name)));
+    }
+    let (_, drive) = snapshot.drive(owner)?;
+    let row = registry::DRIVE_FIELDS.iter().find(|field| field.name == word);
+    Some((text(&drive.name), row, None))
+}
+
+/// The value of a field or setting in the plain spec, made harmless.
+pub(super) fn plain_value(snapshot: &Snapshot, owner: FileSpan, name: &str) -> Option<String> {
+    let (_, row, record) = known(snapshot, owner, name)?;
+    Some(value(snapshot, record, entry(snapshot, owner, name, record), row))
 }
 
 /// The line that gives a field its value: in the part itself, in the base of a variant, in a drive's block.

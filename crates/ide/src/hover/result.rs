@@ -6,9 +6,11 @@ use layshaft_present::derivation::{self, Line};
 use layshaft_present::sheet::{self, Entry};
 use layshaft_present::shown::shown;
 use layshaft_semantics::analysis::{DriveCase, DriveRecord};
+use layshaft_semantics::index::Target;
 
 use super::MOST;
 use super::criterion::more;
+use super::drive::listed;
 use super::part::{cell, remark};
 use crate::Snapshot;
 use crate::markup::{self, Page, code, text};
@@ -45,8 +47,32 @@ pub(super) fn result(
         .collect();
     page.table(&["case", row.name, "remark"], &rows);
     page.paragraph(more(record.cases.len(), rows.len()));
+    let asking: Vec<usize> = snapshot
+        .criteria_of(drive)
+        .iter()
+        .copied()
+        .filter(|index| {
+            let criterion = snapshot.analysis.criteria.get(*index);
+            criterion.is_some_and(|criterion| asks(snapshot, criterion.condition_place, drive, part, name))
+        })
+        .collect();
+    page.list(&listed(snapshot, &asking));
     came_about(snapshot, &mut page, record, part, port, name);
     Some(page.finish())
+}
+
+/// Whether a condition holds this result.
+fn asks(
+    snapshot: &Snapshot,
+    condition: FileSpan,
+    drive: FileSpan,
+    part: Option<FileSpan>,
+    name: &str,
+) -> bool {
+    snapshot.names_in(condition).iter().any(|found| {
+        matches!(&found.target, Target::Result { drive: Some(of), part: at, name: asked, .. }
+            if *of == drive && *at == part && asked == name)
+    })
 }
 
 /// The row of a result of a drive or of a part.

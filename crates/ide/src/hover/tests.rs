@@ -52,6 +52,7 @@ fn a_literal_in_other_units() {
     has("let p: mechanical_power = 4 k$0W\n", &["**4 kW**", "4000 W", "5.364 hp", "5.438 PS"]);
     has("let v = 3 * 1$05 km/h\n", &["**15 km/h**", "4.167 m/s"]);
     has("let e = 74$0 %\n", &["0.74"]);
+    has("let p = 5 h$0p\n", &["3.728 kW", "5.069 PS"]);
 }
 
 #[test]
@@ -61,6 +62,10 @@ fn a_field_says_what_the_registry_knows() {
         &["**motor\\.no\\_load\\_speed** = 3000 rpm", "314.2 rad/s", "one of several", "usual"],
     );
     has(&FAN.replace("stall_torque = 10", "stall$0_torque = 10"), &["8 N·m in weak", "9 N·m in weak"]);
+    has(
+        &FAN.replace("10 N·m;", "10 N·m ± 5 %;").replace("{ stall_t", "{ stall$0_t"),
+        &["written 10 N·m ± 5 %"],
+    );
     has(&FAN.replace("direction =", "dire$0ction ="), &["which way the load is to move", "default"]);
 }
 
@@ -91,7 +96,14 @@ fn a_result_with_its_derivation() {
     let spec = format!("{FAN}require \"R1\" d.motor.tor$0que <= 8 N·m\n");
     has(
         &spec,
-        &["**d\\.motor\\.torque**", "| plain |", "How it came about in plain", "T0 * (1 - w / w0)", "10 N·m"],
+        &[
+            "**d\\.motor\\.torque**",
+            "| plain |",
+            "R1: ",
+            "How it came about in plain",
+            "T0 * (1 - w / w0)",
+            "10 N·m",
+        ],
     );
 }
 
@@ -113,6 +125,42 @@ fn words_of_the_language() {
     has(&FAN.replace("case weak", "case we$0ak"), &["2 combinations", "10 N·m"]);
     has("use \"p.shaft\" as p$0\n--- p.shaft\nlet b = 1 m\n", &["p\\.shaft", "Declares b"]);
     assert_eq!(told("# a let in a com$0ment\nlet a = 5 m\n"), None);
+}
+
+/// The worked specs: what the hover of a drive shows is what the command prints, everywhere is told without fault, and
+/// no hint is too long.
+#[test]
+fn the_worked_specs_say_what_the_command_says() {
+    let specs = [
+        include_str!("../../../../tests/specs/mill-hoist.shaft"),
+        include_str!("../../../../tests/specs/bakery-trike.shaft"),
+        include_str!("../../../../tests/specs/barge-winch.shaft"),
+    ];
+    for spec in specs {
+        let fixture = Fixture::new(spec);
+        let snapshot = &fixture.snapshot;
+        let told: Vec<_> = (0..=spec.len() as u32)
+            .filter_map(|offset| hover(snapshot, FileId(0), offset, Options { charts: true }))
+            .collect();
+        assert!(told.len() > spec.len() / 3, "{} of {}", told.len(), spec.len());
+        let sheet =
+            layshaft_present::sheet::sheet(&snapshot.analysis, layshaft_present::sheet::Detail::Tables);
+        for (drive, record) in sheet.drives.iter().zip(&snapshot.analysis.drives) {
+            let page = told.iter().find(|hover| hover.place == record.place).map(|hover| &hover.markdown);
+            let page = page.map_or("", String::as_str);
+            for row in drive.rows.iter().take(super::MOST) {
+                for source in &row.sources[..1] {
+                    for entry in [&row.speed, &source.speed, &source.effort] {
+                        assert!(page.contains(entry.text()), "{} is not in {page}", entry.text());
+                    }
+                }
+            }
+        }
+        let whole = layshaft_diagnostics::Span::new(0, u32::MAX);
+        for hint in crate::hints::hints(snapshot, FileId(0), whole, Default::default()) {
+            assert!(hint.text.chars().count() <= crate::hints::LONGEST, "{}", hint.text);
+        }
+    }
 }
 
 /// Whatever a spec says, no link, image or tag of its own comes through.

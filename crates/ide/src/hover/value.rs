@@ -6,7 +6,7 @@ use layshaft_present::number;
 use layshaft_present::shown::{joined, shown, unit_of};
 use layshaft_present::unit::{convert, kind_of};
 use layshaft_semantics::quantity::{Datum, Quantity};
-use layshaft_syntax::{ItemKind, Value};
+use layshaft_syntax::{ItemKind, Value, ValueKind};
 
 use super::MOST;
 use crate::markup::{self, Page, text};
@@ -70,7 +70,7 @@ pub(super) fn limits(quantity: &Quantity) -> Option<String> {
     Some(format!("limits {} .. {}{}", end(low), end(high), confidence.unwrap_or_default()))
 }
 
-/// `1.25 * rated_load + block_mass = 1.25 × 1250 kg + 60 kg = 1622.5 kg`; empty where nothing was computed.
+/// `1.25 * rated_load + block_mass = 1.25 × 1250 kg + 60 kg = 1622.5 kg`; empty where nothing is to be said.
 pub(super) fn came_about(
     snapshot: &Snapshot,
     place: FileSpan,
@@ -78,10 +78,16 @@ pub(super) fn came_about(
     datum: Option<&Datum>,
 ) -> String {
     let Some(item) = snapshot.item(place.file, place.span.start) else { return String::new() };
-    let Some(numbers) = numbers::put_in(snapshot, place.file, item, value) else { return String::new() };
     let written = snapshot.text(FileSpan { file: place.file, span: value.span.shifted(item.offset) });
+    let written = written.split_whitespace().collect::<Vec<_>>().join(" ");
+    let Some(numbers) = numbers::put_in(snapshot, place.file, item, value) else {
+        // `2.9 × rated`, `12 N·m ± 5 %`: said as written where the value does not look the same.
+        let same = datum.is_none_or(|datum| shown(datum).text() == written);
+        let single = matches!(value.kind, ValueKind::Expr(_) | ValueKind::Range { .. });
+        return if same || !single { String::new() } else { format!("written {}", text(&written)) };
+    };
     let gives = datum.map_or(String::new(), |datum| format!(" = {}", text(shown(datum).text())));
-    format!("{} = {}{gives}", text(written), text(&numbers))
+    format!("{} = {}{gives}", text(&written), text(&numbers))
 }
 
 /// `from "catalogue"`; empty without a basis.
