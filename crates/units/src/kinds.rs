@@ -182,13 +182,13 @@ pub static KINDS: &[Kind] = &[
         .units("V/(rad/s)", &["V/krpm", "V/rpm", "V·s/rad", "V/(rad/s)"])
         .means("induced voltage per rotational speed"),
     Kind::new("speed_constant", "speed constant", Dim::whole(-2, -1, 2, 1, 0), Some(1))
-        .units("(rad/s)/V", &["rpm/V", "(rad/s)/V"])
+        .units("rad/(V·s)", &["rpm/V", "rad/(V·s)"])
         .means("rotational speed without load per voltage"),
     Kind::new("force_constant", "force constant", Dim::whole(1, 1, -2, -1, 0), Some(0))
         .units("N/A", &["N/A", "V/(m/s)"])
         .means("force per current of a linear motor, or induced voltage per speed"),
     Kind::new("speed_regulation", "speed regulation", dim(-2, -1, 1), Some(2))
-        .units("(rad/s)/(N·m)", &["rpm/(N·m)", "rpm/(mN·m)", "(rad/s)/(N·m)"])
+        .units("rad/(N·m·s)", &["rpm/(N·m)", "rpm/(mN·m)", "rad/(N·m·s)"])
         .means("fall of rotational speed per torque along a straight line"),
     // Pressure and flow
     Kind::new("pressure", "pressure", PRESSURE, Some(0))
