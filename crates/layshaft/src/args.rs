@@ -88,6 +88,12 @@ pub enum Command {
         /// Name of the spec; `.shaft` is added where it is missing
         name: PathBuf,
     },
+    /// Serve an editor over standard input and output, by the Language Server Protocol
+    Lsp {
+        /// Standard input and output, as without it; some editors add it
+        #[arg(long)]
+        stdio: bool,
+    },
     /// Print completions for a shell
     Completions {
         /// The shell

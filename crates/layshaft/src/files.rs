@@ -41,6 +41,12 @@ impl Root {
         Ok(Self { folder: marked.unwrap_or(&folder).to_path_buf() })
     }
 
+    /// The root that [`Root::of`] has found before.
+    #[must_use]
+    pub fn at(folder: &Path) -> Self {
+        Self { folder: folder.to_path_buf() }
+    }
+
     /// The folder itself, no links in it.
     #[must_use]
     pub fn folder(&self) -> &Path {
@@ -86,6 +92,21 @@ pub fn here() -> PathBuf {
 #[must_use]
 pub fn is_folder(path: &Path) -> bool {
     path.is_dir()
+}
+
+/// Length and time of change of a file: others when its text is another.
+#[must_use]
+pub fn stamp(path: &Path) -> Option<(u64, u128)> {
+    let about = fs::metadata(path).ok()?;
+    let changed = about.modified().ok()?.duration_since(std::time::UNIX_EPOCH).ok()?;
+    Some((about.len(), changed.as_nanos()))
+}
+
+/// Whether a process runs, where the system shows its processes as folders.
+#[must_use]
+pub fn runs(process: u32) -> Option<bool> {
+    let all = Path::new("/proc");
+    all.join("self").exists().then(|| all.join(process.to_string()).exists())
 }
 
 /// The text of a file.

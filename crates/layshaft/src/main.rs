@@ -7,6 +7,7 @@ mod files;
 mod fmt;
 mod inputs;
 mod kinds;
+mod lsp;
 mod new;
 mod output;
 mod shell;
@@ -46,6 +47,10 @@ fn run() -> Exit {
             return if error.use_stderr() { Exit::Unusable } else { Exit::Holds };
         }
     };
+    if matches!(args.command, Command::Lsp { .. }) {
+        // Before an output is made: that keeps standard output to itself.
+        return lsp::lsp();
+    }
     let mut out = Output::new(args.color);
     let exit = match args.command {
         Command::Check { paths, format } => check::check(&paths, format, &mut out),
@@ -54,6 +59,7 @@ fn run() -> Exit {
         Command::Units { kind } => units::units(kind.as_deref(), &mut out),
         Command::Kinds { name } => kinds::kinds(name.as_deref(), &mut out),
         Command::New { name } => new::new(&name, &mut out),
+        Command::Lsp { .. } => return lsp::lsp(),
         Command::Completions { shell } => shell::completions(shell, &mut out),
         Command::Man { command } => shell::man(command.as_deref(), &mut out),
     };

@@ -1,0 +1,97 @@
+//! What the client can do, as far as the server acts upon it.
+
+use tower_lsp::lsp_types::{ClientCapabilities, InitializeParams, PositionEncodingKind};
+
+use crate::convert::Encoding;
+
+/// What the client can do.
+#[derive(Clone, Debug, Default)]
+pub struct Client {
+    /// What columns count.
+    pub encoding: Encoding,
+    /// Whether the client asks for findings; else they are sent.
+    pub pulls: bool,
+    /// Whether an answer may hold the findings of other files.
+    pub related_documents: bool,
+    /// Whether findings may point to other places.
+    pub related_information: bool,
+    /// Whether the client answers questions for its settings.
+    pub configuration: bool,
+    /// Whether it tells of changed settings only where asked to.
+    pub register_configuration: bool,
+    /// Whether it watches files where asked to.
+    pub watches: bool,
+    /// Which answers the client takes again when told that they changed.
+    pub refresh: Refresh,
+    /// Whether an edit may name the version it is for.
+    pub versioned_edits: bool,
+    /// Whether charts may stand in a hover.
+    pub charts: bool,
+}
+
+/// Which answers the client takes again when told that they changed.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Refresh {
+    /// Findings.
+    pub diagnostics: bool,
+    /// Inlay hints.
+    pub hints: bool,
+    /// Code lenses.
+    pub lenses: bool,
+}
+
+impl Client {
+    /// Reads what a client says of itself.
+    #[must_use]
+    pub fn new(params: &InitializeParams) -> Self {
+        let of = &params.capabilities;
+        let workspace = of.workspace.as_ref();
+        let document = of.text_document.as_ref();
+        let options = params.initialization_options.as_ref();
+        let on = |flag: Option<bool>| flag == Some(true);
+        Self {
+            encoding: encoding(of),
+            pulls: document.is_some_and(|of| of.diagnostic.is_some()),
+            related_documents: on(document
+                .and_then(|of| of.diagnostic.as_ref())
+                .and_then(|of| of.related_document_support)),
+            related_information: on(document
+                .and_then(|of| of.publish_diagnostics.as_ref())
+                .and_then(|of| of.related_information)),
+            configuration: on(workspace.and_then(|of| of.configuration)),
+            register_configuration: on(workspace
+                .and_then(|of| of.did_change_configuration)
+                .and_then(|of| of.dynamic_registration)),
+            watches: on(workspace
+                .and_then(|of| of.did_change_watched_files)
+                .and_then(|of| of.dynamic_registration)),
+            refresh: Refresh {
+                diagnostics: on(workspace
+                    .and_then(|of| of.diagnostic.as_ref())
+                    .and_then(|of| of.refresh_support)),
+                hints: on(workspace.and_then(|of| of.inlay_hint.as_ref()).and_then(|of| of.refresh_support)),
+                lenses: on(workspace.and_then(|of| of.code_lens.as_ref()).and_then(|of| of.refresh_support)),
+            },
+            versioned_edits: on(workspace
+                .and_then(|of| of.workspace_edit.as_ref())
+                .and_then(|of| of.document_changes)),
+            charts: options.and_then(|of| of.get("charts")).and_then(serde_json::Value::as_bool)
+                == Some(true),
+        }
+    }
+}
+
+/// UTF-8 where the client offers it before UTF-16; UTF-16 is what every client can.
+fn encoding(of: &ClientCapabilities) -> Encoding {
+    let offered = of.general.as_ref().and_then(|of| of.position_encodings.as_ref());
+    let known = offered.into_iter().flatten().find_map(|kind| {
+        if *kind == PositionEncodingKind::UTF8 {
+            Some(Encoding::Utf8)
+        } else if *kind == PositionEncodingKind::UTF16 {
+            Some(Encoding::Utf16)
+        } else {
+            None
+        }
+    });
+    known.unwrap_or_default()
+}

@@ -1,0 +1,105 @@
+//! The beginning: what the client can do, what the server offers.
+
+use tower_lsp::jsonrpc::Result;
+use tower_lsp::lsp_types::request::RegisterCapability;
+use tower_lsp::lsp_types::{
+    DiagnosticOptions, DiagnosticServerCapabilities, DidChangeWatchedFilesRegistrationOptions,
+    FileSystemWatcher, GlobPattern, InitializeParams, InitializeResult, OneOf, PositionEncodingKind,
+    Registration, RegistrationParams, SaveOptions, ServerCapabilities, ServerInfo,
+    TextDocumentSyncCapability, TextDocumentSyncKind, TextDocumentSyncOptions, TextDocumentSyncSaveOptions,
+    WorkspaceFoldersServerCapabilities, WorkspaceServerCapabilities,
+};
+
+use crate::client::Client;
+use crate::convert::Encoding;
+use crate::core::Core;
+use crate::handlers::settings;
+use crate::outbox::{Asked, value};
+
+/// What may change answers though it is not open.
+const WATCHED: [&str; 3] = ["**/*.shaft", "**/*.csv", "**/layshaft.toml"];
+
+/// Agrees on what both can do.
+pub fn initialize(core: &mut Core, params: InitializeParams) -> Result<InitializeResult> {
+    core.client = Client::new(&params);
+    core.folders = match params.workspace_folders {
+        Some(folders) if !folders.is_empty() => folders.into_iter().map(|folder| folder.uri).collect(),
+        _ => params.root_uri.into_iter().collect(),
+    };
+    if let Some(options) = &params.initialization_options {
+        settings::set(core, options);
+    }
+    Ok(InitializeResult {
+        capabilities: capabilities(&core.client),
+        server_info: Some(ServerInfo {
+            name: String::from("layshaft"),
+            version: Some(env!("CARGO_PKG_VERSION").to_owned()),
+        }),
+    })
+}
+
+fn capabilities(client: &Client) -> ServerCapabilities {
+    ServerCapabilities {
+        position_encoding: Some(match client.encoding {
+            Encoding::Utf8 => PositionEncodingKind::UTF8,
+            Encoding::Utf16 => PositionEncodingKind::UTF16,
+        }),
+        text_document_sync: Some(TextDocumentSyncCapability::Options(TextDocumentSyncOptions {
+            open_close: Some(true),
+            change: Some(TextDocumentSyncKind::INCREMENTAL),
+            save: Some(TextDocumentSyncSaveOptions::SaveOptions(SaveOptions { include_text: Some(false) })),
+            ..TextDocumentSyncOptions::default()
+        })),
+        // To a client that does not ask, findings are sent; never both.
+        diagnostic_provider: client.pulls.then(|| {
+            DiagnosticServerCapabilities::Options(DiagnosticOptions {
+                identifier: Some(String::from("layshaft")),
+                inter_file_dependencies: true,
+                workspace_diagnostics: true,
+                ..DiagnosticOptions::default()
+            })
+        }),
+        definition_provider: Some(OneOf::Left(true)),
+        document_formatting_provider: Some(OneOf::Left(true)),
+        document_range_formatting_provider: Some(OneOf::Left(true)),
+        workspace: Some(WorkspaceServerCapabilities {
+            workspace_folders: Some(WorkspaceFoldersServerCapabilities {
+                supported: Some(true),
+                change_notifications: Some(OneOf::Left(true)),
+            }),
+            file_operations: None,
+        }),
+        ..ServerCapabilities::default()
+    }
+}
+
+/// Asks for what the client offers: settings, and to be told of files that change.
+pub fn initialized(core: &mut Core) {
+    let mut registrations = Vec::new();
+    let mut register = |method: &str, options: Option<serde_json::Value>| {
+        registrations.push(Registration {
+            id: method.to_owned(),
+            method: method.to_owned(),
+            register_options: options,
+        });
+    };
+    if core.client.watches {
+        let watcher = |glob: &&str| FileSystemWatcher {
+            glob_pattern: GlobPattern::String((*glob).to_owned()),
+            kind: None,
+        };
+        let options =
+            DidChangeWatchedFilesRegistrationOptions { watchers: WATCHED.iter().map(watcher).collect() };
+        register("workspace/didChangeWatchedFiles", Some(value(&options)));
+    }
+    if core.client.register_configuration {
+        register(
+            "workspace/didChangeConfiguration",
+            Some(serde_json::json!({ "section": crate::settings::SECTION })),
+        );
+    }
+    if !registrations.is_empty() {
+        core.out.ask::<RegisterCapability>(&RegistrationParams { registrations }, Asked::Favour);
+    }
+    settings::ask(core);
+}

@@ -1,0 +1,117 @@
+//! What the protocol asks for, one file a group: convert, ask `ide`, convert.
+
+pub mod diagnostics;
+mod format;
+mod initialize;
+mod navigate;
+pub mod settings;
+mod sync;
+
+use std::sync::Arc;
+
+use layshaft_ide::Snapshot;
+use layshaft_ide::base::{FileId, FileSpan, SourceFile};
+use serde::Serialize;
+use serde::de::DeserializeOwned;
+use serde_json::Value;
+use tower_lsp::jsonrpc::{Error, Result};
+use tower_lsp::lsp_types::{Location, Position, Range, TextDocumentPositionParams, Url};
+
+use crate::core::Core;
+use crate::outbox::value;
+
+/// The spec itself; other files come behind it.
+const SPEC: FileId = FileId(0);
+
+/// Answers a request.
+pub fn request(core: &mut Core, method: &str, params: Value) -> Result<Value> {
+    match method {
+        "initialize" => typed(core, params, initialize::initialize),
+        "textDocument/definition" => typed(core, params, navigate::definition),
+        "textDocument/diagnostic" => typed(core, params, diagnostics::document),
+        "workspace/diagnostic" => typed(core, params, diagnostics::workspace),
+        "textDocument/formatting" => typed(core, params, format::document),
+        "textDocument/rangeFormatting" => typed(core, params, format::range),
+        _ => Err(Error {
+            message: format!("`{method}` is not known here").into(),
+            ..Error::method_not_found()
+        }),
+    }
+}
+
+/// Takes a notification. Unknown ones are passed over.
+pub fn notification(core: &mut Core, method: &str, params: Value) -> std::result::Result<(), String> {
+    match method {
+        "initialized" => initialize::initialized(core),
+        "textDocument/didOpen" => sync::opened(core, parsed(params)?),
+        "textDocument/didChange" => return sync::changed(core, parsed(params)?),
+        "textDocument/didClose" => return sync::closed(core, &parsed(params)?),
+        "textDocument/didSave" => sync::saved(core),
+        "workspace/didChangeWatchedFiles" => sync::watched(core, parsed(params)?),
+        "workspace/didChangeWorkspaceFolders" => sync::folders(core, parsed(params)?),
+        "workspace/didChangeConfiguration" => settings::changed(core, parsed(params)?),
+        _ => {}
+    }
+    Ok(())
+}
+
+fn parsed<P: DeserializeOwned>(params: Value) -> std::result::Result<P, String> {
+    serde_json::from_value(params).map_err(|error| error.to_string())
+}
+
+fn typed<P: DeserializeOwned, R: Serialize>(
+    core: &mut Core,
+    params: Value,
+    handler: impl FnOnce(&mut Core, P) -> Result<R>,
+) -> Result<Value> {
+    let params = parsed(params).map_err(Error::invalid_params)?;
+    handler(core, params).map(|answer| value(&answer))
+}
+
+/// A spec with a place in it.
+struct Asked {
+    uri: Url,
+    snapshot: Arc<Snapshot>,
+}
+
+impl Asked {
+    /// The spec a request is about.
+    fn new(core: &mut Core, uri: &Url) -> Result<Self> {
+        match core.specs.snapshot(uri) {
+            Some(snapshot) => Ok(Self { uri: uri.clone(), snapshot }),
+            None if core.specs.specs.contains_key(uri) => Err(Error {
+                message: "the analysis of this text failed; change it to try again".into(),
+                ..Error::internal_error()
+            }),
+            None => Err(Error::invalid_params(format!("{uri} is not open as a spec"))),
+        }
+    }
+
+    /// The spec and the offset a request is about.
+    fn at(core: &mut Core, place: &TextDocumentPositionParams) -> Result<(Self, u32)> {
+        let asked = Self::new(core, &place.text_document.uri)?;
+        let offset = asked.offset(core, place.position);
+        Ok((asked, offset))
+    }
+
+    fn file(&self) -> &SourceFile {
+        // An analysis always holds its spec.
+        &self.snapshot.analysis.files[0]
+    }
+
+    fn offset(&self, core: &Core, position: Position) -> u32 {
+        core.client.encoding.offset(self.file(), position)
+    }
+
+    /// A place of the spec or a file that it uses.
+    fn location(&self, core: &Core, place: FileSpan) -> Option<Location> {
+        Some(Location::new(
+            core.specs.uri_of(&self.uri, &self.snapshot, place.file)?,
+            self.range(core, place)?,
+        ))
+    }
+
+    fn range(&self, core: &Core, place: FileSpan) -> Option<Range> {
+        Some(core.client.encoding.range(self.snapshot.file(place.file)?, place.span))
+    }
+}

@@ -1,0 +1,242 @@
+//! The specs that are open, analyzed: which text belongs to which, and what has to be done again.
+
+use std::cell::RefCell;
+use std::collections::{BTreeMap, BTreeSet};
+use std::path::{Path, PathBuf};
+use std::sync::Arc;
+use std::time::Instant;
+
+use layshaft_ide::Snapshot;
+use layshaft_ide::base::{FileId, Files, Memo, NoFiles, ReadError};
+use tower_lsp::lsp_types::Url;
+
+use crate::disk::{Disk, Place, Stamp, below};
+use crate::document::Document;
+
+/// An open spec.
+#[derive(Debug, Default)]
+pub struct Spec {
+    memo: Memo,
+    /// The analysis of the texts as they were; none before the first, and where the last one failed.
+    pub snapshot: Option<Arc<Snapshot>>,
+    /// Whether the analysis is that of the texts as they are.
+    pub fresh: bool,
+    /// Whether the spec's own text is all that changed.
+    pub own_change: bool,
+    /// When its findings were last told.
+    pub told: Option<Instant>,
+    /// Every file that was asked for, found or not.
+    pub reads: BTreeSet<PathBuf>,
+}
+
+/// Documents and specs.
+pub struct Specs {
+    disk: Box<dyn Disk>,
+    /// Every open document.
+    pub documents: BTreeMap<Url, Document>,
+    /// Every open spec.
+    pub specs: BTreeMap<Url, Spec>,
+    /// Specs whose findings are not told.
+    pub untold: BTreeSet<Url>,
+    open_at: BTreeMap<PathBuf, Url>,
+    cache: RefCell<BTreeMap<PathBuf, Kept>>,
+}
+
+/// A text as it was read from the disk.
+type Kept = (Stamp, Result<Arc<str>, ReadError>);
+
+impl Specs {
+    /// None open.
+    pub fn new(disk: Box<dyn Disk>) -> Self {
+        Self {
+            disk,
+            documents: BTreeMap::new(),
+            specs: BTreeMap::new(),
+            untold: BTreeSet::new(),
+            open_at: BTreeMap::new(),
+            cache: RefCell::default(),
+        }
+    }
+
+    /// The disk.
+    pub fn disk(&self) -> &dyn Disk {
+        &*self.disk
+    }
+
+    /// Opens a document, over one that is open under the same name.
+    pub fn open(&mut self, uri: &Url, language: &str, version: i32, text: String) {
+        self.close(uri);
+        let is_spec = language == "layshaft" || uri.path().ends_with(".shaft");
+        let place = file_path(uri).and_then(|path| self.disk.place(&path));
+        if let Some(place) = &place {
+            self.open_at.insert(place.whole(), uri.clone());
+        }
+        let whole = place.as_ref().map(Place::whole);
+        self.documents.insert(uri.clone(), Document::new(version, text, place, is_spec));
+        if is_spec {
+            self.specs.insert(uri.clone(), Spec::default());
+        }
+        self.touched(uri, whole.as_deref());
+    }
+
+    /// Closes a document; whether it was open.
+    pub fn close(&mut self, uri: &Url) -> bool {
+        let Some(document) = self.documents.remove(uri) else { return false };
+        self.specs.remove(uri);
+        self.untold.remove(uri);
+        if let Some(place) = document.place {
+            let whole = place.whole();
+            self.open_at.remove(&whole);
+            self.changed(&whole);
+        }
+        true
+    }
+
+    /// The text of an open document changed.
+    pub fn edited(&mut self, uri: &Url) {
+        let whole = self.documents.get(uri).and_then(|document| document.place.as_ref()).map(Place::whole);
+        self.touched(uri, whole.as_deref());
+    }
+
+    fn touched(&mut self, uri: &Url, whole: Option<&Path>) {
+        if let Some(whole) = whole {
+            self.changed(whole);
+        }
+        if let Some(spec) = self.specs.get_mut(uri) {
+            spec.own_change = spec.fresh || spec.snapshot.is_none();
+            spec.fresh = false;
+            self.untold.insert(uri.clone());
+        }
+    }
+
+    /// A file changed: every spec that asked for it has to be analyzed again.
+    pub fn changed(&mut self, whole: &Path) {
+        for (uri, spec) in &mut self.specs {
+            if spec.reads.contains(whole) {
+                spec.fresh = false;
+                spec.own_change = false;
+                self.untold.insert(uri.clone());
+            }
+        }
+    }
+
+    /// Everything has to be placed and analyzed again: a root came or went.
+    pub fn placed_anew(&mut self) {
+        self.open_at.clear();
+        for (uri, document) in &mut self.documents {
+            document.place = file_path(uri).and_then(|path| self.disk.place(&path));
+            if let Some(place) = &document.place {
+                self.open_at.insert(place.whole(), uri.clone());
+            }
+        }
+        for (uri, spec) in &mut self.specs {
+            spec.fresh = false;
+            spec.own_change = false;
+            self.untold.insert(uri.clone());
+        }
+    }
+
+    /// The files that were read from the disk and are not what they were. For clients that do not watch files.
+    pub fn look_again(&mut self) {
+        let kept = self.cache.borrow();
+        let gone = |(whole, (stamp, _)): (&PathBuf, &Kept)| {
+            let (folder, name) = (whole.parent()?, whole.file_name()?.to_str()?);
+            (self.disk.stamp(folder, name) != Some(*stamp)).then(|| whole.clone())
+        };
+        let changed: Vec<PathBuf> = kept.iter().filter_map(gone).collect();
+        drop(kept);
+        for whole in changed {
+            self.changed(&whole);
+        }
+    }
+
+    /// The analysis of a spec as it is now; none where it is not open, or its analysis failed.
+    pub fn snapshot(&mut self, uri: &Url) -> Option<Arc<Snapshot>> {
+        let document = self.documents.get(uri)?;
+        let spec = self.specs.get_mut(uri)?;
+        if spec.fresh {
+            return spec.snapshot.clone();
+        }
+        // Should the analysis panic, it is not tried again before the next change.
+        spec.fresh = true;
+        spec.snapshot = None;
+        let mut memo = std::mem::take(&mut spec.memo);
+        let text = document.text();
+        let (snapshot, reads) = match &document.place {
+            Some(place) => {
+                let files = Overlay {
+                    specs: (&self.documents, &self.open_at),
+                    disk: &*self.disk,
+                    cache: &self.cache,
+                    root: &place.root,
+                    reads: RefCell::default(),
+                };
+                let snapshot = Snapshot::new(&place.path, text, &files, &mut memo);
+                (snapshot, files.reads.into_inner())
+            }
+            None => (Snapshot::new(&alone(uri), text, &NoFiles, &mut memo), BTreeSet::new()),
+        };
+        spec.memo = memo;
+        spec.reads = reads;
+        spec.snapshot = Some(Arc::new(snapshot));
+        spec.snapshot.clone()
+    }
+
+    /// The name of a file of an open spec in the client's words.
+    pub fn uri_of(&self, spec: &Url, snapshot: &Snapshot, file: FileId) -> Option<Url> {
+        if file == FileId(0) {
+            return Some(spec.clone());
+        }
+        let root = &self.documents.get(spec)?.place.as_ref()?.root;
+        self.uri_at(&below(root, &snapshot.file(file)?.path))
+    }
+
+    /// The name of a path in the client's words.
+    pub fn uri_at(&self, whole: &Path) -> Option<Url> {
+        self.open_at.get(whole).cloned().or_else(|| Url::from_file_path(whole).ok())
+    }
+}
+
+/// The path of a document on the disk.
+pub fn file_path(uri: &Url) -> Option<PathBuf> {
+    (uri.scheme() == "file").then(|| uri.to_file_path().ok()).flatten()
+}
+
+/// The name of a document that has no place on the disk.
+fn alone(uri: &Url) -> String {
+    let name = uri.path().rsplit('/').next().unwrap_or_default();
+    if name.is_empty() { String::from("-") } else { name.to_owned() }
+}
+
+/// The disk below a root, open documents laid over it.
+struct Overlay<'a> {
+    specs: (&'a BTreeMap<Url, Document>, &'a BTreeMap<PathBuf, Url>),
+    disk: &'a dyn Disk,
+    cache: &'a RefCell<BTreeMap<PathBuf, Kept>>,
+    root: &'a Path,
+    reads: RefCell<BTreeSet<PathBuf>>,
+}
+
+impl Files for Overlay<'_> {
+    fn read(&self, path: &str) -> Result<Arc<str>, ReadError> {
+        let whole = below(self.root, path);
+        self.reads.borrow_mut().insert(whole.clone());
+        let (documents, open_at) = self.specs;
+        if let Some(document) = open_at.get(&whole).and_then(|uri| documents.get(uri)) {
+            return Ok(document.text());
+        }
+        let stamp = self.disk.stamp(self.root, path);
+        let mut cache = self.cache.borrow_mut();
+        if let (Some(stamp), Some((kept, text))) = (stamp, cache.get(&whole))
+            && *kept == stamp
+        {
+            return text.clone();
+        }
+        let text = self.disk.read(self.root, path);
+        match stamp {
+            Some(stamp) => cache.insert(whole, (stamp, text.clone())),
+            None => cache.remove(&whole),
+        };
+        text
+    }
+}

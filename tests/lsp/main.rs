@@ -1,0 +1,11 @@
+//! The server as a client sees it: the program itself, at the other end of a pipe.
+
+#[path = "../support/mod.rs"]
+mod support;
+
+mod abuse;
+mod client;
+mod edits;
+mod life;
+mod pull;
+mod same;
