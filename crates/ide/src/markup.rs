@@ -12,7 +12,7 @@ pub(crate) fn text(untrusted: &str) -> String {
 pub(crate) fn number(own: &str) -> String {
     let calm = |c: char| {
         c.is_alphanumeric()
-            || matches!(c, ' ' | '.' | ',' | '-' | '+' | '/' | '(' | ')' | '·' | '%' | '±' | '°')
+            || matches!(c, ' ' | '.' | ',' | '×' | '-' | '+' | '/' | '(' | ')' | '·' | '%' | '±' | '°')
     };
     if own.chars().all(calm) && !own.contains("www.") { own.to_owned() } else { escape::markdown(own) }
 }

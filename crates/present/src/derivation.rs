@@ -87,8 +87,9 @@ fn put_in(formula: &str, symbols: &[(&'static str, &'static str, String)]) -> Op
 
 fn put_word(word: &str, behind: &str, symbols: &[(&'static str, &'static str, String)]) -> Option<String> {
     if let Some((.., number)) = symbols.iter().find(|(name, ..)| *name == word) {
-        let bare = !number.starts_with('-') && !(behind.starts_with('^') && number.contains(' '));
-        return Some(if bare { number.clone() } else { format!("({number})") });
+        let raised = behind.starts_with('^') && number.contains(' ');
+        let closed = number.starts_with('-') || raised;
+        return Some(if closed { format!("({number})") } else { number.clone() });
     }
     let function = layshaft_units::Function::from_name(word).is_some() && behind.starts_with('(');
     (function || word == "pi").then(|| word.to_owned())

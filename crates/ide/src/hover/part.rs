@@ -218,7 +218,10 @@ fn entries(snapshot: &Snapshot, case: &DriveCase, role: Role, place: FileSpan) -
 
 /// An answer, harmless.
 pub(super) fn cell(entry: &Entry) -> String {
-    markup::number(entry.text())
+    match entry {
+        Entry::Word(word) => word.replace('_', " "),
+        other => markup::number(other.text()),
+    }
 }
 
 /// What must be known of the numbers of a row.

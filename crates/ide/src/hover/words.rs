@@ -2,6 +2,9 @@
 
 use layshaft_diagnostics::{FileId, FileSpan, Span};
 use layshaft_mechanics::registry::{self, Shape};
+use layshaft_present::number::written;
+use layshaft_present::shown::joined;
+use layshaft_present::unit::kind_of;
 use layshaft_semantics::index::Reference;
 use layshaft_syntax::{Item, ItemKind, KEYWORDS, RoleWord, TokenKind};
 use layshaft_units::Function;
@@ -9,7 +12,7 @@ use layshaft_units::Function;
 use super::field::entries;
 use crate::Snapshot;
 use crate::links::beside;
-use crate::markup::{Page, code, text};
+use crate::markup::{Page, code, number, text};
 
 /// An item longer than this is not cut into words again for a hover.
 const LONGEST: u32 = 20_000;
@@ -23,14 +26,24 @@ pub(super) fn keyword(snapshot: &Snapshot, file: FileId, item: &Item, here: u32)
     let words = snapshot.text(FileSpan { file, span: span.shifted(item.offset) });
     let lexed = layshaft_syntax::lex(words);
     let at = here - span.start;
-    let token = lexed.tokens.iter().find(|token| {
-        token.span.touches(at)
-            && !matches!(token.kind, TokenKind::String | TokenKind::Number | TokenKind::Unit)
-    })?;
+    let silent = [TokenKind::String, TokenKind::Number];
+    let mut tokens = lexed.tokens.iter().filter(|token| !silent.contains(&token.kind));
+    let token = tokens.find(|token| token.span.touches(at))?;
     let word = words.get(token.span.start as usize..token.span.end as usize)?;
-    let row = KEYWORDS.iter().find(|row| row.word == word)?;
     let shown = Span::new(token.span.start + span.start, token.span.end + span.start);
+    if token.kind == TokenKind::Unit {
+        return Some((shown, unit(word)?));
+    }
+    let row = KEYWORDS.iter().find(|row| row.word == word)?;
     Some((shown, format!("{}: {}", code(row.word), row.meaning)))
+}
+
+/// A unit by itself, in the head of a table or behind `as`: its kind and its size in SI.
+fn unit(word: &str) -> Option<String> {
+    let unit = layshaft_units::parse_unit(word).ok()?;
+    let kind = kind_of(&unit.ty).map_or_else(|| number(&unit.ty.describe()), |kind| kind.title.to_owned());
+    let si = joined(&written(unit.to_si(1.0)), &unit.ty.si_unit());
+    Some(format!("**{0}**, a unit ({kind}): 1 {0} = {1}", number(&unit.text), number(&si)))
 }
 
 /// A function, with its arguments.
@@ -66,7 +79,7 @@ pub(super) fn choice(snapshot: &Snapshot, name: &Reference, item: &Item, word: &
     let here = name.place.span.start.checked_sub(item.offset)?;
     let entry = entries(item).iter().find(|entry| entry.span.touches(here));
     let meaning = entry.and_then(|entry| entry.key.names.last()).and_then(|field| {
-        let own = kind_of(item).map_or(&[][..], |row| row.fields);
+        let own = row_of(item).map_or(&[][..], |row| row.fields);
         let all = registry::rows().iter().flat_map(|row| row.fields);
         let fields = own.iter().chain(registry::DRIVE_FIELDS).chain(all);
         fields.filter(|row| *row.name == *field.text).find_map(|row| match row.shape {
@@ -79,7 +92,7 @@ pub(super) fn choice(snapshot: &Snapshot, name: &Reference, item: &Item, word: &
     Some(format!("{}: {meaning}", code(known)))
 }
 
-fn kind_of(item: &Item) -> Option<&'static registry::KindRow> {
+fn row_of(item: &Item) -> Option<&'static registry::KindRow> {
     let ItemKind::Part { role, base: layshaft_syntax::PartBase::Kind(kind), .. } = &item.tree.kind else {
         return None;
     };
