@@ -240,3 +240,12 @@ let t: torque = s.peak_torque
 let e: energy = s.peak_torque   #! kind-mismatch",
     );
 }
+
+#[test]
+fn rows_of_a_csv_file_are_told_by_their_line() {
+    let csv = "# measured in May\n\nn;M\n0;9\n\n100;six\n300;14\n";
+    check_with(
+        "load mixer: measured_curve { curve = csv \"m.csv\" (n as speed [rpm], M as torque [N·m]) }   #! bad-table: `m.csv`, line 6: `six` is not a number",
+        &[("m.csv", csv)],
+    );
+}

@@ -40,12 +40,12 @@ impl Reader<'_, '_> {
         let (heads, from) = self.csv_heads(csv, rows, &path, place)?;
         let mut table = self.empty(&heads, &csv.at)?;
         let mut places = Vec::new();
-        for (line, row) in rows.iter().enumerate().skip(1) {
+        for Row { line, cells: row } in rows.iter().skip(1) {
             if row.iter().all(|cell| cell.trim().is_empty()) {
                 continue;
             }
-            let named = format!("`{path}`, line {}", line + 1);
-            let wide = rows.first().map_or(0, Vec::len);
+            let named = format!("`{path}`, line {line}");
+            let wide = rows.first().map_or(0, |head| head.cells.len());
             if row.iter().skip(wide).any(|cell| !cell.trim().is_empty()) {
                 let message = format!("{named}: {} cells under {wide} headings", row.len());
                 self.eval
@@ -95,14 +95,8 @@ impl Reader<'_, '_> {
     }
 
     /// The columns wanted and where each stands in the file.
-    fn csv_heads(
-        &self,
-        csv: &Csv,
-        rows: &[Vec<String>],
-        path: &str,
-        place: FileSpan,
-    ) -> Option<(Heads, Vec<usize>)> {
-        let Some(first) = rows.first() else {
+    fn csv_heads(&self, csv: &Csv, rows: &[Row], path: &str, place: FileSpan) -> Option<(Heads, Vec<usize>)> {
+        let Some(Row { cells: first, .. }) = rows.first() else {
             self.eval.report(self.refuse(place, format!("`{path}` is empty")));
             return None;
         };
@@ -158,6 +152,15 @@ fn clipped(cell: &str) -> String {
     if clean.len() < cell.len() { format!("{clean}…") } else { clean }
 }
 
+/// A row of a file.
+#[derive(Debug)]
+pub(super) struct Row {
+    /// Its line, counted from 1; comments and blank lines count.
+    line: u64,
+    /// Its cells.
+    cells: Vec<String>,
+}
+
 /// Why the rows of a file could not be had.
 #[derive(Debug)]
 pub(super) enum Unread {
@@ -167,10 +170,37 @@ pub(super) enum Unread {
     Row(Option<usize>),
 }
 
-/// The separator is the one the first line has most of: comma, semicolon or tab.
-fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, Unread> {
+/// Counts lines as records are read from front to back.
+struct Lines<'a> {
+    text: &'a str,
+    byte: usize,
+    line: u64,
+}
+
+impl Lines<'_> {
+    /// The line of the record that begins at or behind `byte`: the reader counts blank lines and comments to it.
+    fn at(&mut self, byte: usize) -> u64 {
+        let bytes = self.text.as_bytes();
+        let passed = bytes.get(self.byte..byte.min(bytes.len())).unwrap_or(&[]);
+        self.line += passed.iter().filter(|byte| **byte == b'\n').count() as u64;
+        self.byte = byte.min(bytes.len());
+        while let Some(rest) = self.text.get(self.byte..) {
+            let line = rest.split_inclusive('\n').next().unwrap_or("");
+            let skipped = line.ends_with('\n') && (line.trim().is_empty() || line.starts_with('#'));
+            if !skipped {
+                break;
+            }
+            self.byte += line.len();
+            self.line += 1;
+        }
+        self.line
+    }
+}
+
+/// The separator is the one the line of headings has most of: comma, semicolon or tab.
+fn parse_csv(text: &str) -> Result<Vec<Row>, Unread> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
-    let first = text.lines().next().unwrap_or("");
+    let first = text.lines().find(|line| !line.starts_with('#') && !line.is_empty()).unwrap_or("");
     let count = |mark: char| first.matches(mark).count();
     let delimiter = [',', ';', '\t'].into_iter().max_by_key(|mark| count(*mark)).unwrap_or(',');
     let mut reader = csv::ReaderBuilder::new()
@@ -180,12 +210,16 @@ fn parse_csv(text: &str) -> Result<Vec<Vec<String>>, Unread> {
         .comment(Some(b'#'))
         .from_reader(text.as_bytes());
     let mut rows = Vec::new();
+    let mut lines = Lines { text, byte: 0, line: 1 };
     for record in reader.records() {
         if rows.len() > MOST_ROWS {
             return Err(Unread::TooLong);
         }
         match record {
-            Ok(record) => rows.push(record.iter().map(str::to_owned).collect()),
+            Ok(record) => rows.push(Row {
+                line: lines.at(record.position().map_or(0, |position| position.byte() as usize)),
+                cells: record.iter().map(str::to_owned).collect(),
+            }),
             Err(error) => {
                 let line = error.position().map(|position| position.line() as usize);
                 return Err(Unread::Row(line));

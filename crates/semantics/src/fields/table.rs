@@ -31,7 +31,7 @@ const CONDITIONS: &[&str] = &[
 ];
 
 /// A CSV file's rows as read, shared by every case that uses it.
-pub(super) type Rows = Rc<Result<Vec<Vec<String>>, super::csv_file::Unread>>;
+pub(super) type Rows = Rc<Result<Vec<super::csv_file::Row>, super::csv_file::Unread>>;
 
 /// CSV files read so far, by path.
 #[derive(Debug, Default)]
