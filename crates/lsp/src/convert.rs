@@ -1,6 +1,6 @@
 //! Places of the protocol and places of the editor features, one into the other.
 
-use layshaft_ide::base::{FileId, FileSpan, Position as Column, SourceFile, Span};
+use layshaft_ide::base::{Position as Column, SourceFile, Span};
 use tower_lsp::lsp_types::{Position, Range};
 
 /// What a column counts.
@@ -64,10 +64,4 @@ impl Encoding {
         let (start, end) = (self.offset(file, range.start), self.offset(file, range.end));
         Span::new(start.min(end), start.max(end))
     }
-}
-
-/// A place in the spec itself.
-#[must_use]
-pub const fn in_spec(span: Span) -> FileSpan {
-    FileSpan { file: FileId(0), span }
 }

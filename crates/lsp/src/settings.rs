@@ -12,6 +12,30 @@ pub const SECTION: &str = "layshaft";
 pub struct Settings {
     /// Charts in hovers, as images in the Markdown. Off by default: not every client shows one.
     pub charts: bool,
+    /// Operating point and verdicts above each drive. Off by default: the hints say the same.
+    pub lenses: bool,
+    /// Results at the ends of lines.
+    pub hints: Hints,
+}
+
+/// Which results stand at the ends of lines; all by default.
+#[derive(Clone, Debug, PartialEq, Eq, Deserialize)]
+#[serde(default, rename_all = "camelCase")]
+pub struct Hints {
+    /// Computed values.
+    pub values: bool,
+    /// Parts at the operating point.
+    pub parts: bool,
+    /// Drives, and what `show` asks for.
+    pub drives: bool,
+    /// Criteria with their margins.
+    pub criteria: bool,
+}
+
+impl Default for Hints {
+    fn default() -> Self {
+        Self { values: true, parts: true, drives: true, criteria: true }
+    }
 }
 
 impl Settings {

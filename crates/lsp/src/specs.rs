@@ -8,6 +8,7 @@ use std::time::Instant;
 
 use layshaft_ide::Snapshot;
 use layshaft_ide::base::{FileId, Files, Memo, NoFiles, ReadError};
+use layshaft_ide::hints::Hint;
 use tower_lsp::lsp_types::Url;
 
 use crate::disk::{Disk, Place, Stamp, below};
@@ -25,6 +26,8 @@ pub struct Spec {
     pub own_change: bool,
     /// When its findings were last told.
     pub told: Option<Instant>,
+    /// The last good hint of each declaration.
+    pub hints: BTreeMap<String, Hint>,
     /// Every file that was asked for, found or not.
     pub reads: BTreeSet<PathBuf>,
 }

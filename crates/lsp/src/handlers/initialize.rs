@@ -3,17 +3,20 @@
 use tower_lsp::jsonrpc::Result;
 use tower_lsp::lsp_types::request::RegisterCapability;
 use tower_lsp::lsp_types::{
-    DiagnosticOptions, DiagnosticServerCapabilities, DidChangeWatchedFilesRegistrationOptions,
-    FileSystemWatcher, GlobPattern, InitializeParams, InitializeResult, OneOf, PositionEncodingKind,
-    Registration, RegistrationParams, SaveOptions, ServerCapabilities, ServerInfo,
-    TextDocumentSyncCapability, TextDocumentSyncKind, TextDocumentSyncOptions, TextDocumentSyncSaveOptions,
+    CallHierarchyServerCapability, CodeLensOptions, DiagnosticOptions, DiagnosticServerCapabilities,
+    DidChangeWatchedFilesRegistrationOptions, DocumentLinkOptions, ExecuteCommandOptions, FileSystemWatcher,
+    FoldingRangeProviderCapability, GlobPattern, HoverProviderCapability, ImplementationProviderCapability,
+    InitializeParams, InitializeResult, InlayHintOptions, InlayHintServerCapabilities, OneOf,
+    PositionEncodingKind, Registration, RegistrationParams, RenameOptions, SaveOptions,
+    SelectionRangeProviderCapability, ServerCapabilities, ServerInfo, TextDocumentSyncCapability,
+    TextDocumentSyncKind, TextDocumentSyncOptions, TextDocumentSyncSaveOptions, WorkDoneProgressOptions,
     WorkspaceFoldersServerCapabilities, WorkspaceServerCapabilities,
 };
 
 use crate::client::Client;
 use crate::convert::Encoding;
 use crate::core::Core;
-use crate::handlers::settings;
+use crate::handlers::{commands, settings};
 use crate::outbox::{Asked, value};
 
 /// What may change answers though it is not open.
@@ -68,6 +71,39 @@ fn capabilities(client: &Client) -> ServerCapabilities {
                 change_notifications: Some(OneOf::Left(true)),
             }),
             file_operations: None,
+        }),
+        ..features()
+    }
+}
+
+/// What is there for every client.
+fn features() -> ServerCapabilities {
+    ServerCapabilities {
+        hover_provider: Some(HoverProviderCapability::Simple(true)),
+        implementation_provider: Some(ImplementationProviderCapability::Simple(true)),
+        references_provider: Some(OneOf::Left(true)),
+        document_highlight_provider: Some(OneOf::Left(true)),
+        rename_provider: Some(OneOf::Right(RenameOptions {
+            prepare_provider: Some(true),
+            work_done_progress_options: WorkDoneProgressOptions::default(),
+        })),
+        inlay_hint_provider: Some(OneOf::Right(InlayHintServerCapabilities::Options(InlayHintOptions {
+            resolve_provider: Some(true),
+            work_done_progress_options: WorkDoneProgressOptions::default(),
+        }))),
+        code_lens_provider: Some(CodeLensOptions { resolve_provider: Some(false) }),
+        document_symbol_provider: Some(OneOf::Left(true)),
+        workspace_symbol_provider: Some(OneOf::Left(true)),
+        folding_range_provider: Some(FoldingRangeProviderCapability::Simple(true)),
+        selection_range_provider: Some(SelectionRangeProviderCapability::Simple(true)),
+        document_link_provider: Some(DocumentLinkOptions {
+            resolve_provider: Some(false),
+            work_done_progress_options: WorkDoneProgressOptions::default(),
+        }),
+        call_hierarchy_provider: Some(CallHierarchyServerCapability::Simple(true)),
+        execute_command_provider: Some(ExecuteCommandOptions {
+            commands: vec![String::from(commands::EXPLAIN), String::from(commands::RESULT_TABLE)],
+            work_done_progress_options: WorkDoneProgressOptions::default(),
         }),
         ..ServerCapabilities::default()
     }

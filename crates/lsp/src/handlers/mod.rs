@@ -1,9 +1,14 @@
 //! What the protocol asks for, one file a group: convert, ask `ide`, convert.
 
+mod calls;
+pub mod commands;
 pub mod diagnostics;
 mod format;
 mod initialize;
+mod names;
 mod navigate;
+mod outline;
+mod read;
 pub mod settings;
 mod sync;
 
@@ -28,6 +33,24 @@ pub fn request(core: &mut Core, method: &str, params: Value) -> Result<Value> {
     match method {
         "initialize" => typed(core, params, initialize::initialize),
         "textDocument/definition" => typed(core, params, navigate::definition),
+        "textDocument/implementation" => typed(core, params, navigate::implementation),
+        "textDocument/references" => typed(core, params, names::all),
+        "textDocument/documentHighlight" => typed(core, params, names::highlights),
+        "textDocument/prepareRename" => typed(core, params, names::prepare),
+        "textDocument/rename" => typed(core, params, names::rename),
+        "textDocument/hover" => typed(core, params, read::hovered),
+        "textDocument/inlayHint" => typed(core, params, read::inlay),
+        "inlayHint/resolve" => typed(core, params, read::resolve_inlay),
+        "textDocument/codeLens" => typed(core, params, read::lens),
+        "textDocument/documentSymbol" => typed(core, params, outline::document),
+        "workspace/symbol" => typed(core, params, outline::workspace),
+        "textDocument/foldingRange" => typed(core, params, outline::folding),
+        "textDocument/selectionRange" => typed(core, params, outline::selection),
+        "textDocument/documentLink" => typed(core, params, outline::links),
+        "textDocument/prepareCallHierarchy" => typed(core, params, calls::prepare),
+        "callHierarchy/outgoingCalls" => typed(core, params, calls::outgoing),
+        "callHierarchy/incomingCalls" => typed(core, params, calls::incoming),
+        "workspace/executeCommand" => typed(core, params, commands::execute),
         "textDocument/diagnostic" => typed(core, params, diagnostics::document),
         "workspace/diagnostic" => typed(core, params, diagnostics::workspace),
         "textDocument/formatting" => typed(core, params, format::document),
