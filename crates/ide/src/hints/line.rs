@@ -119,17 +119,21 @@ fn number(entry: &Entry) -> Option<String> {
 
 /// Speed and outcome in the plain spec; of several gears the first that runs.
 fn drive(snapshot: &Snapshot, place: FileSpan) -> Option<String> {
-    let (index, _) = snapshot.drive(place)?;
-    let sheet = sheet::drive(&snapshot.analysis, index, snapshot.habits(), 1)?;
-    let row = sheet.rows.first().filter(|row| row.case == 0)?;
-    if !row.solved {
-        return None;
-    }
-    match number(&row.speed) {
-        Some(speed) if row.moves => Some(fitting(&[format!("{speed}, {}", row.outcome), speed])),
-        Some(speed) => Some(fitting(&[format!("{}, {speed}", row.outcome), row.outcome.clone()])),
-        None => Some(fitting(std::slice::from_ref(&row.outcome))),
-    }
+    let (_, record) = snapshot.drive(place)?;
+    let case = plain(record)?;
+    let solution = case.solution.as_deref()?;
+    // Asked for by itself: the row of the table would search for peak powers too.
+    let speed = entry(snapshot, case, None, None, &["speed"]);
+    let unit = match &speed {
+        Entry::Number(number) => number.unit.as_str(),
+        _ => "",
+    };
+    let (outcome, moves) = sheet::outcome(solution, unit);
+    Some(match number(&speed) {
+        Some(speed) if moves => fitting(&[format!("{speed}, {outcome}"), speed]),
+        Some(speed) => fitting(&[format!("{outcome}, {speed}"), outcome]),
+        None => fitting(&[outcome]),
+    })
 }
 
 /// `holds, 7.8 %` or `fails in corner[…]`.

@@ -13,6 +13,7 @@ pub use lines::*;
 pub use record::role_word;
 
 use layshaft_mechanics::solution::Answer;
+use layshaft_mechanics::solve::Solution;
 use layshaft_semantics::Analysis;
 use layshaft_semantics::analysis::{DriveCase, DriveRecord};
 
@@ -92,6 +93,13 @@ pub fn answer(answer: Answer, case: &DriveCase, habits: &Habits) -> Entry {
         _ => String::new(),
     };
     drives::entry(answer, &unit, case, habits)
+}
+
+/// What becomes of a solved drive from rest, in words, and whether it comes to run the way it is asked to; speeds in
+/// `unit`, the usual one where that is empty.
+#[must_use]
+pub fn outcome(solution: &Solution, unit: &str) -> (String, bool) {
+    outcome::words(solution, unit)
 }
 
 /// The label of a case, with the gear where the spec gives none: `corner[360 V], gear 2`.
