@@ -49,6 +49,8 @@ pub struct Solution {
     pub(super) run_up: OnceLock<Result<RunUp, Answer>>,
     pub(super) reserve: OnceLock<Result<f64, Answer>>,
     pub(super) peak: OnceLock<Option<Greatest>>,
+    /// Speed and value of each source's own peak power.
+    pub(super) source_peaks: Vec<OnceLock<Result<(f64, f64), Answer>>>,
 }
 
 impl std::fmt::Debug for Solution {
@@ -64,6 +66,7 @@ pub(super) fn absent(why: &'static str) -> Answer {
 
 impl Solution {
     fn new(drive: Assembly, path: Option<Path>, points: Vec<State>, here: Result<State, Answer>) -> Self {
+        let source_peaks = drive.sources.iter().map(|_| OnceLock::new()).collect();
         Self {
             drive,
             path,
@@ -73,6 +76,7 @@ impl Solution {
             run_up: OnceLock::new(),
             reserve: OnceLock::new(),
             peak: OnceLock::new(),
+            source_peaks,
         }
     }
 

@@ -121,15 +121,10 @@ impl Solution {
 
     /// Speed and power of a source's peak.
     fn source_peak(&self, source: &SourceAt) -> Result<(f64, f64), Answer> {
-        let Some(character) = &source.character else { return Err(absent("this source is off")) };
-        let mut jumps = character.drive.jumps();
-        jumps.extend(character.drive.kinks());
-        jumps.sort_by(f64::total_cmp);
-        // Along a measured curve: what lies beyond its last point is no more than an extrapolation.
-        let top = character.measured.map_or(4.0 * character.top_speed, |(_, last)| last);
-        match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, top)) {
-            Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
-            _ => Err(absent("this source gives no power at any speed")),
+        let index = self.drive.sources.iter().position(|own| std::ptr::eq(own, source));
+        match index.and_then(|index| self.source_peaks.get(index)) {
+            Some(known) => known.get_or_init(|| search_peak(source)).clone(),
+            None => search_peak(source),
         }
     }
 
@@ -390,5 +385,19 @@ struct SourcePeak<'a>(&'a SourceAt);
 impl Law for SourcePeak<'_> {
     fn eval<R: Real>(&self, speed: R) -> R {
         self.0.most(speed) * speed
+    }
+}
+
+/// Where a source gives the most power along its own curve, and how much.
+fn search_peak(source: &SourceAt) -> Result<(f64, f64), Answer> {
+    let Some(character) = &source.character else { return Err(absent("this source is off")) };
+    let mut jumps = character.drive.jumps();
+    jumps.extend(character.drive.kinks());
+    jumps.sort_by(f64::total_cmp);
+    // Along a measured curve: what lies beyond its last point is no more than an extrapolation.
+    let top = character.measured.map_or(4.0 * character.top_speed, |(_, last)| last);
+    match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, top)) {
+        Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
+        _ => Err(absent("this source gives no power at any speed")),
     }
 }
