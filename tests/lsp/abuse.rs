@@ -37,6 +37,8 @@ fn bad_messages_are_refused_one_by_one() {
     refused(&mut client, -32700);
     client.raw(b"Content-Length: many\r\n\r\n{}");
     refused(&mut client, -32700);
+    // The next good message ends the search for one.
+    assert_eq!(client.ask("spec/solve", json!({}))["error"]["code"], -32601);
     client.raw(b"X-Nothing: 1\r\n\r\n");
     refused(&mut client, -32700);
     client.raw(b"Content-Length: 5\r\n\r\n{\"jsonrpc\":\"2.0\",\"method\":\"a\"}");

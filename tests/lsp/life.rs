@@ -23,22 +23,23 @@ fn a_session_from_beginning_to_end() {
 
 #[test]
 fn columns_are_counted_as_agreed() {
+    let text = String::from("let αβγ = 2 * bogus\n");
+    let before = text.split("bogus").next().unwrap_or("");
+    let (bytes, units) = (before.len(), before.encode_utf16().count());
+    assert_ne!(bytes, units);
     for (offered, agreed, column) in [
-        (json!(["utf-8", "utf-16"]), "utf-8", 20),
-        (json!(["utf-16", "utf-8"]), "utf-16", 14),
-        (json!(["utf-32"]), "utf-16", 14),
+        (json!(["utf-8", "utf-16"]), "utf-8", bytes),
+        (json!(["utf-16", "utf-8"]), "utf-16", units),
+        (json!(["utf-32"]), "utf-16", units),
+        (Value::Null, "utf-16", units),
     ] {
         let mut client = Client::start();
         let said = client.initialize(json!({ "general": { "positionEncodings": offered } }));
         assert_eq!(said["capabilities"]["positionEncoding"], agreed);
-        client.open("untitled:a.shaft", "title \"𝄞𝄞\" let\n");
-        client.open("untitled:b.shaft", "let ααα = 2 m  let\n");
+        client.open("untitled:b.shaft", &text);
         let found = client.published("untitled:b.shaft", 1);
-        let last = found.last().expect("a broken line");
-        let start = last["range"]["start"]["character"].as_i64().expect("a column");
-        let bytes = "let ααα = 2 m  ".len() as i64;
-        let units = "let ααα = 2 m  ".encode_utf16().count() as i64;
-        assert_eq!(start, if agreed == "utf-8" { bytes } else { units }, "{column} {found:?}");
+        assert_eq!(found[0]["code"], "unknown-name", "{found:?}");
+        assert_eq!(found[0]["range"]["start"]["character"], column, "{agreed} {found:?}");
         client.finish();
     }
 }
@@ -117,4 +118,15 @@ fn a_request_overtaken_by_an_edit_is_given_back() {
     }
     assert!(client.answer(third).get("error").is_none());
     client.finish();
+}
+
+#[test]
+#[cfg(target_os = "linux")]
+fn a_server_whose_client_died_ends_though_its_pipe_is_open() {
+    let mut client = Client::start();
+    // A process that has ended: its number is free, or waits to be.
+    let mut gone = std::process::Command::new("true").spawn().expect("a process that ends at once");
+    gone.wait().expect("it ends");
+    client.ask("initialize", json!({ "processId": gone.id(), "capabilities": {} }));
+    assert_eq!(client.end().code(), Some(1));
 }

@@ -6,6 +6,7 @@ mod support;
 mod abuse;
 mod client;
 mod edits;
+mod features;
 mod life;
 mod pull;
 mod same;

@@ -27,6 +27,8 @@ pub struct Client {
     pub versioned_edits: bool,
     /// Whether charts may stand in a hover.
     pub charts: bool,
+    /// The process to end with.
+    pub process: Option<u32>,
 }
 
 /// Which answers the client takes again when told that they changed.
@@ -75,6 +77,7 @@ impl Client {
             versioned_edits: on(workspace
                 .and_then(|of| of.workspace_edit.as_ref())
                 .and_then(|of| of.document_changes)),
+            process: params.process_id,
             charts: options.and_then(|of| of.get("charts")).and_then(serde_json::Value::as_bool)
                 == Some(true),
         }

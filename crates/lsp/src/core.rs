@@ -28,6 +28,9 @@ const PAUSE: Duration = Duration::from_millis(3);
 /// The client is asked to take its answers again at most so often.
 const REFRESH: Duration = Duration::from_millis(250);
 
+/// Whether the client's process still runs is asked so often.
+const WATCH: Duration = Duration::from_secs(3);
+
 /// A request that waits for its turn.
 struct Todo {
     key: String,
@@ -186,9 +189,17 @@ impl Core {
             since.map_or(Duration::ZERO, |since| (since + pause).saturating_duration_since(now))
         };
         let told = |uri: &Url| self.specs.specs.get(uri).and_then(|spec| spec.told);
-        let tell = self.specs.untold.iter().map(|uri| left(told(uri), PAUSE)).min();
+        let mut tell = None;
+        for uri in &self.specs.untold {
+            let left = left(told(uri), PAUSE);
+            if left.is_zero() {
+                return Some(left);
+            }
+            tell = Some(tell.map_or(left, |least: Duration| least.min(left)));
+        }
         let refresh = self.stale.then(|| left(self.refreshed, REFRESH));
-        tell.into_iter().chain(refresh).min()
+        let watch = self.client.process.map(|_| WATCH);
+        tell.into_iter().chain(refresh).chain(watch).min()
     }
 
     /// One piece of work that nobody waits for.
@@ -198,7 +209,9 @@ impl Core {
             let told = self.specs.specs.get(*uri).and_then(|spec| spec.told);
             told.is_none_or(|told| now >= told + PAUSE)
         };
-        let next = self.specs.untold.iter().find(due).cloned();
+        // What was touched last is looked at now.
+        let latest = self.specs.latest.iter().filter(|uri| self.specs.untold.contains(*uri));
+        let next = latest.chain(&self.specs.untold).find(due).cloned();
         if let Some(uri) = next {
             self.specs.untold.remove(&uri);
             self.guarded("the analysis", |core| handlers::diagnostics::tell(core, &uri));
@@ -208,6 +221,12 @@ impl Core {
         } else if self.stale && self.refreshed.is_none_or(|last| now >= last + REFRESH) {
             self.refresh();
             self.refreshed = Some(now);
+        } else if let Some(process) = self.client.process
+            && self.specs.untold.is_empty()
+            && self.specs.disk().runs(process) == Some(false)
+        {
+            // A pipe may outlive its client where another process has it too.
+            std::process::exit(1);
         }
     }
 

@@ -17,8 +17,6 @@ pub struct Document {
     pub revision: u64,
     /// Where it stands on the disk; none for `untitled:`, `git:` and the like, which are analyzed alone.
     pub place: Option<Place>,
-    /// Whether it is a spec, and not a table or settings.
-    pub is_spec: bool,
     text: Text,
     shared: OnceCell<Arc<str>>,
 }
@@ -26,8 +24,8 @@ pub struct Document {
 impl Document {
     /// A document as it was opened.
     #[must_use]
-    pub fn new(version: i32, text: String, place: Option<Place>, is_spec: bool) -> Self {
-        Self { version, revision: 0, place, is_spec, text: Text::new(text), shared: OnceCell::new() }
+    pub fn new(version: i32, text: String, place: Option<Place>) -> Self {
+        Self { version, revision: 0, place, text: Text::new(text), shared: OnceCell::new() }
     }
 
     /// Applies changes in their order.

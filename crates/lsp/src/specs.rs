@@ -41,6 +41,8 @@ pub struct Specs {
     pub specs: BTreeMap<Url, Spec>,
     /// Specs whose findings are not told.
     pub untold: BTreeSet<Url>,
+    /// The document that was touched last.
+    pub latest: Option<Url>,
     open_at: BTreeMap<PathBuf, Url>,
     cache: RefCell<BTreeMap<PathBuf, Kept>>,
 }
@@ -56,6 +58,7 @@ impl Specs {
             documents: BTreeMap::new(),
             specs: BTreeMap::new(),
             untold: BTreeSet::new(),
+            latest: None,
             open_at: BTreeMap::new(),
             cache: RefCell::default(),
         }
@@ -75,7 +78,7 @@ impl Specs {
             self.open_at.insert(place.whole(), uri.clone());
         }
         let whole = place.as_ref().map(Place::whole);
-        self.documents.insert(uri.clone(), Document::new(version, text, place, is_spec));
+        self.documents.insert(uri.clone(), Document::new(version, text, place));
         if is_spec {
             self.specs.insert(uri.clone(), Spec::default());
         }
@@ -109,6 +112,7 @@ impl Specs {
             spec.own_change = spec.fresh || spec.snapshot.is_none();
             spec.fresh = false;
             self.untold.insert(uri.clone());
+            self.latest = Some(uri.clone());
         }
     }
 

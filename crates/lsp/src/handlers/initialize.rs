@@ -22,9 +22,17 @@ use crate::outbox::{Asked, value};
 /// What may change answers though it is not open.
 const WATCHED: [&str; 3] = ["**/*.shaft", "**/*.csv", "**/layshaft.toml"];
 
+/// Whether the client asks for findings again when told to. Clients say so under `diagnostics`, as the protocol has it;
+/// the types at hand know only `diagnostic`.
+pub fn refreshes_diagnostics(params: &serde_json::Value) -> bool {
+    let said = params.pointer("/capabilities/workspace/diagnostics/refreshSupport");
+    said.and_then(serde_json::Value::as_bool) == Some(true)
+}
+
 /// Agrees on what both can do.
-pub fn initialize(core: &mut Core, params: InitializeParams) -> Result<InitializeResult> {
+pub fn initialize(core: &mut Core, params: InitializeParams, refresh: bool) -> Result<InitializeResult> {
     core.client = Client::new(&params);
+    core.client.refresh.diagnostics |= refresh;
     core.folders = match params.workspace_folders {
         Some(folders) if !folders.is_empty() => folders.into_iter().map(|folder| folder.uri).collect(),
         _ => params.root_uri.into_iter().collect(),

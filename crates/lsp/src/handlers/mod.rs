@@ -31,7 +31,10 @@ const SPEC: FileId = FileId(0);
 /// Answers a request.
 pub fn request(core: &mut Core, method: &str, params: Value) -> Result<Value> {
     match method {
-        "initialize" => typed(core, params, initialize::initialize),
+        "initialize" => {
+            let refresh = initialize::refreshes_diagnostics(&params);
+            typed(core, params, |core, params| initialize::initialize(core, params, refresh))
+        }
         "textDocument/definition" => typed(core, params, navigate::definition),
         "textDocument/implementation" => typed(core, params, navigate::implementation),
         "textDocument/references" => typed(core, params, names::all),
