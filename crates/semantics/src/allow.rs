@@ -52,7 +52,7 @@ pub(crate) fn accept(shared: Shared<'_>, found: Vec<Diagnostic>, analysis: &mut 
         complaints.push(Diagnostic::new(Code::UnusedAllow, place, message).help("take the line out"));
     }
     standing.extend(complaints);
-    standing.sort_by(|a, b| (a.primary.place, a.code).cmp(&(b.primary.place, b.code)));
+    standing.sort_by_key(|found| (found.primary.place, found.code));
     analysis.diagnostics = standing;
 }
 

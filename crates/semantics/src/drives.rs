@@ -2,6 +2,7 @@
 
 use std::cell::RefCell;
 use std::collections::BTreeMap;
+use std::collections::btree_map::Entry as BTreeEntry;
 use std::sync::Arc;
 
 use layshaft_diagnostics::{Code, Diagnostic, Span};
@@ -47,11 +48,16 @@ pub(crate) fn drives<'w>(world: &'w World, sink: &Sink) -> BTreeMap<ItemRef, Dri
             let known = registry::DRIVE_FIELDS.iter().any(|field| field.name == &*slot.0);
             if !known || entry.key.names.len() != 1 || slot.1.is_some() {
                 sink.push(unknown_setting(&path_text(&entry.key), place));
-            } else if settings.contains_key(&slot) {
-                let message = format!("`{}` is given twice", slot_text(&slot));
-                sink.push(Diagnostic::new(Code::DoubledName, place, message));
-            } else {
-                settings.insert(slot, Given { at, entry, value: &entry.value });
+                continue;
+            }
+            match settings.entry(slot) {
+                BTreeEntry::Vacant(free) => {
+                    free.insert(Given { at, entry, value: &entry.value });
+                }
+                BTreeEntry::Occupied(taken) => {
+                    let message = format!("`{}` is given twice", slot_text(taken.key()));
+                    sink.push(Diagnostic::new(Code::DoubledName, place, message));
+                }
             }
         }
         found.insert(at, DriveDef { name, chain: lowered, members, spans, settings });

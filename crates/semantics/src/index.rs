@@ -79,7 +79,7 @@ impl Index {
     pub fn of(analysis: &Analysis) -> Self {
         let world = World::of_files(&analysis.files);
         let mut references = walk::walk(&world);
-        references.sort_by(|a, b| a.place.cmp(&b.place));
+        references.sort_by_key(|reference| reference.place);
         Self { references }
     }
 

@@ -17,7 +17,7 @@ pub fn significant(value: f64, digits: usize) -> String {
     let Some((_, exponent)) = written.split_once('e') else { return written };
     let exponent: i32 = exponent.parse().unwrap_or(0);
     if !(-4..=8).contains(&exponent) {
-        return written.replace('e', "e").replace("e0", "");
+        return written.replace("e0", "");
     }
     let decimals = (digits as i32 - 1 - exponent).max(0) as usize;
     // Rounding to the significant digits comes first, so that 9999.96 is 10000 and not 9999.

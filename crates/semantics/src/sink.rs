@@ -24,7 +24,7 @@ impl Sink {
     /// All findings, by file, place and code.
     pub fn finish(&self) -> Vec<Diagnostic> {
         let mut found = self.found.take();
-        found.sort_by(|a, b| (a.primary.place, a.code).cmp(&(b.primary.place, b.code)));
+        found.sort_by_key(|found| (found.primary.place, found.code));
         found
     }
 }

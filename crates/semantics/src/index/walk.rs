@@ -358,7 +358,7 @@ impl Walker<'_> {
             self.note(at, middle[used - 1].span, Target::Part(place), false);
             part = Some(place);
         }
-        if part.is_some() == !middle.is_empty() {
+        if part.is_some() != middle.is_empty() {
             let target = Target::Result { drive: Some(drive), part, port, name: last.text.to_string() };
             self.note(at, last.span, target, false);
         }
