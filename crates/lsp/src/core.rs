@@ -57,6 +57,7 @@ pub struct Core {
     /// Whether the client should take its answers again.
     pub stale: bool,
     refreshed: Option<Instant>,
+    watched: Instant,
     pending: Pending,
 }
 
@@ -72,6 +73,7 @@ impl Core {
             folders: Vec::new(),
             stale: false,
             refreshed: None,
+            watched: now(),
             pending,
         }
     }
@@ -198,7 +200,7 @@ impl Core {
             tell = Some(tell.map_or(left, |least: Duration| least.min(left)));
         }
         let refresh = self.stale.then(|| left(self.refreshed, REFRESH));
-        let watch = self.client.process.map(|_| WATCH);
+        let watch = self.client.process.map(|_| left(Some(self.watched), WATCH));
         tell.into_iter().chain(refresh).chain(watch).min()
     }
 
@@ -221,12 +223,13 @@ impl Core {
         } else if self.stale && self.refreshed.is_none_or(|last| now >= last + REFRESH) {
             self.refresh();
             self.refreshed = Some(now);
-        } else if let Some(process) = self.client.process
-            && self.specs.untold.is_empty()
-            && self.specs.disk().runs(process) == Some(false)
-        {
-            // A pipe may outlive its client where another process has it too.
-            std::process::exit(1);
+        } else if now >= self.watched + WATCH {
+            self.watched = now;
+            let runs = self.client.process.and_then(|process| self.specs.disk().runs(process));
+            if runs == Some(false) {
+                // A pipe may outlive its client where another process has it too.
+                std::process::exit(1);
+            }
         }
     }
 

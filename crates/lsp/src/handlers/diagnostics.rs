@@ -120,7 +120,7 @@ pub fn document(core: &mut Core, params: DocumentDiagnosticParams) -> Result<Doc
     let asked = Asked::new(core, &uri)?;
     let changed = take(core, &uri, &asked.snapshot);
     core.stale |= changed.iter().any(|other| *other != uri && core.specs.documents.contains_key(other));
-    let related_documents = core.client.related_documents.then(|| related(core, &uri));
+    let related_documents = core.client.related_documents.then(|| related(core, &uri).into_iter().collect());
     let (items, id) = core.reports.of(&uri);
     Ok(if params.previous_result_id.is_some_and(|previous| previous == id.to_string()) {
         DocumentDiagnosticReport::Unchanged(RelatedUnchangedDocumentDiagnosticReport {
@@ -136,7 +136,7 @@ pub fn document(core: &mut Core, params: DocumentDiagnosticParams) -> Result<Doc
 }
 
 /// The findings in files that a spec uses and that are not open: nobody asks for those.
-fn related(core: &Core, spec: &Url) -> std::collections::HashMap<Url, DocumentDiagnosticReportKind> {
+fn related(core: &Core, spec: &Url) -> BTreeMap<Url, DocumentDiagnosticReportKind> {
     let files = core.reports.files_of(spec).filter(|file| !core.specs.documents.contains_key(file));
     let report = |file: &Url| {
         let (items, id) = core.reports.of(file);

@@ -1,6 +1,6 @@
 //! Names: every place of one, and the rename of all of them, in every spec that is open.
 
-use std::collections::{BTreeMap, HashMap};
+use std::collections::BTreeMap;
 
 use layshaft_ide::base::FileId;
 use layshaft_ide::references::{self, Renaming};
@@ -95,9 +95,7 @@ pub fn rename(core: &mut Core, params: RenameParams) -> Result<WorkspaceEdit> {
 /// Changes in the form that the client takes.
 fn workspace_edit(core: &Core, edits: BTreeMap<Url, Vec<TextEdit>>) -> WorkspaceEdit {
     if !core.client.versioned_edits {
-        #[allow(clippy::disallowed_types, reason = "the type of the protocol; its order means nothing")]
-        let changes: HashMap<Url, Vec<TextEdit>> = edits.into_iter().collect();
-        return WorkspaceEdit { changes: Some(changes), ..WorkspaceEdit::default() };
+        return WorkspaceEdit { changes: Some(edits.into_iter().collect()), ..WorkspaceEdit::default() };
     }
     let of_file = |(uri, edits): (Url, Vec<TextEdit>)| {
         let version = core.specs.documents.get(&uri).map(|document| document.version);
