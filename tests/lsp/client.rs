@@ -1,7 +1,7 @@
 //! A scripted client: starts the server, sends, waits for what it asked for, never longer than a limit.
 
 use std::collections::VecDeque;
-use std::io::{BufRead, BufReader, Read, Write};
+use std::io::{BufRead, BufReader, Write};
 use std::process::{Child, ChildStdin, Command, ExitStatus, Stdio};
 use std::sync::mpsc::{Receiver, Sender, channel};
 use std::thread;
