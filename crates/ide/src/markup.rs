@@ -17,6 +17,16 @@ pub(crate) fn number(own: &str) -> String {
     if own.chars().all(calm) && !own.contains("www.") { own.to_owned() } else { escape::markdown(own) }
 }
 
+/// Names and signs of the user's as code; escaped as text where anything else stands among them.
+pub(crate) fn names(untrusted: &str) -> String {
+    let calm = |c: char| c.is_alphanumeric() || " _.->+*×()".contains(c);
+    if !untrusted.is_empty() && untrusted.chars().all(calm) {
+        format!("`{untrusted}`")
+    } else {
+        escape::markdown(untrusted)
+    }
+}
+
 /// Words of our own as code.
 pub(crate) fn code(own: &'static str) -> String {
     format!("`{own}`")

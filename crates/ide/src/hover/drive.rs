@@ -8,14 +8,14 @@ use super::part::{cell, effort_word, remark};
 use super::value::docs;
 use super::{MOST, Options, chart};
 use crate::Snapshot;
-use crate::markup::{self, Page, text};
+use crate::markup::{self, Page, names, text};
 use crate::numbers::plain;
 
 pub(super) fn drive(snapshot: &Snapshot, place: FileSpan, options: Options) -> Option<String> {
     let (index, record) = snapshot.drive(place)?;
     let sheet = sheet::drive(&snapshot.analysis, index, snapshot.habits(), MOST)?;
     let mut page = Page::default();
-    page.paragraph(format!("**{}** = {}", text(&sheet.name), text(&sheet.chain)));
+    page.paragraph(format!("**{}** = {}", text(&sheet.name), names(&sheet.chain)));
     page.paragraph(docs(&record.docs));
     rows(&mut page, &sheet);
     page.paragraph(more(record.cases.len(), sheet.rows.len()));

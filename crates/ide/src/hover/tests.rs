@@ -87,7 +87,7 @@ fn a_drive_and_its_criteria() {
     let spec = FAN.replace("drive d", "drive $0d") + "require \"R1 fast\" d.fan.speed >= 500 rpm\n";
     has(
         &spec,
-        &["**d** = motor \\-&gt; reducer \\-&gt; fan", "runs up", "stable", "R1 fast", "governed by weak"],
+        &["**d** = `motor -> reducer -> fan`", "runs up", "stable", "R1 fast", "governed by weak"],
     );
 }
 

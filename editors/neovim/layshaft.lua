@@ -1,0 +1,17 @@
+-- Layshaft specs in Neovim 0.11 and later: the file type, the server, and results at the ends of lines.
+vim.filetype.add({ extension = { shaft = "shaft" } })
+
+vim.lsp.config("layshaft", {
+  cmd = { "layshaft", "lsp" },
+  filetypes = { "shaft" },
+  root_markers = { "layshaft.toml" },
+})
+vim.lsp.enable("layshaft")
+
+vim.api.nvim_create_autocmd("FileType", {
+  pattern = "shaft",
+  callback = function(event)
+    vim.bo[event.buf].commentstring = "# %s"
+    vim.lsp.inlay_hint.enable(true, { bufnr = event.buf })
+  end,
+})
