@@ -41,28 +41,8 @@ fn members(value: &Value) -> &Map<String, Value> {
     value.as_object().expect("a schema is an object")
 }
 
-/// Everything in which `value` differs from `rule`. Stricter than the schema itself: a field it does not name is a
-/// mistake of ours.
-fn check(root: &Value, rule: &Value, value: &Value, path: &str, wrong: &mut Vec<String>) {
-    for word in members(rule).keys() {
-        assert!(KNOWN.contains(&word.as_str()), "the check does not know the word `{word}` at {path}");
-    }
-    if let Some(target) = rule.get("$ref").and_then(Value::as_str) {
-        let name = target.strip_prefix("#/$defs/").expect("a reference into $defs");
-        return check(root, &root["$defs"][name], value, path, wrong);
-    }
-    if let Some(choices) = rule.get("anyOf").and_then(Value::as_array) {
-        let fits = |choice: &Value| {
-            let mut found = Vec::new();
-            check(root, choice, value, path, &mut found);
-            found
-        };
-        let all: Vec<Vec<String>> = choices.iter().map(fits).collect();
-        if !all.iter().any(Vec::is_empty) {
-            wrong.extend(all.into_iter().flatten());
-        }
-        return;
-    }
+/// What a rule says of a value itself, leaving aside what is in it.
+fn alone(rule: &Value, value: &Value, path: &str, wrong: &mut Vec<String>) {
     if rule.get("const").is_some_and(|only| only != value) {
         wrong.push(format!("{path}: {value} is not {}", rule["const"]));
     }
@@ -92,6 +72,31 @@ fn check(root: &Value, rule: &Value, value: &Value, path: &str, wrong: &mut Vec<
     {
         wrong.push(format!("{path}: {number} is below {least}"));
     }
+}
+
+/// Everything in which `value` differs from `rule`. Stricter than the schema itself: a field it does not name is a
+/// mistake of ours.
+fn check(root: &Value, rule: &Value, value: &Value, path: &str, wrong: &mut Vec<String>) {
+    for word in members(rule).keys() {
+        assert!(KNOWN.contains(&word.as_str()), "the check does not know the word `{word}` at {path}");
+    }
+    if let Some(target) = rule.get("$ref").and_then(Value::as_str) {
+        let name = target.strip_prefix("#/$defs/").expect("a reference into $defs");
+        return check(root, &root["$defs"][name], value, path, wrong);
+    }
+    if let Some(choices) = rule.get("anyOf").and_then(Value::as_array) {
+        let fits = |choice: &Value| {
+            let mut found = Vec::new();
+            check(root, choice, value, path, &mut found);
+            found
+        };
+        let all: Vec<Vec<String>> = choices.iter().map(fits).collect();
+        if !all.iter().any(Vec::is_empty) {
+            wrong.extend(all.into_iter().flatten());
+        }
+        return;
+    }
+    alone(rule, value, path, wrong);
     if let (Some(items), Some(list)) = (rule.get("items"), value.as_array()) {
         for (at, item) in list.iter().enumerate() {
             check(root, items, item, &format!("{path}[{at}]"), wrong);
@@ -131,16 +136,7 @@ fn length(millimetres: f64) -> Datum {
     })
 }
 
-/// One of everything that can be made by hand.
-fn full() -> Analysis {
-    let text: Arc<str> = Arc::from("title \"é\u{1b}\"\nlet x = 5 mm\n");
-    let place = FileSpan { file: FileId(0), span: Span::new(14, 26) };
-    let found = Diagnostic::new(Code::Implausible, place, "m")
-        .label("l")
-        .related(FileSpan { file: FileId(7), span: Span::new(0, 9) }, "elsewhere")
-        .note("n")
-        .help("h")
-        .fix("write `6 mm`", place, "6 mm");
+fn criterion(place: FileSpan) -> CriterionRecord {
     let outcome = |verdict, margin| CriterionOutcome {
         case: 0,
         gear: Some(String::from("1")),
@@ -154,6 +150,43 @@ fn full() -> Analysis {
         }),
         remark: Some(String::from("r")),
     };
+    CriterionRecord {
+        clause: String::from("A-1"),
+        condition: String::from("x >= 14 mm"),
+        place,
+        condition_place: place,
+        outcomes: vec![outcome(Verdict::Holds, 0.06), outcome(Verdict::Fails, f64::INFINITY)],
+        governing: Some(0),
+        verdict: Verdict::Fails,
+    }
+}
+
+fn drive(place: FileSpan) -> DriveRecord {
+    DriveRecord {
+        name: String::from("d"),
+        place,
+        cases: vec![DriveCase {
+            case: 0,
+            gear: None,
+            spec: None,
+            solution: None,
+            faults: Vec::new(),
+            parts: Vec::new(),
+        }],
+        docs: Vec::new(),
+    }
+}
+
+/// One of everything that can be made by hand.
+fn full() -> Analysis {
+    let text: Arc<str> = Arc::from("title \"é\u{1b}\"\nlet x = 5 mm\n");
+    let place = FileSpan { file: FileId(0), span: Span::new(14, 26) };
+    let found = Diagnostic::new(Code::Implausible, place, "m")
+        .label("l")
+        .related(FileSpan { file: FileId(7), span: Span::new(0, 9) }, "elsewhere")
+        .note("n")
+        .help("h")
+        .fix("write `6 mm`", place, "6 mm");
     Analysis {
         files: vec![SourceFile {
             path: String::from("a.shaft"),
@@ -180,28 +213,8 @@ fn full() -> Analysis {
             overrides: vec![(String::from("a.b"), String::from("1"))],
             changes: Vec::new(),
         }],
-        drives: vec![DriveRecord {
-            name: String::from("d"),
-            place,
-            cases: vec![DriveCase {
-                case: 0,
-                gear: None,
-                spec: None,
-                solution: None,
-                faults: Vec::new(),
-                parts: Vec::new(),
-            }],
-            docs: Vec::new(),
-        }],
-        criteria: vec![CriterionRecord {
-            clause: String::from("A-1"),
-            condition: String::from("x >= 14 mm"),
-            place,
-            condition_place: place,
-            outcomes: vec![outcome(Verdict::Holds, 0.06), outcome(Verdict::Fails, f64::INFINITY)],
-            governing: Some(0),
-            verdict: Verdict::Fails,
-        }],
+        drives: vec![drive(place)],
+        criteria: vec![criterion(place)],
         shows: vec![ShowRecord {
             text: String::from("x"),
             place,

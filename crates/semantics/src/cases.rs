@@ -106,7 +106,7 @@ impl<'w> Builder<'w> {
         } else {
             Rc::new(Eval::new(self.shared, of.overlay.clone(), plain.clone(), None))
         };
-        let gears = crate::drives::open_gears(&first);
+        let gears = crate::gears::open_gears(&first);
         let state = |gear: Option<Box<str>>, eval| State {
             case,
             name: name.into(),

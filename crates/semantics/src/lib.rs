@@ -22,6 +22,7 @@ mod eval;
 mod faults;
 mod fields;
 mod findings;
+mod gears;
 mod load;
 mod record;
 mod sink;

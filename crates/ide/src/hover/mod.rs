@@ -1,7 +1,7 @@
 //! What a reader is told about the word under the cursor, in Markdown: value, kind, derivation, basis; for parts, drives
 //! and results what they come to in every case.
 //!
-//! Texts of specs are untrusted: they reach the Markdown through [`crate::markup::text`] alone.
+//! Texts of specs are untrusted: they reach the Markdown through `crate::markup::text` alone.
 
 mod case;
 mod chart;

@@ -85,10 +85,7 @@ fn a_part_in_every_case() {
 #[test]
 fn a_drive_and_its_criteria() {
     let spec = FAN.replace("drive d", "drive $0d") + "require \"R1 fast\" d.fan.speed >= 500 rpm\n";
-    has(
-        &spec,
-        &["**d** = `motor -> reducer -> fan`", "runs up", "stable", "R1 fast", "governed by weak"],
-    );
+    has(&spec, &["**d** = `motor -> reducer -> fan`", "runs up", "stable", "R1 fast", "governed by weak"]);
 }
 
 #[test]

@@ -27,6 +27,7 @@ mod shafts;
 mod share;
 mod shared;
 mod source;
+mod source_peak;
 mod state;
 mod stated;
 mod stop;

@@ -2,15 +2,12 @@
 
 use super::answers::{Solution, absent};
 use super::assembly::{LoadAt, Stage};
-use super::extreme::greatest;
-use super::points::pieces;
 use super::source::SourceAt;
+use super::source_peak::search_peak;
 use super::state::State;
-use crate::curve::Law;
 use crate::drive::Port;
 use crate::fault::{Fault, FaultKind, Note};
 use crate::model::{Drawn, Known, LoadState, Model, SourceState, TransmissionState};
-use crate::scalar::Real;
 use crate::solution::{Answer, Marks, Mode};
 
 impl Solution {
@@ -377,27 +374,4 @@ fn source_mode(here: &State, source: &SourceAt, effort: f64, behind: bool) -> &'
         Mode::Braking
     };
     mode.word()
-}
-
-/// The most power of one source over its speed.
-struct SourcePeak<'a>(&'a SourceAt);
-
-impl Law for SourcePeak<'_> {
-    fn eval<R: Real>(&self, speed: R) -> R {
-        self.0.most(speed) * speed
-    }
-}
-
-/// Where a source gives the most power along its own curve, and how much.
-fn search_peak(source: &SourceAt) -> Result<(f64, f64), Answer> {
-    let Some(character) = &source.character else { return Err(absent("this source is off")) };
-    let mut jumps = character.drive.jumps();
-    jumps.extend(character.drive.kinks());
-    jumps.sort_by(f64::total_cmp);
-    // Along a measured curve: what lies beyond its last point is no more than an extrapolation.
-    let top = character.measured.map_or(4.0 * character.top_speed, |(_, last)| last);
-    match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, top)) {
-        Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
-        _ => Err(absent("this source gives no power at any speed")),
-    }
 }

@@ -3,6 +3,7 @@
 mod csv_file;
 mod shape;
 mod table;
+mod words;
 
 use std::collections::BTreeMap;
 
@@ -152,7 +153,7 @@ fn report_missing(eval: &Eval<'_>, part: &PartDef<'_>, values: &Values) -> bool 
     let message = format!("`{}` needs {}", part.name.text, names.join(", "));
     let lines: Vec<_> = missing
         .iter()
-        .map(|field| format!("{} = {}  # {}", field.name, shape::sample(field), field.meaning))
+        .map(|field| format!("{} = {}  # {}", field.name, words::sample(field), field.meaning))
         .collect();
     eval.report(
         Diagnostic::new(Code::MissingField, eval.place(part.at, part.name.span), message)

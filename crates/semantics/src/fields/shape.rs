@@ -94,8 +94,10 @@ impl Reader<'_, '_> {
         let name = self.field.name;
         if outside(&self.field.hard) {
             let shown = crate::say::in_unit(found.si, unit);
-            let message =
-                format!("`{name}` must be {}, and this is {shown}", say_bounds(&self.field.hard, kind, unit));
+            let message = format!(
+                "`{name}` must be {}, and this is {shown}",
+                super::words::say_bounds(&self.field.hard, kind, unit)
+            );
             let mut finding = self.refuse(Code::OutOfRange, message);
             if let Some((offer, why)) = self.slip(found, kind) {
                 let place = finding.primary.place;
@@ -106,7 +108,7 @@ impl Reader<'_, '_> {
         }
         if outside(&self.field.plausible) {
             let shown = crate::say::in_unit(found.si, unit);
-            let usual = say_bounds(&self.field.plausible, kind, unit);
+            let usual = super::words::say_bounds(&self.field.plausible, kind, unit);
             let message = format!("{shown} is unusual for `{name}`: {usual} is what is met");
             self.eval.report(self.refuse(Code::Implausible, message).note(self.field.meaning));
         }
@@ -375,49 +377,5 @@ fn rated_multiple(expr: &Expr) -> Option<Option<&Expr>> {
             _ => None,
         },
         _ => None,
-    }
-}
-
-/// "above 0", "between 0 % and 100 %".
-pub(crate) fn say_bounds(bounds: &Bounds, kind: &Kind, unit: &str) -> String {
-    let unit =
-        if kind.ty().is_plain_number() && bounds.high == 1.0 && bounds.low >= 0.0 { "%" } else { unit };
-    let say = |si: f64| {
-        if si == 0.0 && !bounds.high.is_finite() { "0".to_owned() } else { crate::say::in_unit(si, unit) }
-    };
-    match (bounds.low.is_finite(), bounds.high.is_finite()) {
-        (true, true) => format!("between {} and {}", say(bounds.low), say(bounds.high)),
-        (true, false) if bounds.low_in => format!("{} or more", say(bounds.low)),
-        (true, false) => format!("above {}", say(bounds.low)),
-        (false, true) if bounds.high_in => format!("at most {}", say(bounds.high)),
-        (false, true) => format!("below {}", say(bounds.high)),
-        (false, false) => "a number".to_owned(),
-    }
-}
-
-/// How a field is written, for a message that asks for it.
-pub(crate) fn sample(field: &Field) -> String {
-    match field.shape {
-        Shape::Quantity(kind) | Shape::OfRated(kind) => layshaft_units::kind(kind)
-            .map_or_else(String::new, |kind| format!("… {}", kind.unit).trim_end().to_owned()),
-        Shape::Interval(kind) => layshaft_units::kind(kind)
-            .map_or_else(String::new, |kind| format!("… {0} .. … {0}", kind.unit).trim_end().to_owned()),
-        Shape::Choice(words) => words.iter().map(|(word, _)| *word).collect::<Vec<_>>().join(" | "),
-        Shape::Flag => "yes | no".to_owned(),
-        Shape::Part(role) => format!("(a {})", role_word(role)),
-        Shape::Points(columns) => {
-            let heads: Vec<_> = columns
-                .iter()
-                .map(|column| {
-                    let unit = layshaft_units::kind(column.kind).map_or("", |kind| kind.unit);
-                    format!("{} [{unit}]", column.name)
-                })
-                .collect();
-            format!("points ({}) {{ … }}", heads.join(", "))
-        }
-        Shape::Ratio { diameters: true } => "… mm drives … mm".to_owned(),
-        Shape::Ratio { diameters: false } => "… drives …".to_owned(),
-        Shape::Gears => "reduction …".to_owned(),
-        Shape::Duty => "S1".to_owned(),
     }
 }

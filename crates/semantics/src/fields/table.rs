@@ -56,7 +56,7 @@ pub(super) fn read(
             let message = format!("`{}` is given by points", field.name);
             eval.report(Diagnostic::new(Code::WrongValue, reader.place, message).help(format!(
                 "write {} or pairs such as `(1.2 N·m at 2850 rpm)`",
-                super::shape::sample(field)
+                super::words::sample(field)
             )));
             return None;
         }

@@ -3,8 +3,8 @@
 use layshaft_diagnostics::{FileId, FileSpan, Span};
 use layshaft_mechanics::registry::{self, Role};
 use layshaft_syntax::{
-    Block, CaseRef, Chain, ChainKind, Entry, Expr, ExprKind, ItemKind, ItemTree, Name, PartBase, Path, Scope,
-    ScopeKind, Text, Value, ValueKind,
+    At, Block, CaseRef, Chain, ChainKind, Entry, Expr, ExprKind, ItemKind, ItemTree, Name, PartBase, Path,
+    Scope, ScopeKind, Text, Value, ValueKind,
 };
 
 use super::{Reference, Target};
@@ -82,29 +82,27 @@ impl Walker<'_> {
                 }
             }
             ItemKind::Require { condition, at: asked, probability, scopes, .. } => {
-                self.expr(at, condition);
-                if let Some(asked) = asked {
-                    self.path(at, &asked.path);
-                    self.value(at, &asked.value);
-                }
+                self.asked(at, condition, asked.as_ref(), scopes);
                 if let Some(probability) = probability {
                     self.expr(at, probability);
                 }
-                self.scopes(at, scopes);
             }
-            ItemKind::Show { value, at: asked, scopes, .. } => {
-                self.expr(at, value);
-                if let Some(asked) = asked {
-                    self.path(at, &asked.path);
-                    self.value(at, &asked.value);
-                }
-                self.scopes(at, scopes);
-            }
+            ItemKind::Show { value, at: asked, scopes, .. } => self.asked(at, value, asked.as_ref(), scopes),
             ItemKind::Allow(allow) => {
                 self.note(at, allow.code.span, Target::Code(allow.code.text.to_string()), false);
             }
             _ => {}
         }
+    }
+
+    /// What is asked, at which speed and in which cases.
+    fn asked(&mut self, at: ItemRef, expr: &Expr, asked: Option<&At>, scopes: &[Scope]) {
+        self.expr(at, expr);
+        if let Some(asked) = asked {
+            self.path(at, &asked.path);
+            self.value(at, &asked.value);
+        }
+        self.scopes(at, scopes);
     }
 
     fn used(&mut self, at: ItemRef, path: &Text, alias: Option<&Name>) {
