@@ -1,7 +1,7 @@
 //! A voltage behind a resistance: battery, dc bus, or a weak feeder.
 //!
 //! Formula: `U = U_0 - R * I`; greatest power `U_0^2 / (4 * R)` at half the open-circuit voltage.
-//! Symbols: U voltage at the terminals [V]; U_0 open-circuit voltage [V]; R internal resistance [Ω]; I current [A].
+//! Symbols: U voltage at the terminals (V); U_0 open-circuit voltage (V); R internal resistance (Ω); I current (A).
 //! Validity: one state of charge, one temperature, a load of seconds to minutes.
 //! Source: Thévenin's equivalent circuit; maximum power transfer, closed form.
 //! Revision: 1

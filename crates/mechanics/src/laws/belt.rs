@@ -2,8 +2,8 @@
 //!
 //! Formula: `w_out = w_in * (1 - s) / i` with `i = d_2 / d_1`; the forces on the belt are the same at both pulleys,
 //! so the torque is multiplied by `i` and the slip is a loss of its own: total efficiency `eta * (1 - s)`.
-//! Symbols: d_1, d_2 pitch diameters of the driving and the driven pulley [m]; s slip and creep together [-];
-//! eta efficiency without slip: bending, bearings, air [-]; w speed [rad/s]; i ratio of the diameters [-].
+//! Symbols: d_1, d_2 pitch diameters of the driving and the driven pulley (m); s slip and creep together (-);
+//! eta efficiency without slip: bending, bearings, air (-); w speed (rad/s); i ratio of the diameters (-).
 //! Validity: a belt inside its rating; slip of one to two percent is creep, more is a belt about to fail. A toothed
 //! belt has none. Pitch diameters, not outside diameters.
 //! Source: belt drives in the usual handbooks of machine elements; the check is R. S. Khurmi, J. K. Gupta, Theory of

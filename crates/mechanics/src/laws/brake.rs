@@ -1,8 +1,8 @@
 //! The holding brake: how well it holds.
 //!
 //! Formula: `r = T_b / T_s`.
-//! Symbols: T_b torque of the brake [N·m]; T_s static torque of the load at the brake, losses left aside [N·m];
-//! r reserve [-].
+//! Symbols: T_b torque of the brake (N·m); T_s static torque of the load at the brake, losses left aside (N·m);
+//! r reserve (-).
 //! Validity: standstill. Losses between load and brake help to hold but may not be counted on, so they are not.
 //! Source: common practice of hoist brakes; what reserve is required stands in the local code for the machine.
 //! Revision: 1

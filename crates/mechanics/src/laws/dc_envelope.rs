@@ -2,7 +2,7 @@
 //!
 //! Formula: `T = k_T * I - T_0` with the least of the currents: at full voltage `(U_0 - k_E * w) / (R + R_s)`; at
 //! the supply's limit the root of `R * I^2 + k_E * w * I = (U_0 - R_s * I_s) * I_s`; the motor's own limit.
-//! Symbols: as in `dc_machine`; I current of the motor [A]; I_s most current of the supply for this machine [A].
+//! Symbols: as in `dc_machine`; I current of the motor (A); I_s most current of the supply for this machine (A).
 //! Validity: a current limit of the motor means a controller that lowers the motor's voltage without loss and
 //! cannot raise it above the supply's; without one, motor and supply carry the same current. Where the supply's
 //! resistance is large, the controller keeps to the side of high voltage: the supply is at its limit at half its

@@ -1,9 +1,9 @@
 //! The permanent-magnet dc machine: constants, current and torque.
 //!
 //! Formula: `U = k_E * w + R * I`, `T = k_T * I - T_0`; standstill current `U / R`, no-load current `T_0 / k_T`.
-//! Symbols: U voltage at the terminals [V]; I current [A]; R resistance of the winding, brushes included [Ω];
-//! k_E voltage constant [V·s/rad]; k_T torque constant [N·m/A]; T_0 loss torque [N·m]; T torque at the shaft [N·m];
-//! w speed [rad/s].
+//! Symbols: U voltage at the terminals (V); I current (A); R resistance of the winding, brushes included (Ω);
+//! k_E voltage constant (V·s/rad); k_T torque constant (N·m/A); T_0 loss torque (N·m); T torque at the shaft (N·m);
+//! w speed (rad/s).
 //! Validity: steady running with a field that does not change: no saturation, no weakening of warm magnets,
 //! loss torque the same at all speeds. In one consistent set of units k_T equals k_E up to iron losses; constants
 //! fitted to measured points may differ by some ten percent.

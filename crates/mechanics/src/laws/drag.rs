@@ -1,7 +1,7 @@
 //! Loads that grow with a power of the speed.
 //!
 //! Formula: `T = T_r * (w / w_r)^n` with n = 0 constant, 1 viscous, 2 quadratic; polynomial `T = c_0 + c_1*w + …`.
-//! Symbols: T torque [N·m] or force [N]; T_r at the rated point; w speed [rad/s] or [m/s], w_r at the rated point;
+//! Symbols: T torque (N·m) or force (N); T_r at the rated point; w speed (rad/s) or (m/s), w_r at the rated point;
 //! c_k coefficients.
 //! Validity: the load resists motion in either direction: against reversed motion the same law holds with the sign
 //! of the motion. A fan or pump follows the square only against a system that does (no static head), and its torque

@@ -1,8 +1,8 @@
 //! Ratio and loss between two shafts, for each direction of power.
 //!
 //! Formula: `w_out = w_in / i`; load driven: `T_out = i * eta * T_in`; load driving: `T_in = eta_b * T_out / i`.
-//! Symbols: i reduction, driver's speed over driven's [-]; w speed [rad/s]; T torque [N·m]; eta efficiency when
-//! power flows to the load, eta_b when it flows back [-]; z_1, z_2 teeth of the driving and the driven wheel [-].
+//! Symbols: i reduction, driver's speed over driven's (-); w speed (rad/s); T torque (N·m); eta efficiency when
+//! power flows to the load, eta_b when it flows back (-); z_1, z_2 teeth of the driving and the driven wheel (-).
 //! Validity: steady running at the load the efficiency was given for; at part load the real efficiency is lower.
 //! The two efficiencies differ for worms and screws and are close for spur, bevel and chain drives.
 //! Source: balance of power; tooth ratios as ISO 1122-1 (from memory).

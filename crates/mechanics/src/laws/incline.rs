@@ -1,8 +1,8 @@
 //! Weight on a slope: the share that pulls down and the share that presses.
 //!
 //! Formula: `F = m * g * (sin(a) + mu * cos(a))`, `a = atan(G)`.
-//! Symbols: m mass [kg]; g standard gravity 9.80665 [m/s²]; a slope [rad]; G grade, rise per run, uphill positive [-];
-//! mu coefficient of friction, opposing motion [-]; F force along the slope [N].
+//! Symbols: m mass (kg); g standard gravity 9.80665 (m/s²); a slope (rad); G grade, rise per run, uphill positive (-);
+//! mu coefficient of friction, opposing motion (-); F force along the slope (N).
 //! Validity: Coulomb friction, the same at all speeds. A grade of 15 % is 8.53°, not 15°.
 //! Source: Coulomb's law of friction; standard gravity of the 3rd CGPM (1901), ISO 80000-3.
 //! Revision: 1

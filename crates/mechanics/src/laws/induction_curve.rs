@@ -3,9 +3,9 @@
 //! Formula: Kloss's curve through the rated point, `K(s)`, from breakdown on and above the synchronous speed; between
 //! pull-up and breakdown `T_u + (T_b - T_u) * (K(s) - K(s_u)) / (T_b - K(s_u))`; a straight line from pull-up
 //! to standstill; all times `((U / U_n) / (f / f_n))^2`.
-//! Symbols: s slip speed over rated synchronous speed (the rotor's frequency over the rated frequency) [-]; T_b, T_u,
-//! T_l breakdown, pull-up and locked-rotor torque [N·m]; s_b, s_u slip at breakdown and pull-up [-]; U, U_n supply
-//! and rated voltage [V]; f, f_n supply and rated frequency [Hz].
+//! Symbols: s slip speed over rated synchronous speed (the rotor's frequency over the rated frequency) (-); T_b, T_u,
+//! T_l breakdown, pull-up and locked-rotor torque (N·m); s_b, s_u slip at breakdown and pull-up (-); U, U_n supply
+//! and rated voltage (V); f, f_n supply and rated frequency (Hz).
 //! Validity: the shape between the catalogue's points is an assumption (it meets each of them and Kloss's curve
 //! without a kink at breakdown); direct on line; the stator's resistance is left aside, so the law does not hold far
 //! below rated frequency.

@@ -1,8 +1,8 @@
 //! Moment of inertia, flywheel effect, radius of gyration.
 //!
 //! Formula: `J = GD2 / 4`, `J = m * k^2`.
-//! Symbols: J moment of inertia [kg·m²]; GD2 flywheel effect, mass times the square of the diameter of gyration
-//! [kg·m²]; m mass [kg]; k radius of gyration [m].
+//! Symbols: J moment of inertia (kg·m²); GD2 flywheel effect, mass times the square of the diameter of gyration
+//! (kg·m²); m mass (kg); k radius of gyration (m).
 //! Validity: a rigid body about its own axis. A flywheel effect in kgf·m² has the same number in kg·m².
 //! Source: definitions; GD² as used on name plates and in catalogues (common practice, no source).
 //! Revision: 1

@@ -1,7 +1,7 @@
 //! Kloss's formula: torque of an induction machine over slip, from its breakdown point.
 //!
 //! Formula: `T = 2 * T_b / (s / s_b + s_b / s)`; through a rated point: `s_b = s_n * (k + sqrt(k^2 - 1))`, `k = T_b / T_n`.
-//! Symbols: T torque [N·m]; T_b breakdown torque [N·m]; s slip [-]; s_b slip at breakdown [-]; T_n, s_n torque and
+//! Symbols: T torque (N·m); T_b breakdown torque (N·m); s slip (-); s_b slip at breakdown (-); T_n, s_n torque and
 //! slip at the rated point.
 //! Validity: stator resistance left aside, which serves well from the rated point to breakdown and above the
 //! synchronous speed. Deep-bar and double-cage rotors give more near standstill: there the catalogue's ratios shape

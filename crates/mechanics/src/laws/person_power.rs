@@ -1,8 +1,8 @@
 //! A person at a crank: a power that can be kept up within a range of cadence.
 //!
 //! Formula: `T = P / w` between the lowest and the highest cadence, `P / w_1` below, 0 above.
-//! Symbols: T torque averaged over a turn [N·m]; P sustained power [W]; w speed of the crank, w_1 lowest cadence
-//! [rad/s].
+//! Symbols: T torque averaged over a turn (N·m); P sustained power (W); w speed of the crank, w_1 lowest cadence
+//! (rad/s).
 //! Validity: mean over a turn, an effort as long as the power was given for; who cannot follow a faster crank
 //! gives nothing.
 //! Source: common practice, no source. The best cadence depends on the effort: 66 rpm at the first lactate threshold to 84 rpm

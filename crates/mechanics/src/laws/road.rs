@@ -1,9 +1,9 @@
 //! Road load: grade, rolling, air.
 //!
 //! Formula: `F = m * g * (sin(a) + C_rr * cos(a)) + rho * A * (v + u) * abs(v + u) / 2`, `a = atan(G)`.
-//! Symbols: m mass [kg]; g standard gravity [m/s²]; a slope [rad]; G grade, rise per run, uphill positive [-];
-//! C_rr rolling resistance [-]; rho density of air [kg/m³]; A drag area, c_d times frontal area [m²]; v speed over
-//! ground [m/s]; u headwind [m/s]; F force at the rim [N].
+//! Symbols: m mass (kg); g standard gravity (m/s²); a slope (rad); G grade, rise per run, uphill positive (-);
+//! C_rr rolling resistance (-); rho density of air (kg/m³); A drag area, c_d times frontal area (m²); v speed over
+//! ground (m/s); u headwind (m/s); F force at the rim (N).
 //! Validity: straight road, coefficients that do not change with speed. With wind the air resists the speed through
 //! the air, while power is force times speed over ground.
 //! Source: road load as in the usual handbooks of vehicle dynamics; closed form.

@@ -2,9 +2,9 @@
 //!
 //! Formula: `v = w * D / 2`, `F = 2 * T / D`; layer n of a drum: `D_n = D_1 + 2 * (n - 1) * d`; reeving:
 //! `v_load = v_rope / n_f`, `F_load = n_f * F_rope`.
-//! Symbols: D pitch diameter, from rope centre to rope centre [m]; d diameter of the rope [m]; n layer, counted from
-//! the barrel [-]; n_f falls of rope that carry the load [-]; v speed [m/s]; F force [N]; w speed [rad/s];
-//! T torque [N·m].
+//! Symbols: D pitch diameter, from rope centre to rope centre (m); d diameter of the rope (m); n layer, counted from
+//! the barrel (-); n_f falls of rope that carry the load (-); v speed (m/s); F force (N); w speed (rad/s);
+//! T torque (N·m).
 //! Validity: rope thin against the drum. Layers that nest lie a little lower (up to 13 % of the growth): the
 //! formula is on the safe side for torque and speed.
 //! Source: hoisting winches, common practice; no single source.

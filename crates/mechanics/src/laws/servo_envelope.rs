@@ -1,7 +1,7 @@
 //! The envelope of a servo or field-weakened drive: constant torque, then constant power, then nothing.
 //!
 //! Formula: `T = T_c` up to the corner speed, `T_c * w_c / w` above it, 0 beyond the highest speed.
-//! Symbols: T torque [N·m]; T_c torque below the corner [N·m]; w speed, w_c corner speed [rad/s].
+//! Symbols: T torque (N·m); T_c torque below the corner (N·m); w speed, w_c corner speed (rad/s).
 //! Validity: one envelope for peak (seconds, limited by the drive's current) and one for rated (continuous, limited by
 //! warmth). The drive's electronics cut off beyond the highest speed: there it neither drives nor brakes.
 //! Source: common practice, no source.

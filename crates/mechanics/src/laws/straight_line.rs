@@ -1,7 +1,7 @@
 //! The straight line of torque (or force) over speed.
 //!
 //! Formula: `T = T0 * (1 - w / w0)`; power is greatest at half the no-load speed, `T0 * w0 / 4`.
-//! Symbols: T torque [N·m] (force [N]), T0 at standstill; w speed [rad/s] ([m/s]), w0 without load.
+//! Symbols: T torque (N·m) (force (N)), T0 at standstill; w speed (rad/s) ((m/s)), w0 without load.
 //! Validity: sources whose torque falls evenly with speed: a permanent-magnet motor on a stiff supply, a muscle
 //! over a short effort. Beyond w0 the line turns negative: the source brakes, if its supply lets it.
 //! Source: Common practice, closed form. The peak at half speed is checked against the torque line of McCartney, Heigenhauser

@@ -1,8 +1,8 @@
 //! Synchronous speed, slip and the torque on a name plate.
 //!
 //! Formula: `w_s = 4 * pi * f / p`, `s = (w_s - w) / w_s`, `T_n = P_n / w_n`.
-//! Symbols: f supply frequency [Hz]; p number of poles [-]; w_s synchronous speed [rad/s]; w shaft speed [rad/s];
-//! s slip [-]; P_n rated power at the shaft [W], w_n rated speed [rad/s], T_n rated torque [N·m].
+//! Symbols: f supply frequency (Hz); p number of poles (-); w_s synchronous speed (rad/s); w shaft speed (rad/s);
+//! s slip (-); P_n rated power at the shaft (W), w_n rated speed (rad/s), T_n rated torque (N·m).
 //! Validity: three-phase machines; the rated speed of an induction motor lies below the synchronous speed.
 //! Source: definitions, IEC 60034-1 and IEC 60050-411 (from memory).
 //! Revision: 1

@@ -1,7 +1,7 @@
 //! A measured curve: straight between its points.
 //!
 //! Formula: `y = y_1 + (y_2 - y_1) * (x - x_1) / (x_2 - x_1)` between neighbouring points.
-//! Symbols: x variable, usually a speed [rad/s or m/s]; y value, usually a torque [N·m] or force [N].
+//! Symbols: x variable, usually a speed (rad/s or m/s); y value, usually a torque (N·m) or force (N).
 //! Validity: between the first and the last point. Outside, the end pieces go on straight, and whoever shows a number
 //! from there marks it as outside the measured range.
 //! Source: linear interpolation, closed form.

@@ -1,9 +1,9 @@
 //! The driven wheel: turning to rolling, and the grip that limits it.
 //!
 //! Formula: `v = w * C / (2 * pi)`; greatest force before the wheel slips: `mu * c * m * g * cos(atan(G))`.
-//! Symbols: C rolling circumference, way covered in one turn under load [m]; w speed [rad/s]; v speed [m/s];
-//! mu grip between tyre and ground [-]; c share of the weight on the driven wheels [-]; m mass [kg]; g gravity
-//! [m/s²]; G grade, rise per run [-].
+//! Symbols: C rolling circumference, way covered in one turn under load (m); w speed (rad/s); v speed (m/s);
+//! mu grip between tyre and ground (-); c share of the weight on the driven wheels (-); m mass (kg); g gravity
+//! (m/s²); G grade, rise per run (-).
 //! Validity: no shift of weight to the rear by acceleration or grade (it helps a rear wheel and harms a front
 //! wheel), slip of the tyre left aside.
 //! Source: Coulomb's law of friction; vehicle dynamics in the usual handbooks.

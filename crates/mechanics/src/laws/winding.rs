@@ -1,7 +1,7 @@
 //! Resistance of a copper winding at another temperature.
 //!
 //! Formula: `R = R_1 * (235 K + t - t_0) / (235 K + t_1 - t_0)`.
-//! Symbols: R, R_1 resistance [Ω] at the temperatures t, t_1 [K]; t_0 = 273.15 K, the zero of the Celsius scale.
+//! Symbols: R, R_1 resistance (Ω) at the temperatures t, t_1 (K); t_0 = 273.15 K, the zero of the Celsius scale.
 //! Validity: copper windings, −50 °C to 250 °C. Brushes do not follow it; a motor whose brushes take a large share
 //! of the resistance is better given by its warm value.
 //! Source: temperature rise by resistance, IEC 60034-1 (235 for copper, from memory).
