@@ -46,7 +46,9 @@ pub(crate) fn accept(shared: Shared<'_>, found: Vec<Diagnostic>, analysis: &mut 
             None => standing.push(finding),
         }
     }
-    for one in allowed.iter().filter(|one| !one.used && one.at.file == 0) {
+    // An error can hide the warning that is allowed: nothing is said to be unused before it is mended.
+    let sound = standing.iter().all(|finding| finding.severity != Severity::Error);
+    for one in allowed.iter().filter(|one| sound && !one.used && one.at.file == 0) {
         let message = format!("nothing here raises `{}`", one.allow.code.text);
         let place = shared.world.place(one.at, one.allow.span);
         complaints.push(Diagnostic::new(Code::UnusedAllow, place, message).help("take the line out"));

@@ -177,6 +177,7 @@ fn allowed_warnings_are_kept_with_their_reason() {
     assert!(analysis.diagnostics.is_empty(), "{:#?}", analysis.diagnostics);
     assert_eq!(analysis.accepted.len(), 1);
     check(&with("allow typed-factor because \"none\"   #! unused-allow"));
+    check(&with("allow typed-factor because \"none\"\nlet a = 5 kgg   #! unknown-unit"));
     check(&with("allow kind-mismatch because \"no\"   #! bad-allow"));
     check(&with("allow typed-fctor because \"no\"   #! bad-allow"));
 }
