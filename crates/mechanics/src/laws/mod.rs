@@ -44,7 +44,7 @@ pub struct Checked {
 
 /// Every formula with its kernel.
 pub fn checked() -> impl Iterator<Item = &'static Checked> {
-    let laws: [&'static [Checked]; 20] = [
+    let laws: &[&'static [Checked]] = &[
         battery::CHECKED,
         belt::CHECKED,
         brake::CHECKED,
@@ -66,7 +66,7 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         wheel::CHECKED,
         winding::CHECKED,
     ];
-    laws.into_iter().flatten()
+    laws.iter().copied().flatten()
 }
 
 #[cfg(test)]
