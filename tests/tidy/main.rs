@@ -11,6 +11,8 @@ mod codes;
 mod forbidden;
 mod headers;
 mod layout;
+mod list_places;
+mod lists;
 mod readme;
 mod sizes;
 mod tree;

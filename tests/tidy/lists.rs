@@ -1,0 +1,148 @@
+//! The words of the language as lists, in the forms that grammars and editors want them.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use layshaft_mechanics::registry;
+use layshaft_syntax::{DECLARATION_WORDS, RESERVED};
+use layshaft_units::{Function, KINDS, Prefixes, unit_rows};
+
+/// Words that stand for a value.
+const CONSTANTS: &[&str] = &["true", "false", "yes", "no", "absent", "rated"];
+/// Words that join conditions.
+const LOGIC: &[&str] = &["and", "or", "not", "if", "then", "else"];
+/// Values every spec knows; that each is one, a test asks of the language itself.
+pub const KNOWN_VALUES: &[&str] = &["pi", "standard_gravity"];
+
+/// Declaring words that most grammars have a rule of their own for, as something is named behind them.
+const WITH_A_NAME: &[&str] =
+    &["let", "supply", "source", "transmission", "load", "drive", "case", "show", "allow"];
+
+/// What a list holds.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Words {
+    /// Words that declare, without those that name something.
+    DeclaringPlainly,
+    /// Every reserved word.
+    Reserved,
+    /// Reserved words that join conditions.
+    Logic,
+    /// Reserved words that stand for a value.
+    Constants,
+    /// The other reserved words.
+    Clauses,
+    /// Functions of expressions.
+    Functions,
+    /// Values every spec knows.
+    KnownValues,
+    /// Kinds of parts.
+    Kinds,
+    /// Kinds of quantities.
+    Quantities,
+    /// Unit symbols with their prefixes.
+    Units,
+}
+
+/// How a list is written.
+#[derive(Clone, Copy, Debug)]
+pub enum Form {
+    /// Alternatives of a regular expression: group, bar, end of group.
+    Regex(&'static str, &'static str, &'static str),
+    /// Words parted by blanks, in lines that begin with this.
+    Lines(&'static str),
+}
+
+/// Columns a written line has at most.
+const WIDTH: usize = 110;
+
+impl Words {
+    /// The words, in the order of the code.
+    pub fn list(self) -> Vec<&'static str> {
+        let reserved = || RESERVED.iter().map(|row| row.word);
+        // The lexer knows some words ahead of the grammar.
+        let declaring = || {
+            let now = DECLARATION_WORDS
+                .iter()
+                .filter(|row| !row.meaning.contains("a later version of the language"));
+            now.map(|row| row.word)
+        };
+        match self {
+            Words::DeclaringPlainly => declaring().filter(|word| !WITH_A_NAME.contains(word)).collect(),
+            Words::Reserved => reserved().collect(),
+            Words::Logic => reserved().filter(|word| LOGIC.contains(word)).collect(),
+            Words::Constants => reserved().filter(|word| CONSTANTS.contains(word)).collect(),
+            Words::Clauses => {
+                reserved().filter(|word| !LOGIC.contains(word) && !CONSTANTS.contains(word)).collect()
+            }
+            Words::Functions => Function::names().collect(),
+            Words::KnownValues => KNOWN_VALUES.to_vec(),
+            Words::Kinds => {
+                let mut seen = BTreeSet::new();
+                registry::rows().iter().map(|row| row.name).filter(|name| seen.insert(*name)).collect()
+            }
+            Words::Quantities => KINDS.iter().map(|kind| kind.name).collect(),
+            Words::Units => Vec::new(),
+        }
+    }
+
+    /// As it stands in a file.
+    pub fn written(self, form: Form) -> String {
+        match (self, form) {
+            (Words::Units, Form::Regex(open, bar, close)) => units(open, bar, close),
+            (_, Form::Regex(_, bar, _)) => self.list().join(bar),
+            (_, Form::Lines(start)) => lines(&self.list(), start, ""),
+        }
+    }
+}
+
+fn lines(words: &[&str], start: &str, quote: &str) -> String {
+    let mut out = String::new();
+    let mut column = WIDTH;
+    for word in words {
+        let length = word.chars().count() + 2 * quote.len() + 1;
+        if column + length > WIDTH {
+            out.push('\n');
+            out.push_str(start);
+            column = start.chars().count();
+        } else {
+            out.push(' ');
+        }
+        column += length;
+        out.extend([quote, word, quote]);
+    }
+    out
+}
+
+/// Symbols that take the same prefixes stand behind one group of them. A longer symbol comes before a shorter one
+/// that it begins with, since the first alternative that fits is taken.
+fn units(open: &str, bar: &str, close: &str) -> String {
+    let mut groups: BTreeMap<Vec<String>, Vec<&str>> = BTreeMap::new();
+    for row in unit_rows() {
+        let prefixes = match row.prefixes {
+            Prefixes::None => Vec::new(),
+            Prefixes::All => ["T", "G", "M", "k", "h", "da", "d", "c", "m", "μ", "µ", "u", "n", "p"]
+                .map(String::from)
+                .to_vec(),
+            Prefixes::Only(list) => list.iter().flat_map(|prefix| spellings(prefix)).collect(),
+        };
+        let symbols = std::iter::once(row.symbol).chain(row.also.iter().copied());
+        groups.entry(prefixes).or_default().extend(symbols);
+    }
+    let group = |words: &[&str]| format!("{open}{}{close}", words.join(bar));
+    let mut out = Vec::new();
+    for (prefixes, mut symbols) in groups {
+        symbols.sort_by_key(|symbol| std::cmp::Reverse(symbol.len()));
+        if prefixes.is_empty() {
+            out.push(symbols.join(bar));
+        } else {
+            let prefixes: Vec<&str> = prefixes.iter().map(String::as_str).collect();
+            out.push(format!("{}?{}", group(&prefixes), group(&symbols)));
+        }
+    }
+    out.join(bar)
+}
+
+/// A prefix as it may be typed: micro has two characters that look alike, and the letter u.
+fn spellings(prefix: &&str) -> Vec<String> {
+    let all: &[&str] = if *prefix == "μ" { &["μ", "µ", "u"] } else { &[prefix] };
+    all.iter().map(|text| (*text).to_owned()).collect()
+}
