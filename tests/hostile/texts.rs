@@ -32,7 +32,7 @@ fn byte_order_mark_and_windows_lines() {
 #[test]
 fn a_text_that_turns_the_direction_of_writing() {
     let analysis = within(20, "let a = 2 m # \u{202e}m 3 = b tel\n");
-    assert_eq!(support::codes(&analysis), ["bad-text"], "{}", lines(&analysis));
+    assert_eq!(support::codes(&analysis), ["writing-direction"], "{}", lines(&analysis));
 }
 
 #[test]

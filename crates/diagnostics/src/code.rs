@@ -67,6 +67,7 @@ macro_rules! codes {
 codes! {
     // -- text and grammar
     BadText = "bad-text", Error, "the file holds bytes or characters that cannot stand in a spec";
+    WritingDirection = "writing-direction", Warning, "a mark that turns the direction in which the text is shown";
     TooLarge = "too-large", Error, "a limit on size, nesting or length is passed";
     Syntax = "syntax", Error, "something else was expected here";
     UnclosedBracket = "unclosed-bracket", Error, "a bracket is opened and not closed, or closed and not opened";

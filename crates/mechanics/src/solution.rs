@@ -65,6 +65,8 @@ pub enum Mode {
     DrivenBack,
     /// The load drives and no source takes part.
     Freewheeling,
+    /// A source that is switched off and turns along or stands.
+    Off,
 }
 
 /// Whether a small push comes back.
@@ -99,10 +101,11 @@ impl Mode {
             Self::Standstill => "standstill",
             Self::DrivenBack => "driven_back",
             Self::Freewheeling => "freewheeling",
+            Self::Off => "off",
         }
     }
 
     /// All words of modes.
     pub const WORDS: &'static [&'static str] =
-        &["motoring", "braking", "standstill", "driven_back", "freewheeling"];
+        &["motoring", "braking", "standstill", "driven_back", "freewheeling", "off"];
 }

@@ -6,7 +6,8 @@
 pub mod derivation;
 pub mod escape;
 pub mod note;
-pub mod number;
 pub mod sheet;
 pub mod shown;
 pub mod unit;
+
+pub use layshaft_semantics::number;

@@ -1,6 +1,7 @@
 //! Sentences of the mechanics with their quantities put in.
 
 use layshaft_mechanics::fault::{Fault, FaultKind, Note};
+use layshaft_semantics::say;
 
 use crate::number::{DIGITS, digits, percent, shortened};
 use crate::shown::joined;
@@ -9,28 +10,7 @@ use crate::unit::{Habits, convert};
 /// The sentence, each `{0}` replaced by its quantity in the unit the author uses for its kind.
 #[must_use]
 pub fn fill(note: &Note, habits: &Habits) -> String {
-    let mut out = String::with_capacity(note.template.len() + 16);
-    let mut rest = note.template;
-    while let Some(open) = rest.find('{') {
-        out.push_str(&rest[..open]);
-        let body = &rest[open + 1..];
-        let filled = body.split_once('}').and_then(|(index, behind)| {
-            let (si, kind) = note.quantities.get(index.parse::<usize>().ok()?)?;
-            Some((quantity(*si, kind, habits), behind))
-        });
-        match filled {
-            Some((text, behind)) => {
-                out.push_str(&text);
-                rest = behind;
-            }
-            None => {
-                out.push('{');
-                rest = body;
-            }
-        }
-    }
-    out.push_str(rest);
-    out
+    say::filled(note, |si, kind| quantity(si, kind, habits))
 }
 
 /// An SI value within a sentence: `12.5 kN·m`, zeros at the end cut.

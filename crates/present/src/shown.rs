@@ -132,6 +132,7 @@ fn quantity_number(quantity: &Quantity, significant: Option<usize>) -> Number {
     let value = convert(quantity.si, &unit);
     let digits = write(value);
     let text = match quantity.limits {
+        Some(limits) if quantity.is_range => range(limits, &unit),
         Some(limits) => with_limits(&digits, value, limits, &unit),
         None => joined(&digits, &unit),
     };
@@ -145,6 +146,12 @@ fn quantity_number(quantity: &Quantity, significant: Option<usize>) -> Number {
         limits: quantity.limits,
         marks: Marks::default(),
     }
+}
+
+/// `50 rpm .. 90 rpm`
+fn range((low, high): (f64, f64), unit: &str) -> String {
+    let end = |si: f64| joined(&number::written(convert(si, unit)), unit);
+    format!("{} .. {}", end(low), end(high))
 }
 
 /// `12 ± 0.5 N·m`, `74 % ± 4 points`, `12 (11 .. 14) N·m` where the limits are not equally far.

@@ -124,6 +124,19 @@ fn mistakes(text: &str) -> Vec<String> {
     wrong
 }
 
+/// The page for readers names no field and no choice that the output does not have.
+#[test]
+fn the_reference_page_speaks_of_what_is_there() {
+    let page = include_str!("../../../grammar/json.md");
+    let rows = page.lines().filter(|line| line.starts_with('|') || line.starts_with("A value"));
+    let missing: Vec<&str> = rows
+        .flat_map(|row| row.split('`').skip(1).step_by(2))
+        .filter(|word| word.bytes().all(|byte| byte.is_ascii_lowercase() || byte == b'_'))
+        .filter(|word| !["plain", "let"].contains(word) && !SCHEMA_TEXT.contains(&format!("\"{word}\"")))
+        .collect();
+    assert!(missing.is_empty(), "{missing:?} are not in the schema");
+}
+
 fn length(millimetres: f64) -> Datum {
     let ty = layshaft_units::kind("length").expect("a kind").ty();
     let unit = Some("mm".into());
@@ -131,6 +144,7 @@ fn length(millimetres: f64) -> Datum {
         si: millimetres / 1000.0,
         ty,
         limits: Some((0.01, 0.02)),
+        is_range: false,
         confidence: None,
         unit,
     })

@@ -10,6 +10,7 @@
 pub mod analysis;
 pub mod files;
 pub mod index;
+pub mod number;
 pub mod quantity;
 pub mod say;
 

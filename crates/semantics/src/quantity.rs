@@ -12,6 +12,8 @@ pub struct Quantity {
     pub ty: Type,
     /// Limits from a tolerance or a range, SI, low first.
     pub limits: Option<(f64, f64)>,
+    /// Whether it was written as a range, `50 rpm .. 90 rpm`: its middle is then nobody's value.
+    pub is_range: bool,
     /// The confidence the limits were stated with, as a ratio.
     pub confidence: Option<f64>,
     /// The unit it was written in or is best shown in, canonical spelling.
@@ -21,7 +23,7 @@ pub struct Quantity {
 impl Quantity {
     /// A quantity of a known kind whose value is not to be had; the reason has been reported.
     pub(crate) fn unknown(ty: Type) -> Self {
-        Self { si: f64::NAN, ty, limits: None, confidence: None, unit: None }
+        Self { si: f64::NAN, ty, limits: None, is_range: false, confidence: None, unit: None }
     }
 
     /// Whether there is a value.

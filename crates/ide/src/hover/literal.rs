@@ -46,7 +46,7 @@ fn of_number(value: f64, unit: &str) -> Option<Quantity> {
     let si = unit.as_ref().map_or(value, |unit| unit.to_si(value));
     let ty = unit.as_ref().map_or_else(|| layshaft_units::Type::of_number_literal(value), |unit| unit.ty);
     let unit = unit.map(|unit| unit.text.into());
-    si.is_finite().then_some(Quantity { si, ty, limits: None, confidence: None, unit })
+    si.is_finite().then_some(Quantity { si, ty, limits: None, is_range: false, confidence: None, unit })
 }
 
 /// What the analysis made of it where it is the whole value of a `let` or a field: there its kind is settled.

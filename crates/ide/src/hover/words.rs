@@ -70,6 +70,7 @@ const RESULTS: &[(&str, &str)] = &[
     ("standstill", "at rest"),
     ("driven_back", "the load turns the drive against the direction asked for"),
     ("freewheeling", "the load drives and no source takes part"),
+    ("off", "switched off with `on = no`"),
     ("input", "the side of a part toward the sources"),
     ("output", "the side of a part toward the loads"),
 ];

@@ -36,6 +36,9 @@ impl Solution {
             }
             "power_share" => {
                 let here = self.here()?;
+                if here.mode == Mode::DrivenBack {
+                    return Err(absent(super::part_answers::TURNED_BACK));
+                }
                 let share = here.source_power(&self.drive).abs() / self.peak()?.value;
                 self.quantity(share, "percentage", here.marks)
             }

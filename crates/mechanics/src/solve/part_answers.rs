@@ -80,6 +80,7 @@ impl Solution {
         let speed = here.x * self.drive.shafts[shaft].speed;
         match name {
             "power" => Ok(self.quantity((effort * speed).abs(), "mechanical_power", here.marks)),
+            "power_share" if here.mode == Mode::DrivenBack => Err(absent(TURNED_BACK)),
             "power_share" => {
                 let share = (effort * speed).abs() / self.source_peak(source)?.1;
                 Ok(self.quantity(share, "percentage", here.marks))
@@ -360,13 +361,19 @@ impl Solution {
     }
 }
 
+/// Why a drive that is turned back has no share of a peak power.
+pub(super) const TURNED_BACK: &str =
+    "the load turns it back: it takes up power, and a share of the peak it could give says nothing";
+
 /// How power flows at one source.
 fn source_mode(here: &State, source: &SourceAt, effort: f64, behind: bool) -> &'static str {
-    let mode = if here.x == 0.0 {
+    let mode = if source.character.is_none() {
+        Mode::Off
+    } else if here.x == 0.0 {
         Mode::Standstill
     } else if here.x < 0.0 {
         Mode::DrivenBack
-    } else if behind || source.character.is_none() || effort == 0.0 {
+    } else if behind || effort == 0.0 {
         Mode::Freewheeling
     } else if effort > 0.0 {
         Mode::Motoring

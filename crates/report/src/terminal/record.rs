@@ -1,7 +1,7 @@
 //! What stands behind the numbers: assumptions, values without basis, accepted warnings, laws, cautions.
 
 use layshaft_present::escape::terminal;
-use layshaft_present::sheet::Sheet;
+use layshaft_present::sheet::{AssumptionLine, Sheet};
 
 use super::style::Tone;
 use super::{Options, paragraph};
@@ -33,15 +33,35 @@ pub(super) fn record(sheet: &Sheet, options: &Options) -> String {
 }
 
 fn assumptions(sheet: &Sheet) -> Vec<String> {
-    let line = |assumption: &layshaft_present::sheet::AssumptionLine| {
+    let same = |a: &AssumptionLine, b: &AssumptionLine| {
+        a.by_tool == b.by_tool
+            && a.reason == b.reason
+            && a.value == b.value
+            && field_of(&a.subject) == field_of(&b.subject)
+    };
+    // What is assumed of several parts alike is read once.
+    let mut groups: Vec<(&AssumptionLine, Vec<String>)> = Vec::new();
+    for assumption in &sheet.assumptions {
+        let subject = terminal(&assumption.subject).into_owned();
+        match groups.iter_mut().find(|(first, _)| same(first, assumption)) {
+            Some((_, subjects)) => subjects.push(subject),
+            None => groups.push((assumption, vec![subject])),
+        }
+    }
+    let line = |(assumption, subjects): (&AssumptionLine, Vec<String>)| {
         let value = assumption
             .value
             .as_ref()
             .map_or_else(String::new, |value| format!(" = {}", terminal(value.text())));
         let by = if assumption.by_tool { "default" } else { "author" };
-        format!("{}{value} ({by}: {})", terminal(&assumption.subject), terminal(&assumption.reason))
+        format!("{}{value} ({by}: {})", subjects.join(", "), terminal(&assumption.reason))
     };
-    sheet.assumptions.iter().map(line).collect()
+    groups.into_iter().map(line).collect()
+}
+
+/// The field of a subject: `inertia` of `reducer.inertia`.
+fn field_of(subject: &str) -> &str {
+    subject.rsplit('.').next().unwrap_or(subject)
 }
 
 fn accepted(sheet: &Sheet) -> Vec<String> {

@@ -49,14 +49,19 @@ fn sides(eval: &Eval<'_>, left: &Expr, right: &Expr, reading: Reading<'_>) -> Op
 }
 
 /// Whether an expression names a field or result.
-fn has_result(expr: &Expr) -> bool {
+pub(super) fn has_result(expr: &Expr) -> bool {
     match &expr.kind {
         ExprKind::Path(path) => path.names.len() > 1,
         ExprKind::Paren(inner) | ExprKind::Unary { arg: inner, .. } => has_result(inner),
         ExprKind::Binary { left, right, .. } => has_result(left) || has_result(right),
-        ExprKind::Power { base, .. } => has_result(base),
+        ExprKind::Power { base, exponent } => has_result(base) || has_result(exponent),
         ExprKind::Call { args, .. } => args.iter().any(has_result),
-        ExprKind::If { then, otherwise, .. } => has_result(then) || has_result(otherwise),
+        ExprKind::If { condition, then, otherwise } => {
+            has_result(condition) || has_result(then) || has_result(otherwise)
+        }
+        ExprKind::Compare { first, rest } => {
+            has_result(first) || rest.iter().any(|(_, _, side)| has_result(side))
+        }
         _ => false,
     }
 }

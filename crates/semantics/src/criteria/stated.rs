@@ -118,24 +118,12 @@ fn single_results<'e>(condition: &'e Expr, found: &mut Vec<&'e Path>) -> bool {
                 if let ExprKind::Path(path) = &side.kind {
                     found.push(path);
                     results += usize::from(path.names.len() > 1);
-                } else if has_path(side) {
+                } else if super::measure::has_result(side) {
                     return false;
                 }
             }
             results <= 1
         }
-        _ => false,
-    }
-}
-
-fn has_path(expr: &Expr) -> bool {
-    match &expr.kind {
-        ExprKind::Path(path) => path.names.len() > 1,
-        ExprKind::Paren(inner) | ExprKind::Unary { arg: inner, .. } => has_path(inner),
-        ExprKind::Binary { left, right, .. } => has_path(left) || has_path(right),
-        ExprKind::Power { base, exponent } => has_path(base) || has_path(exponent),
-        ExprKind::Call { args, .. } => args.iter().any(has_path),
-        ExprKind::If { .. } | ExprKind::Compare { .. } => true,
         _ => false,
     }
 }

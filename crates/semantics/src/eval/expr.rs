@@ -190,7 +190,7 @@ impl Eval<'_> {
             BinaryOp::Divide if b.ty.is_plain_number() => a.unit,
             _ => None,
         };
-        self.finite(Quantity { si, ty, limits: None, confidence: None, unit }, reading, span)
+        self.finite(Quantity { si, ty, limits: None, is_range: false, confidence: None, unit }, reading, span)
     }
 
     /// `1450 min-1`, a power written without its sign: says so, and whether it was that.
@@ -259,7 +259,11 @@ impl Eval<'_> {
             return Some(Quantity::unknown(ty));
         }
         let si = libm::pow(a.si, e.si);
-        self.finite(Quantity { si, ty, limits: None, confidence: None, unit: None }, reading, expr.span)
+        self.finite(
+            Quantity { si, ty, limits: None, is_range: false, confidence: None, unit: None },
+            reading,
+            expr.span,
+        )
     }
 
     fn call(
@@ -306,7 +310,7 @@ impl Eval<'_> {
             return None;
         };
         let unit = if same { found.into_iter().find_map(|value| value.unit) } else { None };
-        let found = Quantity { si, ty, limits: None, confidence: None, unit };
+        let found = Quantity { si, ty, limits: None, is_range: false, confidence: None, unit };
         self.finite(found, reading, expr.span).map(Datum::Quantity)
     }
 

@@ -23,14 +23,27 @@ impl Eval<'_> {
     ) -> Option<Quantity> {
         let Some(written) = unit else {
             let ty = Type::of_number_literal(number.value);
-            let quantity = Quantity { si: number.value, ty, limits: None, confidence: None, unit: None };
+            let quantity = Quantity {
+                si: number.value,
+                ty,
+                limits: None,
+                is_range: false,
+                confidence: None,
+                unit: None,
+            };
             return self.finite(quantity, reading, number.span);
         };
         let unit = self.unit(written, reading.at, reading.wanted, Some(number))?;
         self.hint_hidden_names(written, number, reading.at);
         let si = unit.to_si(number.value);
-        let quantity =
-            Quantity { si, ty: unit.ty, limits: None, confidence: None, unit: Some(unit.text.into()) };
+        let quantity = Quantity {
+            si,
+            ty: unit.ty,
+            limits: None,
+            is_range: false,
+            confidence: None,
+            unit: Some(unit.text.into()),
+        };
         self.finite(quantity, reading, number.span.cover(written.span))
     }
 

@@ -68,7 +68,7 @@ impl Eval<'_> {
         let name = &*path.names.first()?.text;
         let quantity = |si, ty, unit: Option<&str>| {
             let unit = unit.map(Into::into);
-            Some(Datum::Quantity(Quantity { si, ty, limits: None, confidence: None, unit }))
+            Some(Datum::Quantity(Quantity { si, ty, limits: None, is_range: false, confidence: None, unit }))
         };
         if path.names.len() == 1 {
             match name {
@@ -256,6 +256,7 @@ impl Eval<'_> {
                     si,
                     ty,
                     limits: None,
+                    is_range: false,
                     confidence: None,
                     unit: None,
                 }));

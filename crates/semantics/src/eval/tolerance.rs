@@ -46,7 +46,7 @@ impl Eval<'_> {
             self.report(Diagnostic::new(Code::WrongValue, self.place(reading.at, tolerance.span), message));
             return None;
         }
-        Some(Quantity { limits: Some((a.si - half, a.si + half)), confidence, ..a })
+        Some(Quantity { limits: Some((a.si - half, a.si + half)), is_range: false, confidence, ..a })
     }
 
     /// The tolerance of a value, in its kind; of a level it is a difference.
@@ -128,7 +128,7 @@ impl Eval<'_> {
             self.report(Diagnostic::new(Code::Contradiction, self.place(reading.at, expr.span), message));
             return None;
         }
-        Some(Quantity { limits: Some((low, high)), ..a })
+        Some(Quantity { limits: Some((low, high)), is_range: false, ..a })
     }
 
     /// `lo .. hi`: the middle, with the ends as limits.
@@ -167,7 +167,8 @@ impl Eval<'_> {
             return None;
         }
         let si = 0.5 * a.si + 0.5 * b.si;
-        Some(Quantity { si, ty, limits: Some((a.si, b.si)), confidence: None, unit: b.unit.or(a.unit) })
+        let limits = Some((a.si, b.si));
+        Some(Quantity { si, ty, limits, is_range: true, confidence: None, unit: b.unit.or(a.unit) })
     }
 
     /// A bare number takes the unit of its neighbour: `10 .. 20 N·m`, `220 ± 10 mm`.

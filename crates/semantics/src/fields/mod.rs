@@ -62,7 +62,14 @@ pub(crate) fn of_default(field: &Field, si: f64) -> Option<Datum> {
 pub(crate) fn quantity(si: f64, kind: &str) -> Option<Datum> {
     let kind = layshaft_units::kind(kind)?;
     let unit = Some(kind.unit).filter(|unit| !unit.is_empty()).map(Into::into);
-    Some(Datum::Quantity(Quantity { si, ty: kind.ty(), limits: None, confidence: None, unit }))
+    Some(Datum::Quantity(Quantity {
+        si,
+        ty: kind.ty(),
+        limits: None,
+        is_range: false,
+        confidence: None,
+        unit,
+    }))
 }
 
 fn default_value(field: &Field, si: f64) -> Option<FieldValue> {

@@ -63,6 +63,7 @@ const fn sort(c: char) -> Option<Sort> {
 
 fn problem(sort: Sort, c: char, span: Span) -> Problem {
     let code = c as u32;
+    let row = if sort == Sort::Direction { Code::WritingDirection } else { Code::BadText };
     let message = match sort {
         Sort::Control => format!("a control character (U+{code:04X}) stands here"),
         Sort::Direction => {
@@ -72,5 +73,5 @@ fn problem(sort: Sort, c: char, span: Span) -> Problem {
         }
         Sort::Invisible => format!("an invisible character (U+{code:04X}) stands here"),
     };
-    Problem::new(Code::BadText, span, message).fix("take it out", span, "")
+    Problem::new(row, span, message).fix("take it out", span, "")
 }

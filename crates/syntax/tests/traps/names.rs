@@ -138,11 +138,11 @@ let a = 5⟨200B⟩ m
     bad-text at «⟨200B⟩»: an invisible character (U+200B) stands here
       fix: take it out ⇒ let a = 5 m
 # ⟨202E⟩note
-    bad-text at «⟨202E⟩»: a mark of writing direction (U+202E) stands here: the text may read otherwise than it is
+    writing-direction at «⟨202E⟩»: a mark of writing direction (U+202E) stands here: the text may read otherwise than it is
       fix: take it out ⇒ # note
 let a = 5 m # ⟨202E⟩note
     (let a ‹5 m›)
-    bad-text at «⟨202E⟩»: a mark of writing direction (U+202E) stands here: the text may read otherwise than it is
+    writing-direction at «⟨202E⟩»: a mark of writing direction (U+202E) stands here: the text may read otherwise than it is
       fix: take it out ⇒ let a = 5 m # note
 "##,
     );
