@@ -30,6 +30,14 @@ const fn spot(
 
 const TEXTMATE: &str = "grammar/layshaft.tmLanguage.json";
 
+const GRAMMAR: &str = "grammar/tree-sitter/grammar.js";
+const SCANNER: &str = "grammar/tree-sitter/src/scanner.c";
+const HIGHLIGHTS: &str = "grammar/tree-sitter/queries/highlights.scm";
+/// Strings of C, parted by commas.
+const C_WORDS: Form = Form::Lines("\"", ",", "    ");
+/// Strings of a tree-sitter query.
+const QUERY: Form = Form::Lines("\"", "", "    ");
+
 static SPOTS: &[Spot] = &[
     spot(
         TEXTMATE,
@@ -95,6 +103,14 @@ static SPOTS: &[Spot] = &[
         "\"keyword.other.unit.shaft\",\n          \"match\": \"(?<![\\\\p{L}_])(?:",
         ")(?!",
     ),
+    spot(GRAMMAR, Words::Reserved, Form::Lines("\"", ",", "      "), "global: (_) => [", ",\n    ],"),
+    spot(SCANNER, Words::Reserved, C_WORDS, "RESERVED[] = {", ", NULL,"),
+    spot(SCANNER, Words::Closing, C_WORDS, "DECLARING[] = {", ", NULL,"),
+    spot(SCANNER, Words::OddUnits, C_WORDS, "ODD_UNITS[] = {", ", NULL,"),
+    spot(HIGHLIGHTS, Words::Kinds, QUERY, "(kind) @type\n  (#any-of? @type", "))"),
+    spot(HIGHLIGHTS, Words::Quantities, QUERY, "(quantity_kind) @type\n  (#any-of? @type", "))"),
+    spot(HIGHLIGHTS, Words::Functions, QUERY, "(#any-of? @function.builtin", "))"),
+    spot(HIGHLIGHTS, Words::KnownValues, QUERY, "(#any-of? @constant.builtin", "))"),
 ];
 
 /// Where a list begins and ends in its file.
@@ -140,7 +156,8 @@ fn word_lists_are_those_of_the_code() {
 
 #[test]
 fn a_list_that_differs_is_seen() {
-    let spots = [spot("a.vim", Words::Logic, Form::Lines("  \\ "), "keyword logic", "\n\n")];
+    let form = Form::Lines("", "", "  \\ ");
+    let spots = [spot("a.vim", Words::Logic, form, "keyword logic", "\n\n")];
     let good = "keyword logic\n  \\ and or not if then else\n\n";
     none(&complaints(&Tree::sample(&[("a.vim", good)]), &spots));
     one(&complaints(&Tree::sample(&[("a.vim", &good.replace(" or", ""))]), &spots), "list of Logic differs");

@@ -22,6 +22,8 @@ const WITH_A_NAME: &[&str] =
 pub enum Words {
     /// Words that declare, without those that name something.
     DeclaringPlainly,
+    /// Words that declare and end whatever is open before them.
+    Closing,
     /// Every reserved word.
     Reserved,
     /// Reserved words that join conditions.
@@ -40,6 +42,8 @@ pub enum Words {
     Quantities,
     /// Unit symbols with their prefixes.
     Units,
+    /// Unit symbols of more than letters.
+    OddUnits,
 }
 
 /// How a list is written.
@@ -47,8 +51,8 @@ pub enum Words {
 pub enum Form {
     /// Alternatives of a regular expression: group, bar, end of group.
     Regex(&'static str, &'static str, &'static str),
-    /// Words parted by blanks, in lines that begin with this.
-    Lines(&'static str),
+    /// Words between marks, with this behind each but the last, in lines that begin with this.
+    Lines(&'static str, &'static str, &'static str),
 }
 
 /// Columns a written line has at most.
@@ -67,6 +71,7 @@ impl Words {
         };
         match self {
             Words::DeclaringPlainly => declaring().filter(|word| !WITH_A_NAME.contains(word)).collect(),
+            Words::Closing => declaring().filter(|word| *word != "allow").collect(),
             Words::Reserved => reserved().collect(),
             Words::Logic => reserved().filter(|word| LOGIC.contains(word)).collect(),
             Words::Constants => reserved().filter(|word| CONSTANTS.contains(word)).collect(),
@@ -81,6 +86,11 @@ impl Words {
             }
             Words::Quantities => KINDS.iter().map(|kind| kind.name).collect(),
             Words::Units => Vec::new(),
+            Words::OddUnits => {
+                let odd = |symbol: &&str| symbol.contains(|c: char| c == '_' || c.is_ascii_digit());
+                let symbols = unit_rows().iter().flat_map(|row| std::iter::once(&row.symbol).chain(row.also));
+                symbols.copied().filter(odd).collect()
+            }
         }
     }
 
@@ -89,16 +99,17 @@ impl Words {
         match (self, form) {
             (Words::Units, Form::Regex(open, bar, close)) => units(open, bar, close),
             (_, Form::Regex(_, bar, _)) => self.list().join(bar),
-            (_, Form::Lines(start)) => lines(&self.list(), start, ""),
+            (_, Form::Lines(mark, between, start)) => lines(&self.list(), mark, between, start),
         }
     }
 }
 
-fn lines(words: &[&str], start: &str, quote: &str) -> String {
+fn lines(words: &[&str], mark: &str, between: &str, start: &str) -> String {
     let mut out = String::new();
     let mut column = WIDTH;
-    for word in words {
-        let length = word.chars().count() + 2 * quote.len() + 1;
+    for (at, word) in words.iter().enumerate() {
+        let word = format!("{mark}{word}{mark}{}", if at + 1 < words.len() { between } else { "" });
+        let length = word.chars().count() + 1;
         if column + length > WIDTH {
             out.push('\n');
             out.push_str(start);
@@ -107,7 +118,7 @@ fn lines(words: &[&str], start: &str, quote: &str) -> String {
             out.push(' ');
         }
         column += length;
-        out.extend([quote, word, quote]);
+        out.push_str(&word);
     }
     out
 }

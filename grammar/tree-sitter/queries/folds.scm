@@ -1,0 +1,5 @@
+[
+  (block)
+  (rows)
+  (chain)
+] @fold
