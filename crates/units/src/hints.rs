@@ -66,7 +66,12 @@ fn wrong_dimension(wanted: &Kind, found: &Type) -> Vec<String> {
         return vec!["if the kilogram or the pound is a force here, write `kgf` or `lbf`".to_owned(), weight];
     }
     if found.dim.minus(wanted.dim) == Some(ACCELERATION) {
-        return one("if the force unit is meant as a mass, write `kg` or `lb`, not `kgf` or `lbf`");
+        let as_mass = "if the force unit is meant as a mass, write `kg` or `lb`, not `kgf` or `lbf`";
+        if wanted.name == "moment_of_inertia" {
+            let effect = "a flywheel effect GD² is `let GD2: flywheel_effect = … kg·m²`, and J = GD²/4";
+            return vec![as_mass.to_owned(), effect.to_owned()];
+        }
+        return one(as_mass);
     }
     specific(wanted, found).map_or_else(|| fallback(wanted), one)
 }
@@ -248,7 +253,9 @@ fn wants_angle(found: &Type) -> Vec<String> {
         return one("the angle of a grade is `atan(grade)`: `sin(atan(grade))`");
     }
     if found.is_plain_number() {
-        return one("say which unit of angle is meant: `°` or `rad`, as in `sin(x * 1 rad)`");
+        return one(
+            "say which unit of angle is meant, `°` or `rad`, as in `sin(x * 1 rad)`; the angle of a grade is `atan(grade)`",
+        );
     }
     Vec::new()
 }

@@ -68,8 +68,20 @@ fn drawn(finding: &Diagnostic, places: &[Place], sources: &Sources, style: Style
     }
     let mut bytes = Vec::new();
     report.finish().write(sources, &mut bytes).ok()?;
-    let text = String::from_utf8(bytes).ok()?;
+    let mut text = String::from_utf8(bytes).ok()?;
+    if !style.color {
+        // The library paints the word of a kind of its own even so.
+        text = unpainted(&text);
+    }
     Some(text.lines().map(|line| format!("{}\n", line.trim_end())).collect())
+}
+
+/// Without colour codes; none can be the author's, whose control characters are escaped before.
+fn unpainted(text: &str) -> String {
+    let mut parts = text.split("\u{1b}[");
+    let mut out = String::from(parts.next().unwrap_or_default());
+    parts.for_each(|part| out.push_str(part.split_once('m').map_or(part, |(_, rest)| rest)));
+    out
 }
 
 /// Without the lines of the text, where these are too long: places with a piece around each.
@@ -127,6 +139,15 @@ mod tests {
 
     fn at(file: u32, start: u32, end: u32) -> FileSpan {
         FileSpan { file: FileId(file), span: Span::new(start, end) }
+    }
+
+    #[test]
+    fn no_colour_means_none_for_any_severity() {
+        for code in [Code::KindMismatch, Code::Overspeed, Code::TypedFactor] {
+            let found = Diagnostic::new(code, at(0, 4, 5), "m");
+            let shown = findings(&analysis(&["let x = 9.81\n"], vec![found]), &[String::from("a.shaft")], NO);
+            assert!(!shown.contains('\u{1b}') && shown.contains(code.row().word), "{shown:?}");
+        }
     }
 
     #[test]

@@ -107,6 +107,9 @@ impl Eval<'_> {
         if let Some(close) = layshaft_units::closest(&first.text, own) {
             return found.fix(format!("write `{close}`"), place, close);
         }
+        if &*first.text == "g" {
+            return found.help("the acceleration of free fall is `standard_gravity`, the gram is written behind a number: `1 g`");
+        }
         if layshaft_units::unit_symbol(&first.text) {
             return found
                 .help(format!("if the unit is meant, a number stands before it: `1 {}`", first.text));
