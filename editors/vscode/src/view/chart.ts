@@ -171,16 +171,16 @@ function outsideData(chart: Chart, pane: Pane, named: boolean): Node[] {
   });
 }
 
-/** Says what a hatched part is: above it where there is room, else beside it. */
+/** Says what a hatched part is: above it where there is room, else what the part beside it is. */
 function edgeName(edge: number, left: number, right: number, box: Box): Element {
-  const inside = right - left >= widthOf("not measured") + 6;
-  const text = inside ? "not measured" : "measured";
-  const leftward = inside ? edge === right : edge === left;
-  const arrow = inside ? text : edge === left ? `${text} →|` : `|← ${text}`;
+  const last = edge === left;
+  const roomy = right - left >= widthOf("not measured") + 8;
+  const text = roomy ? "not measured" : last ? "measured to here" : "measured from here";
+  const rightward = roomy === last;
   return h(
     "text",
-    { class: "note", x: edge + (leftward ? -4 : 4), y: box.top - 5, "text-anchor": leftward ? "end" : "start" },
-    inside ? text : arrow,
+    { class: "note", x: edge + (rightward ? 4 : -4), y: box.top - 5, "text-anchor": rightward ? "start" : "end" },
+    text,
   );
 }
 
@@ -206,7 +206,7 @@ function continuousLine(chart: Chart, pane: Pane): Extra {
   });
   return {
     nodes: [h("line", { class: "continuous", x1: box.left, x2: box.right, y1: at, y2: at })],
-    labels: [{ of: "continuous", places }],
+    labels: [{ of: "limit", places }],
     curves: [[[box.left, at], [box.right, at]]],
   };
 }
@@ -222,7 +222,7 @@ function peakMark(chart: Chart, pane: Pane, peak: string | undefined): Extra {
   const [x, y] = [pane.x.at(highest[0]), pane.y.at(highest[1])];
   return {
     nodes: [h("path", { class: "peak", d: `M${x - 6} ${y}H${x + 6}M${x} ${y - 5}V${y + 5}` })],
-    labels: [{ of: "peak", places: aroundPoint(`most ${peak}`, x, y) }],
+    labels: [{ of: "most", places: aroundPoint(`most ${peak}`, x, y) }],
     curves: [],
   };
 }
@@ -279,17 +279,17 @@ function names(pane: Pane, index: number, extra: Extra): Node[] {
   if (index === 0) {
     const many = pane.marks.length;
     pane.marks.slice(0, 9).forEach((mark, at) =>
-      wanted.push({ of: "name", places: aroundPoint(pointName(mark.point, at + 1, many), mark.x, mark.y) }),
+      wanted.push({ of: "meeting", places: aroundPoint(pointName(mark.point, at + 1, many), mark.x, mark.y) }),
     );
   }
   wanted.push(...extra.labels);
-  wanted.push(...pane.lines.map((line) => ({ of: `name ${line.of}`, places: besideCurve(line.name, line.way, room) })));
+  wanted.push(...pane.lines.map((line) => ({ of: `of-${line.of}`, places: besideCurve(line.name, line.way, room) })));
   const out: Node[] = [];
   for (const { of, places } of wanted) {
     const found = best(places, around);
     if (found !== undefined) {
       boxes.push(found.box);
-      out.push(h("text", { class: of.includes("name") ? of : `name ${of}`, x: found.x, y: found.y, "text-anchor": found.anchor }, found.text));
+      out.push(h("text", { class: `name ${of}`, x: found.x, y: found.y, "text-anchor": found.anchor }, found.text));
     }
   }
   return out;

@@ -128,7 +128,7 @@ export function criteriaTable(results: Results): Element | undefined {
       worst(criterion),
     ];
   });
-  const head = ["criterion", "required", "found", "margin", "here", "over all cases"];
+  const head = ["criterion", "required", "found", "margin", "in this case", "over all cases"];
   return table("Criteria", "criteria", head, rows, "criteria");
 }
 
