@@ -63,6 +63,17 @@ specs_are_read() {
     echo "$(wc -l <"$work/specs.txt") specs read without an error"
 }
 
+# The queries of editors that keep their own. One that names what the grammar has not is refused.
+queries_fit() {
+    local query count=0
+    for query in "$here"/tree-sitter/queries/*.scm "$root"/editors/*/queries/shaft/*.scm \
+        "$root"/editors/*/languages/shaft/*.scm; do
+        tree_sitter query --quiet --config-path "$work/tree-sitter.json" "$query" "$root/tests/specs/mill-hoist.shaft"
+        count=$((count + 1))
+    done
+    echo "$count queries fit the grammar"
+}
+
 case "${1:-all}" in
     bless)
         install_tree_sitter
@@ -80,6 +91,7 @@ case "${1:-all}" in
         generated_is_committed
         tree_sitter test --config-path "$work/tree-sitter.json"
         specs_are_read
+        queries_fit
         ;;
     *)
         sed -n '4,5s/^# //p' "$0" >&2

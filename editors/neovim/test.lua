@@ -12,6 +12,35 @@ dofile(config)
 vim.cmd.edit(spec)
 local buf = vim.api.nvim_get_current_buf()
 check("file type", vim.bo[buf].filetype == "shaft", vim.bo[buf].filetype)
+
+-- The tree: the whole spec is read, every query fits the grammar, words have their colours.
+local parser = vim.treesitter.get_parser(buf, "shaft", { error = false })
+check("tree-sitter parser", parser ~= nil)
+if parser then
+  local tree = parser:parse()[1]
+  check("the whole spec is read", not tree:root():has_error(), tree:root():type())
+  for _, name in ipairs({ "highlights", "folds", "indents", "locals" }) do
+    local fits, query = pcall(vim.treesitter.query.get, "shaft", name)
+    check("query " .. name, fits and query ~= nil, not fits and query or nil)
+  end
+  local function captured(word, ahead)
+    local pos = vim.fn.searchpos(word, "cw")
+    local names = {}
+    for _, capture in ipairs(vim.treesitter.get_captures_at_pos(buf, pos[1] - 1, pos[2] - 1 + (ahead or 0))) do
+      names[#names + 1] = capture.capture
+    end
+    return names[#names]
+  end
+  check("colour of a kind", captured("induction_motor") == "type", captured("induction_motor"))
+  check("colour of a unit", captured("60 kg", 3) == "type.builtin", captured("60 kg", 3))
+  check("colour of a field", captured("breakdown_torque") == "property", captured("breakdown_torque"))
+  vim.wo[0][0].foldmethod = "expr"
+  vim.cmd("normal! zx")
+  local inside = vim.fn.search("rated_voltage", "nw")
+  check("a block folds", vim.fn.foldlevel(inside) == 1, vim.fn.foldlevel(inside))
+  vim.wo[0][0].foldmethod = "manual"
+end
+
 local client
 vim.wait(20000, function()
   client = vim.lsp.get_clients({ bufnr = buf, name = "layshaft" })[1]

@@ -1,146 +1,87 @@
-//! Where the lists of words stand in the grammars and in the files of editors: each between two texts of its file.
+//! Where the lists of words stand in the grammars and in the files of editors: each between two texts of its file, as
+//! `lists.toml` has it.
 //!
 //! `LAYSHAFT_BLESS=1 cargo test -p layshaft-tests --test tidy word_lists` writes them anew.
 
-use crate::lists::{Form, KNOWN_VALUES, Words};
+use toml::{Table, Value};
+
+use crate::lists::{Form, KNOWN_VALUES, written};
 use crate::tree::{Tree, root};
 use crate::{none, one};
 
 /// One list of one file.
-struct Spot {
-    file: &'static str,
-    before: &'static str,
-    after: &'static str,
-    words: Words,
+#[derive(Clone, Debug)]
+struct Place {
+    file: String,
+    words: String,
     form: Form,
+    before: String,
+    after: String,
 }
 
-/// Alternatives of a regular expression of most editors.
-const REGEX: Form = Form::Regex("(?:", "|", ")");
-
-const fn spot(
-    file: &'static str,
-    words: Words,
-    form: Form,
-    before: &'static str,
-    after: &'static str,
-) -> Spot {
-    Spot { file, before, after, words, form }
+/// The places of the table, file by file.
+fn places(text: &str) -> Result<Vec<Place>, String> {
+    let table: Table = text.parse().map_err(|error| format!("lists.toml: {error}"))?;
+    let mut out = Vec::new();
+    for file in table.get("file").and_then(Value::as_array).into_iter().flatten() {
+        let path = text_of(file, "path")?;
+        for list in file.get("list").and_then(Value::as_array).into_iter().flatten() {
+            out.push(Place {
+                form: form(list.get("form").or(file.get("form")))?,
+                words: text_of(list, "words")?,
+                before: text_of(list, "before")?,
+                after: text_of(list, "after")?,
+                file: path.clone(),
+            });
+        }
+    }
+    Ok(out)
 }
 
-const TEXTMATE: &str = "grammar/layshaft.tmLanguage.json";
+fn text_of(value: &Value, key: &str) -> Result<String, String> {
+    let text = value.get(key).and_then(Value::as_str);
+    text.map(String::from).ok_or_else(|| format!("lists.toml: an entry has no `{key}`: {value}"))
+}
 
-const GRAMMAR: &str = "grammar/tree-sitter/grammar.js";
-const SCANNER: &str = "grammar/tree-sitter/src/scanner.c";
-const HIGHLIGHTS: &str = "grammar/tree-sitter/queries/highlights.scm";
-/// Strings of C, parted by commas.
-const C_WORDS: Form = Form::Lines("\"", ",", "    ");
-/// Strings of a tree-sitter query.
-const QUERY: Form = Form::Lines("\"", "", "    ");
-
-static SPOTS: &[Spot] = &[
-    spot(
-        TEXTMATE,
-        Words::DeclaringPlainly,
-        REGEX,
-        "\"title, use and the like\",\n          \"match\": \"^\\\\s*(",
-        r")\\b",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Kinds,
-        REGEX,
-        r"|load)[ \\t]+([\\p{L}_][\\p{L}\\p{M}\\p{Nd}_]*)(?:[ \\t]*(:)(?:[ \\t]*(?:\\b(",
-        r")\\b|",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Quantities,
-        REGEX,
-        r"(let)[ \\t]+([\\p{L}_][\\p{L}\\p{M}\\p{Nd}_]*)(?:[ \\t]*(:)(?:[ \\t]*(?:\\b(",
-        r")\\b|",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Logic,
-        REGEX,
-        "\"keyword.operator.word.shaft\",\n          \"match\": \"(?<![\\\\p{L}\\\\p{Nd}_.])(?:",
-        ")(?!",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Constants,
-        REGEX,
-        "\"constant.language.shaft\",\n          \"match\": \"(?<![\\\\p{L}\\\\p{Nd}_.])(?:",
-        ")(?!",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Clauses,
-        REGEX,
-        "\"keyword.control.shaft\",\n          \"match\": \"(?<![\\\\p{L}\\\\p{Nd}_.])(?:",
-        ")(?!",
-    ),
-    spot(
-        TEXTMATE,
-        Words::KnownValues,
-        REGEX,
-        "\"support.constant.shaft\",\n          \"match\": \"(?<![\\\\p{L}\\\\p{Nd}_.])(?:",
-        ")(?!",
-    ),
-    spot(
-        TEXTMATE,
-        Words::Functions,
-        REGEX,
-        "\"support.function.shaft\",\n      \"match\": \"(?<![\\\\p{L}\\\\p{Nd}_.])(?:",
-        ")(?=",
-    ),
-    spot(TEXTMATE, Words::Reserved, REGEX, r"1/)?(?!(?:", r")(?![\\p{L}"),
-    spot(
-        TEXTMATE,
-        Words::Units,
-        REGEX,
-        "\"keyword.other.unit.shaft\",\n          \"match\": \"(?<![\\\\p{L}_])(?:",
-        ")(?!",
-    ),
-    spot(GRAMMAR, Words::Reserved, Form::Lines("\"", ",", "      "), "global: (_) => [", ",\n    ],"),
-    spot(SCANNER, Words::Reserved, C_WORDS, "RESERVED[] = {", ", NULL,"),
-    spot(SCANNER, Words::Closing, C_WORDS, "DECLARING[] = {", ", NULL,"),
-    spot(SCANNER, Words::OddUnits, C_WORDS, "ODD_UNITS[] = {", ", NULL,"),
-    spot(HIGHLIGHTS, Words::Kinds, QUERY, "(kind) @type\n  (#any-of? @type", "))"),
-    spot(HIGHLIGHTS, Words::Quantities, QUERY, "(quantity_kind) @type\n  (#any-of? @type", "))"),
-    spot(HIGHLIGHTS, Words::Functions, QUERY, "(#any-of? @function.builtin", "))"),
-    spot(HIGHLIGHTS, Words::KnownValues, QUERY, "(#any-of? @constant.builtin", "))"),
-];
+fn form(value: Option<&Value>) -> Result<Form, String> {
+    let texts: Vec<&str> =
+        value.and_then(Value::as_array).into_iter().flatten().filter_map(Value::as_str).collect();
+    match texts[..] {
+        ["regex", a, b, c] => Ok(Form::Regex([a, b, c].map(String::from))),
+        ["lines", a, b, c] => Ok(Form::Lines([a, b, c].map(String::from))),
+        _ => Err(format!("lists.toml: no form {texts:?}")),
+    }
+}
 
 /// Where a list begins and ends in its file.
-fn place(text: &str, spot: &Spot) -> Option<(usize, usize)> {
-    let start = text.find(spot.before)? + spot.before.len();
-    let end = start + text[start..].find(spot.after)?;
+fn span(text: &str, place: &Place) -> Option<(usize, usize)> {
+    let start = text.find(&place.before)? + place.before.len();
+    let end = start + text[start..].find(&place.after)?;
     Some((start, end))
 }
 
-fn complaints(tree: &Tree, spots: &[Spot]) -> Vec<String> {
-    spots.iter().filter_map(|spot| complaint(tree, spot)).collect()
+fn complaint(tree: &Tree, place: &Place) -> Option<String> {
+    let Place { file, words, before, .. } = place;
+    let Some(text) = tree.text(file) else { return Some(format!("{file} is not there")) };
+    let Some(wanted) = written(words, &place.form) else { return Some(format!("no list is called {words}")) };
+    let Some((start, end)) = span(text, place) else {
+        return Some(format!("{file} has no list of {words} behind `{before}`"));
+    };
+    let wrong = text[start..end] != wanted;
+    wrong.then(|| format!("{file}: the list of {words} differs from the code; LAYSHAFT_BLESS=1 writes it"))
 }
 
-fn complaint(tree: &Tree, spot: &Spot) -> Option<String> {
-    let (file, words) = (spot.file, spot.words);
-    let Some(text) = tree.text(file) else { return Some(format!("{file} is not there")) };
-    let Some((start, end)) = place(text, spot) else {
-        return Some(format!("{file} has no list of {words:?} behind `{}`", spot.before));
-    };
-    let wrong = text[start..end] != words.written(spot.form);
-    wrong.then(|| format!("{file}: the list of {words:?} differs from the code; LAYSHAFT_BLESS=1 writes it"))
+fn complaints(tree: &Tree, places: &[Place]) -> Vec<String> {
+    places.iter().filter_map(|place| complaint(tree, place)).collect()
 }
 
 /// Writes the lists of all files anew.
-fn bless(spots: &[Spot]) {
-    for spot in spots {
-        let path = root().join(spot.file);
+fn bless(places: &[Place]) {
+    for place in places {
+        let path = root().join(&place.file);
         let Ok(mut text) = std::fs::read_to_string(&path) else { continue };
-        if let Some((start, end)) = place(&text, spot) {
-            text.replace_range(start..end, &spot.words.written(spot.form));
+        if let (Some((start, end)), Some(words)) = (span(&text, place), written(&place.words, &place.form)) {
+            text.replace_range(start..end, &words);
             std::fs::write(&path, text).expect("a file of the repository can be written");
         }
     }
@@ -148,21 +89,37 @@ fn bless(spots: &[Spot]) {
 
 #[test]
 fn word_lists_are_those_of_the_code() {
+    let places = places(include_str!("lists.toml")).expect("the table can be read");
+    assert!(places.len() > 40, "only {} lists", places.len());
     if std::env::var("LAYSHAFT_BLESS").is_ok_and(|value| value == "1") {
-        bless(SPOTS);
+        bless(&places);
     }
-    none(&complaints(&Tree::of_the_repository(), SPOTS));
+    none(&complaints(&Tree::of_the_repository(), &places));
 }
 
 #[test]
 fn a_list_that_differs_is_seen() {
-    let form = Form::Lines("", "", "  \\ ");
-    let spots = [spot("a.vim", Words::Logic, form, "keyword logic", "\n\n")];
+    let table = r#"
+        [[file]]
+        path = "a.vim"
+        form = ["lines", "", "", "  \\ "]
+        list = [{ words = "logic", before = "keyword logic", after = "\n\n" }]
+    "#;
+    let places = |table: &str| places(table).expect("the table can be read");
     let good = "keyword logic\n  \\ and or not if then else\n\n";
-    none(&complaints(&Tree::sample(&[("a.vim", good)]), &spots));
-    one(&complaints(&Tree::sample(&[("a.vim", &good.replace(" or", ""))]), &spots), "list of Logic differs");
-    one(&complaints(&Tree::sample(&[("a.vim", "keyword words\n")]), &spots), "no list of Logic");
-    one(&complaints(&Tree::sample(&[]), &spots), "a.vim is not there");
+    let seen = |text: &str| complaints(&Tree::sample(&[("a.vim", text)]), &places(table));
+    none(&seen(good));
+    one(&seen(&good.replace(" or", "")), "list of logic differs");
+    one(&seen("keyword words\n"), "no list of logic");
+    one(&complaints(&Tree::sample(&[]), &places(table)), "a.vim is not there");
+    let odd = table.replace("\"logic\"", "\"magic\"");
+    one(&complaints(&Tree::sample(&[("a.vim", good)]), &places(&odd)), "no list is called magic");
+}
+
+#[test]
+fn a_table_that_cannot_be_read_is_seen() {
+    assert!(places("[[file]]\nlist = []").is_err());
+    assert!(places("[[file]]\npath = \"a\"\nlist = [{ words = \"logic\" }]").is_err());
 }
 
 #[test]

@@ -17,90 +17,57 @@ pub const KNOWN_VALUES: &[&str] = &["pi", "standard_gravity"];
 const WITH_A_NAME: &[&str] =
     &["let", "supply", "source", "transmission", "load", "drive", "case", "show", "allow"];
 
-/// What a list holds.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Words {
-    /// Words that declare, without those that name something.
-    DeclaringPlainly,
-    /// Words that declare and end whatever is open before them.
-    Closing,
-    /// Every reserved word.
-    Reserved,
-    /// Reserved words that join conditions.
-    Logic,
-    /// Reserved words that stand for a value.
-    Constants,
-    /// The other reserved words.
-    Clauses,
-    /// Functions of expressions.
-    Functions,
-    /// Values every spec knows.
-    KnownValues,
-    /// Kinds of parts.
-    Kinds,
-    /// Kinds of quantities.
-    Quantities,
-    /// Unit symbols with their prefixes.
-    Units,
-    /// Unit symbols of more than letters.
-    OddUnits,
-}
-
-/// How a list is written.
-#[derive(Clone, Copy, Debug)]
+/// How a list is written, with the marks it needs.
+#[derive(Clone, Debug)]
 pub enum Form {
     /// Alternatives of a regular expression: group, bar, end of group.
-    Regex(&'static str, &'static str, &'static str),
+    Regex([String; 3]),
     /// Words between marks, with this behind each but the last, in lines that begin with this.
-    Lines(&'static str, &'static str, &'static str),
+    Lines([String; 3]),
 }
 
 /// Columns a written line has at most.
 const WIDTH: usize = 110;
 
-impl Words {
-    /// The words, in the order of the code.
-    pub fn list(self) -> Vec<&'static str> {
-        let reserved = || RESERVED.iter().map(|row| row.word);
-        // The lexer knows some words ahead of the grammar.
-        let declaring = || {
-            let now = DECLARATION_WORDS
-                .iter()
-                .filter(|row| !row.meaning.contains("a later version of the language"));
-            now.map(|row| row.word)
-        };
-        match self {
-            Words::DeclaringPlainly => declaring().filter(|word| !WITH_A_NAME.contains(word)).collect(),
-            Words::Closing => declaring().filter(|word| *word != "allow").collect(),
-            Words::Reserved => reserved().collect(),
-            Words::Logic => reserved().filter(|word| LOGIC.contains(word)).collect(),
-            Words::Constants => reserved().filter(|word| CONSTANTS.contains(word)).collect(),
-            Words::Clauses => {
-                reserved().filter(|word| !LOGIC.contains(word) && !CONSTANTS.contains(word)).collect()
-            }
-            Words::Functions => Function::names().collect(),
-            Words::KnownValues => KNOWN_VALUES.to_vec(),
-            Words::Kinds => {
-                let mut seen = BTreeSet::new();
-                registry::rows().iter().map(|row| row.name).filter(|name| seen.insert(*name)).collect()
-            }
-            Words::Quantities => KINDS.iter().map(|kind| kind.name).collect(),
-            Words::Units => Vec::new(),
-            Words::OddUnits => {
-                let odd = |symbol: &&str| symbol.contains(|c: char| c == '_' || c.is_ascii_digit());
-                let symbols = unit_rows().iter().flat_map(|row| std::iter::once(&row.symbol).chain(row.also));
-                symbols.copied().filter(odd).collect()
-            }
-        }
-    }
+/// The words of a list of this name, in the order of the code.
+pub fn words(name: &str) -> Option<Vec<&'static str>> {
+    let reserved = |wanted: fn(&&str) -> bool| RESERVED.iter().map(|row| row.word).filter(wanted).collect();
+    // The lexer knows some words ahead of the grammar.
+    let later = "a later version of the language";
+    let now = || DECLARATION_WORDS.iter().filter(|row| !row.meaning.contains(later)).map(|row| row.word);
+    let mut seen = BTreeSet::new();
+    Some(match name {
+        "declaring" => now().collect(),
+        // Without those that name something.
+        "declaring plainly" => now().filter(|word| !WITH_A_NAME.contains(word)).collect(),
+        // Those that end whatever is open before them.
+        "closing" => now().filter(|word| *word != "allow").collect(),
+        "reserved" => reserved(|_| true),
+        "logic" => reserved(|word| LOGIC.contains(word)),
+        "constants" => reserved(|word| CONSTANTS.contains(word)),
+        "clauses" => reserved(|word| !LOGIC.contains(word) && !CONSTANTS.contains(word)),
+        "functions" => Function::names().collect(),
+        "known values" => KNOWN_VALUES.to_vec(),
+        "kinds" => registry::rows().iter().map(|row| row.name).filter(|name| seen.insert(*name)).collect(),
+        "quantities" => KINDS.iter().map(|kind| kind.name).collect(),
+        "odd units" => odd_units(),
+        _ => return None,
+    })
+}
 
-    /// As it stands in a file.
-    pub fn written(self, form: Form) -> String {
-        match (self, form) {
-            (Words::Units, Form::Regex(open, bar, close)) => units(open, bar, close),
-            (_, Form::Regex(_, bar, _)) => self.list().join(bar),
-            (_, Form::Lines(mark, between, start)) => lines(&self.list(), mark, between, start),
-        }
+/// Unit symbols of more than letters.
+fn odd_units() -> Vec<&'static str> {
+    let odd = |symbol: &&str| symbol.contains(|c: char| c == '_' || c.is_ascii_digit());
+    let symbols = unit_rows().iter().flat_map(|row| std::iter::once(&row.symbol).chain(row.also));
+    symbols.copied().filter(odd).collect()
+}
+
+/// A list as it stands in a file.
+pub fn written(name: &str, form: &Form) -> Option<String> {
+    match form {
+        Form::Regex([open, bar, close]) if name == "units" => Some(units(open, bar, close)),
+        Form::Regex([_, bar, _]) => Some(words(name)?.join(bar)),
+        Form::Lines([mark, between, start]) => Some(lines(&words(name)?, mark, between, start)),
     }
 }
 
@@ -135,7 +102,9 @@ fn units(open: &str, bar: &str, close: &str) -> String {
                 .to_vec(),
             Prefixes::Only(list) => list.iter().flat_map(|prefix| spellings(prefix)).collect(),
         };
-        let symbols = std::iter::once(row.symbol).chain(row.also.iter().copied());
+        // A sign of its own in some regular expressions.
+        let written = |symbol: &'static str| if symbol == "%" { "[%]" } else { symbol };
+        let symbols = std::iter::once(row.symbol).chain(row.also.iter().copied()).map(written);
         groups.entry(prefixes).or_default().extend(symbols);
     }
     let group = |words: &[&str]| format!("{open}{}{close}", words.join(bar));

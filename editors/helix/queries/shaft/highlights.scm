@@ -1,0 +1,79 @@
+; Colours, in the scopes that Helix themes know. The lists of names are written by the tests of the repository.
+; Later patterns go before earlier ones.
+
+(comment) @comment.line
+(documentation) @comment.block.documentation
+(string) @string
+(escape) @constant.character.escape
+
+[
+  "language" "title" "revision" "let" "drive" "case" "require" "show" "allow"
+] @keyword
+"use" @keyword.control.import
+(role) @keyword
+
+[
+  "as" "at" "with" "within" "only" "in" "where" "because" "from" "measured" "assumed" "confidence" "probability"
+  "points" "csv" "each" "drives" "of" "value" "teeth"
+] @keyword
+(ratio_word) @keyword
+(duty_type) @constant
+
+[ "and" "or" "not" ] @keyword.operator
+[ "if" "then" "else" ] @keyword.control.conditional
+
+(flag) @constant.builtin.boolean
+[ (absent) (rated) ] @constant.builtin
+
+(name) @variable
+(heading) @string.special
+(code) @constant
+
+(let name: (name) @constant)
+(drive name: (name) @namespace)
+(case name: (name) @label)
+(case of: (name) @label)
+(case_name name: (name) @label)
+(column name: (name) @variable.other.member)
+
+(path (name) (name) @variable.other.member)
+(entry field: (path (name) @variable.other.member .))
+(entry gear: (_) @variable.other.member)
+
+((kind) @type
+  (#any-of? @type
+    "mains" "battery" "dc_bus" "straight_line" "straight_line_force" "dc_motor" "induction_motor" "servo"
+    "person" "measured_curve" "gear" "gearbox" "belt" "chain" "drum" "reeving" "wheel" "brake" "freewheel"
+    "coupling" "constant" "viscous" "quadratic" "polynomial" "hoist" "incline" "vehicle" "flywheel"))
+((quantity_kind) @type
+  (#any-of? @type
+    "number" "percentage" "count" "grade" "angle" "slope" "length" "area" "volume" "lead" "displacement"
+    "time" "frequency" "rate" "rotational_speed" "angular_acceleration" "speed" "acceleration" "mass"
+    "mass_per_length" "mass_per_area" "density" "force" "torque" "energy" "power" "mechanical_power"
+    "electrical_power" "heat" "moment_of_inertia" "flywheel_effect" "torsional_stiffness" "angular_momentum"
+    "viscous_torque_coefficient" "quadratic_torque_coefficient" "cubic_power_coefficient" "stiffness"
+    "viscous_force_coefficient" "quadratic_force_coefficient" "cubic_force_coefficient" "momentum" "voltage"
+    "current" "resistance" "inductance" "capacitance" "charge" "torque_constant" "voltage_constant"
+    "speed_constant" "force_constant" "speed_regulation" "pressure" "gauge_pressure" "absolute_pressure"
+    "flow" "mass_flow" "dynamic_viscosity" "kinematic_viscosity" "temperature" "temperature_difference"
+    "temperature_coefficient" "thermal_resistance" "thermal_conductance" "heat_transfer_coefficient"
+    "heat_capacity" "specific_heat_capacity" "specific_energy" "specific_consumption" "specific_power"
+    "power_per_area"))
+
+(call function: (name) @function)
+((call function: (name) @function.builtin)
+  (#any-of? @function.builtin
+    "sin" "cos" "tan" "asin" "acos" "atan" "atan2" "sqrt" "cbrt" "exp" "ln" "log10" "abs" "min" "max" "floor"
+    "ceil" "round"))
+((path . (name) @constant.builtin .)
+  (#any-of? @constant.builtin
+    "pi" "standard_gravity"))
+
+[ (number) (negative) (superscript) ] @constant.numeric
+(unit) @type.builtin
+
+[
+  "->" "+" "-" "−" "–" "*" "×" "·" "/" "÷" "^" "±" "+/-" ".." "=" "==" "!=" "≠" "<" "<=" "≤" ">" ">=" "≥"
+] @operator
+[ "(" ")" "[" "]" "{" "}" ] @punctuation.bracket
+[ "," ";" ":" "." ] @punctuation.delimiter

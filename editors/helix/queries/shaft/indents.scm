@@ -1,0 +1,14 @@
+[
+  (block)
+  (rows)
+  (parenthesized)
+  (call)
+  (group)
+  (head)
+  (chain)
+] @indent
+
+[
+  "}"
+  ")"
+] @outdent

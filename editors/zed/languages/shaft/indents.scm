@@ -1,0 +1,4 @@
+(block "}" @end) @indent
+(rows "}" @end) @indent
+(parenthesized ")" @end) @indent
+(call ")" @end) @indent
