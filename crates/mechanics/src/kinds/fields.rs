@@ -103,6 +103,24 @@ pub(crate) const EFFICIENCY_BACKWARD: Field = quantity(
     "power out over power in while the load drives",
 );
 
+/// Efficiency of a sliding thread, which may be given by its friction instead.
+pub(crate) const FRICTION_EFFICIENCY: Field = Field {
+    need: Need::OneOf,
+    plausible: range(0.1, 0.98),
+    meaning: "power out over power in while the source drives; or give the friction",
+    ..EFFICIENCY
+};
+
+/// The way back through a sliding thread, which may be no way at all.
+pub(crate) const BACKWARD_OR_LOCKED: Field = quantity(
+    "efficiency_backward",
+    "percentage",
+    Need::Where("a load that drives, lowering, stopping; friction and lead angle give it too"),
+    range(-20.0, 1.0),
+    range(-5.0, 0.95),
+    "power out over power in while the load drives; 0 or below where the thread locks itself and must be turned down",
+);
+
 /// Highest torque at the output.
 pub(crate) const MAX_OUTPUT_TORQUE: Field = positive(
     "max_output_torque",

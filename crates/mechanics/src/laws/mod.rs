@@ -16,14 +16,17 @@ pub mod induction_curve;
 pub mod inertia;
 pub mod kloss;
 pub mod person_power;
+pub mod planetary;
 pub mod road;
 pub mod rope;
+pub mod screw;
 pub mod servo_envelope;
 pub mod straight_line;
 pub mod synchronous;
 pub mod table;
 pub mod wheel;
 pub mod winding;
+pub mod worm;
 
 #[cfg(test)]
 pub(crate) mod testing;
@@ -57,14 +60,17 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         inertia::CHECKED,
         kloss::CHECKED,
         person_power::CHECKED,
+        planetary::CHECKED,
         road::CHECKED,
         rope::CHECKED,
+        screw::CHECKED,
         servo_envelope::CHECKED,
         straight_line::CHECKED,
         synchronous::CHECKED,
         table::CHECKED,
         wheel::CHECKED,
         winding::CHECKED,
+        worm::CHECKED,
     ];
     laws.iter().copied().flatten()
 }

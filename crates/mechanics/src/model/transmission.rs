@@ -4,6 +4,7 @@ use std::fmt::Debug;
 
 use super::{Known, Motion};
 use crate::curve::Curve;
+use crate::drive::Direction;
 use crate::solution::Answer;
 
 /// How a transmission couples its two ports, in one gear.
@@ -143,6 +144,21 @@ pub trait Transmission: Debug + Send + Sync {
 
     /// Its hold on the ground, for wheels.
     fn grip(&self) -> Option<Grip> {
+        None
+    }
+
+    /// Most effort that friction passes to its output where it stands so; `None` where it cannot slip.
+    fn slip_limit(&self, _state: &TransmissionState) -> Option<f64> {
+        None
+    }
+
+    /// Whether it passes nothing in this gear: neutral, or a clutch that is out.
+    fn open(&self, _gear: usize) -> bool {
+        false
+    }
+
+    /// The gear it takes by the direction the drive is asked for, for a reversing gear; `None` for all others.
+    fn gear_towards(&self, _direction: Direction) -> Option<usize> {
         None
     }
 

@@ -161,6 +161,9 @@ fn what_can_hurt_says_so() {
         "incline",
         "flywheel",
         "freewheel",
+        "worm",
+        "screw",
+        "planetary",
         "person",
     ] {
         let row = ROWS.iter().find(|row| row.name == name);

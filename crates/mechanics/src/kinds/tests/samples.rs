@@ -47,6 +47,20 @@ fn transmission(name: &str) -> Option<Values> {
     Some(match name {
         "gear" => losses(si(&[("reduction", 2.5)])),
         "gearbox" => losses(Values::default()).with("gear", FieldValue::Gears(vec![("1".to_owned(), 2.5)])),
+        "planetary" => losses(si(&[("sun_teeth", 16.0), ("ring_teeth", 64.0)]))
+            .with("input", FieldValue::Word("sun"))
+            .with("output", FieldValue::Word("carrier"))
+            .with("fixed", FieldValue::Word("ring")),
+        "worm" => si(&[("friction_coefficient", 0.04), ("diameter_factor", 8.0), ("pressure_angle", 0.35)])
+            .with("teeth", FieldValue::Ratio { driver: 3.0, driven: 50.0 }),
+        "screw" => si(&[
+            ("lead", 0.01),
+            ("mean_diameter", 0.03),
+            ("friction_coefficient", 0.1),
+            ("thread_angle", 0.5236),
+            ("collar_friction_coefficient", 0.05),
+            ("collar_diameter", 0.04),
+        ]),
         "belt" => losses(si(&[("slip", 0.02)])).with("pitch_diameters", pulleys),
         "chain" => losses(Values::default()).with("teeth", teeth),
         "drum" => losses(si(&[("pitch_diameter", 0.3), ("rope_diameter", 0.01), ("layers", 2.0)])),

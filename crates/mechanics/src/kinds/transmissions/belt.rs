@@ -1,14 +1,14 @@
 //! A belt drive, with or without teeth.
 
-use super::gear::{LIMITS, RESULTS, TEETH, ratio, symbols};
+use super::gear::{RESULTS, TEETH, fixed_ratio, ratio};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, MAX_INPUT_TORQUE, MAX_POWER, SMALL_INERTIA, plain,
     quantity, range,
 };
-use crate::kinds::reading::{contradiction, done, limits, missing, only_one};
+use crate::kinds::reading::{contradiction, done, missing, only_one};
 use crate::laws::{belt as law, gear};
-use crate::model::{Coupling, Known, Limit, Model, Transmission, TransmissionState};
+use crate::model::{Known, Model};
 use crate::registry::{Bounds, Field, KindRow, Need, Role, Shape};
 use crate::values::Values;
 
@@ -61,14 +61,6 @@ fn diameter_ratio(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     ratio(values, way, faults)
 }
 
-#[derive(Debug)]
-struct Belt {
-    coupling: Coupling,
-    slip: f64,
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let Some(ratio) = diameter_ratio(values, &mut faults) else { return Err(faults) };
@@ -84,45 +76,15 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         }
         (_, slip) => slip.unwrap_or(0.0),
     };
-    let kept = law::slip_factor(slip);
-    let backward = match values.si("efficiency_backward") {
+    let mut belt = fixed_ratio(values, ratio);
+    belt.coupling.speed = law::speed_ratio(ratio, slip);
+    if let Known::Value(backward) = &mut belt.coupling.backward {
         // Slip loses power in both directions: the coupling's speed ratio takes it forward, so it counts twice here.
-        Some(backward) => Known::Value(backward * kept * kept),
-        None => Known::Missing("efficiency_backward"),
-    };
-    let belt = Belt {
-        coupling: Coupling {
-            speed: law::speed_ratio(ratio, slip),
-            effort: ratio,
-            reverses: false,
-            forward: values.si("efficiency").unwrap_or(1.0),
-            backward,
-        },
-        slip,
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(values, LIMITS),
-    };
-    done(Model::Transmission(Box::new(belt)), faults)
-}
-
-impl Transmission for Belt {
-    fn coupling(&self, _gear: usize) -> Coupling {
-        self.coupling
+        let kept = law::slip_factor(slip);
+        *backward *= kept * kept;
     }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn symbols(&self, state: &TransmissionState) -> Vec<(&'static str, f64)> {
-        let mut out = symbols(&self.coupling, state);
-        out.push(("s", self.slip));
-        out
-    }
+    belt.constants.push(("s", slip));
+    done(belt.model(), faults)
 }
 
 #[cfg(test)]

@@ -1,10 +1,10 @@
 //! A brake on a shaft.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{MAX_INPUT_SPEED, SMALL_INERTIA, not_negative, positive, range};
-use crate::kinds::reading::limits;
 use crate::laws::brake as law;
-use crate::model::{Brake, Coupling, Known, Limit, LimitOn, Model, Transmission};
+use crate::model::{Brake, Known, LimitOn, Model};
 use crate::registry::{Field, KindRow, Need, ResultRow, ResultShape, Role};
 use crate::values::Values;
 
@@ -47,42 +47,11 @@ static RESULTS: &[ResultRow] = &[ResultRow {
     meaning: "its torque over the static torque of the load at its shaft, losses not counted on",
 }];
 
-#[derive(Debug)]
-struct HoldingBrake {
-    brake: Brake,
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let effort = values.si("torque").unwrap_or(0.0);
-    Ok(Model::Transmission(Box::new(HoldingBrake {
-        brake: Brake { effort, apply_time: Known::of(values.si("apply_time"), "apply_time") },
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(values, &[("max_input_speed", LimitOn::InputSpeed)]),
-    })))
-}
-
-impl Transmission for HoldingBrake {
-    fn coupling(&self, _gear: usize) -> Coupling {
-        Coupling::ideal(1.0)
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn brake(&self) -> Option<Brake> {
-        Some(self.brake)
-    }
-
-    fn symbols(&self, _state: &crate::model::TransmissionState) -> Vec<(&'static str, f64)> {
-        vec![("T_b", self.brake.effort)]
-    }
+    let brake = Brake { effort, apply_time: Known::of(values.si("apply_time"), "apply_time") };
+    let part = Fixed { brake: Some(brake), constants: vec![("T_b", effort)], ..Fixed::shafts(values) };
+    Ok(part.limited(values, &[("max_input_speed", LimitOn::InputSpeed)]).model())
 }
 
 #[cfg(test)]

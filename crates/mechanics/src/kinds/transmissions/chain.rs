@@ -1,6 +1,6 @@
 //! A chain drive.
 
-use super::gear::{FixedRatio, RESULTS, TEETH, ratio};
+use super::gear::{RESULTS, TEETH, fixed_ratio, ratio};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, MAX_INPUT_TORQUE, MAX_POWER, SMALL_INERTIA,
@@ -33,7 +33,7 @@ static FIELDS: &[Field] =
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     match ratio(values, "teeth", &mut faults) {
-        Some(reduction) => Ok(Model::Transmission(Box::new(FixedRatio::read(values, reduction)))),
+        Some(reduction) => Ok(fixed_ratio(values, reduction).model()),
         None if faults.is_empty() => {
             Err(vec![missing(&[&["teeth"]], "the teeth of both sprockets: `42 drives 18`")])
         }

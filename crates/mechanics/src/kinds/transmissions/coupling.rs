@@ -1,9 +1,9 @@
 //! A coupling between two shafts at one speed.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{MAX_INPUT_SPEED, SMALL_INERTIA, positive, range};
-use crate::kinds::reading::limits;
-use crate::model::{Coupling, Known, Limit, LimitOn, Model, Transmission};
+use crate::model::{LimitOn, Model};
 use crate::registry::{Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -34,32 +34,7 @@ static FIELDS: &[Field] = &[
     SMALL_INERTIA,
 ];
 
-#[derive(Debug)]
-struct ShaftCoupling {
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
-    Ok(Model::Transmission(Box::new(ShaftCoupling {
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(
-            values,
-            &[("max_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)],
-        ),
-    })))
-}
-
-impl Transmission for ShaftCoupling {
-    fn coupling(&self, _gear: usize) -> Coupling {
-        Coupling::ideal(1.0)
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
+    let limits = [("max_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)];
+    Ok(Fixed::shafts(values).limited(values, &limits).model())
 }

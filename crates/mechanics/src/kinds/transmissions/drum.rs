@@ -1,12 +1,13 @@
 //! A rope drum.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, SMALL_INERTIA, positive, quantity, range,
 };
-use crate::kinds::reading::{bad_value, contradiction, differ, done, limits, missing};
+use crate::kinds::reading::{bad_value, contradiction, differ, done, missing};
 use crate::laws::rope as law;
-use crate::model::{Coupling, Known, Limit, LimitOn, Model, Motion, Transmission, TransmissionState};
+use crate::model::{LimitOn, Model, Motion};
 use crate::registry::{Field, KindRow, Need, ResultRow, ResultShape, Role};
 use crate::values::Values;
 
@@ -139,67 +140,30 @@ fn geometry(values: &Values, faults: &mut Vec<Fault>) -> Option<Geometry> {
     Some(Geometry { first, rope: rope.unwrap_or(0.0), layer })
 }
 
-#[derive(Debug)]
-struct Drum {
-    geometry: Geometry,
-    coupling: Coupling,
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let Some(geometry) = geometry(values, &mut faults) else { return Err(faults) };
-    let drum = Drum {
-        geometry,
-        coupling: Coupling {
-            forward: values.si("efficiency").unwrap_or(1.0),
-            backward: Known::of(values.si("efficiency_backward"), "efficiency_backward"),
-            ..Coupling::ideal(law::drum_ratio(geometry.diameter()))
+    let drum = Fixed {
+        ports: (Motion::Rotary, Motion::Linear),
+        constants: vec![
+            ("D_1", geometry.first),
+            ("D", geometry.diameter()),
+            ("d", geometry.rope),
+            ("n", geometry.layer),
+        ],
+        symbols: |coupling, state| {
+            vec![("w", state.input_speed), ("T", state.input_effort), ("eta", coupling.forward)]
         },
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(
-            values,
-            &[("max_rope_pull", LimitOn::OutputEffort), ("max_input_speed", LimitOn::InputSpeed)],
-        ),
+        ..Fixed::geared(values, law::drum_ratio(geometry.diameter()))
     };
-    done(Model::Transmission(Box::new(drum)), faults)
+    let limits = [("max_rope_pull", LimitOn::OutputEffort), ("max_input_speed", LimitOn::InputSpeed)];
+    done(drum.limited(values, &limits).model(), faults)
 }
 
 fn given(values: &Values) -> Vec<(&'static str, f64)> {
     match geometry(values, &mut Vec::new()) {
         Some(geometry) => vec![("layer_diameter", geometry.diameter())],
         None => Vec::new(),
-    }
-}
-
-impl Transmission for Drum {
-    fn output(&self) -> Motion {
-        Motion::Linear
-    }
-
-    fn coupling(&self, _gear: usize) -> Coupling {
-        self.coupling
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn symbols(&self, state: &TransmissionState) -> Vec<(&'static str, f64)> {
-        vec![
-            ("D_1", self.geometry.first),
-            ("D", self.geometry.diameter()),
-            ("d", self.geometry.rope),
-            ("n", self.geometry.layer),
-            ("w", state.input_speed),
-            ("T", state.input_effort),
-            ("eta", self.coupling.forward),
-        ]
     }
 }
 

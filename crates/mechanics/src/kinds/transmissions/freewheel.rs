@@ -1,9 +1,9 @@
 //! A freewheel: an overrunning clutch.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{MAX_INPUT_SPEED, MAX_INPUT_TORQUE, SMALL_INERTIA};
-use crate::kinds::reading::limits;
-use crate::model::{Coupling, Known, Limit, LimitOn, Model, Transmission};
+use crate::model::{LimitOn, Model};
 use crate::registry::{Field, KindRow, Role};
 use crate::values::Values;
 
@@ -25,36 +25,7 @@ pub static ROW: KindRow = KindRow {
 
 static FIELDS: &[Field] = &[MAX_INPUT_TORQUE, MAX_INPUT_SPEED, SMALL_INERTIA];
 
-#[derive(Debug)]
-struct Freewheel {
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
-    Ok(Model::Transmission(Box::new(Freewheel {
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(
-            values,
-            &[("max_input_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)],
-        ),
-    })))
-}
-
-impl Transmission for Freewheel {
-    fn coupling(&self, _gear: usize) -> Coupling {
-        Coupling::ideal(1.0)
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn one_way(&self) -> bool {
-        true
-    }
+    let limits = [("max_input_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)];
+    Ok(Fixed { one_way: true, ..Fixed::shafts(values).limited(values, &limits) }.model())
 }

@@ -1,13 +1,14 @@
 //! A gear pair or gear train of fixed ratio.
 
+use super::fixed::{Fixed, Symbols};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, MAX_INPUT_TORQUE, MAX_OUTPUT_TORQUE, SMALL_INERTIA,
     plain, positive, range,
 };
-use crate::kinds::reading::{bad_value, limits, only_one};
+use crate::kinds::reading::{bad_value, only_one};
 use crate::laws::gear as law;
-use crate::model::{Coupling, Known, Limit, LimitOn, Model, Transmission, TransmissionState};
+use crate::model::{Coupling, Known, LimitOn, Model, TransmissionState};
 use crate::registry::{Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
 use crate::values::{FieldValue, Values};
 
@@ -72,11 +73,14 @@ pub(super) const TEETH: Field = plain(
 );
 
 /// The ratio that comes out of the ways to say it.
-pub(super) static RESULTS: &[ResultRow] = &[ResultRow {
+pub(super) const REDUCTION_RESULT: ResultRow = ResultRow {
     name: "reduction",
     shape: ResultShape::Quantity("number"),
     meaning: "input speed over output speed",
-}];
+};
+
+/// Results of a part that has no others of its own.
+pub(super) static RESULTS: &[ResultRow] = &[REDUCTION_RESULT];
 
 /// What the limits of a rotary part are about.
 pub(super) const LIMITS: &[(&str, LimitOn)] = &[
@@ -92,6 +96,15 @@ fn reduction(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     match only_one(values, &["reduction", "increase", "teeth"], why, faults)? {
         "reduction" => values.si("reduction"),
         "increase" => values.si("increase").map(|increase| 1.0 / increase),
+        _ => ratio(values, "teeth", faults),
+    }
+}
+
+/// Reduction of a part that has no increase.
+pub(super) fn by_reduction_or_teeth(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
+    let why = "the ratio: input speed over output speed, or the teeth";
+    match only_one(values, &["reduction", "teeth"], why, faults)? {
+        "reduction" => values.si("reduction"),
         _ => ratio(values, "teeth", faults),
     }
 }
@@ -112,57 +125,21 @@ pub(super) fn ratio(values: &Values, field: &'static str, faults: &mut Vec<Fault
     None
 }
 
-/// A part of fixed ratio between two turning shafts.
-#[derive(Debug)]
-pub(super) struct FixedRatio {
-    /// How its ports are coupled.
-    pub coupling: Coupling,
-    /// Inertia at the input.
-    pub inertia: f64,
-    /// Limits.
-    pub limits: Vec<Limit>,
-}
-
-impl FixedRatio {
-    /// With the fields every such part has.
-    pub(super) fn read(values: &Values, reduction: f64) -> Self {
-        let coupling = Coupling {
-            forward: values.si("efficiency").unwrap_or(1.0),
-            backward: Known::of(values.si("efficiency_backward"), "efficiency_backward"),
-            reverses: values.flag("reversing").unwrap_or(false),
-            ..Coupling::ideal(reduction)
-        };
-        let inertia = values.si("inertia").unwrap_or(0.0);
-        Self { coupling, inertia, limits: limits(values, LIMITS) }
-    }
+/// A part of fixed ratio between two turning shafts, with the fields every such part has.
+pub(super) fn fixed_ratio(values: &Values, reduction: f64) -> Fixed {
+    Fixed { symbols, ..Fixed::geared(values, reduction).limited(values, LIMITS) }
 }
 
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let Some(reduction) = reduction(values, &mut faults) else { return Err(faults) };
-    Ok(Model::Transmission(Box::new(FixedRatio::read(values, reduction))))
-}
-
-impl Transmission for FixedRatio {
-    fn coupling(&self, _gear: usize) -> Coupling {
-        self.coupling
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn symbols(&self, state: &TransmissionState) -> Vec<(&'static str, f64)> {
-        symbols(&self.coupling, state)
-    }
+    let mut gear = fixed_ratio(values, reduction);
+    gear.coupling.reverses = values.flag("reversing").unwrap_or(false);
+    Ok(gear.model())
 }
 
 /// The symbols of the gear's formulas.
-pub(super) fn symbols(coupling: &Coupling, state: &TransmissionState) -> Vec<(&'static str, f64)> {
+pub(super) fn symbols(coupling: &Coupling, state: &TransmissionState) -> Symbols {
     let mut out = vec![
         ("i", coupling.effort),
         ("eta", coupling.forward),

@@ -1,10 +1,11 @@
 //! Rope reeved over sheaves.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{EFFICIENCY, EFFICIENCY_BACKWARD, positive, quantity, range};
-use crate::kinds::reading::{bad_value, limits};
+use crate::kinds::reading::bad_value;
 use crate::laws::rope as law;
-use crate::model::{Coupling, Known, Limit, LimitOn, Model, Motion, Transmission, TransmissionState};
+use crate::model::{LimitOn, Model, Motion};
 use crate::registry::{Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -40,12 +41,6 @@ static FIELDS: &[Field] = &[
     positive("max_load", "force", Need::Optional, range(10.0, 1e8), "most force the block may carry"),
 ];
 
-#[derive(Debug)]
-struct Reeving {
-    coupling: Coupling,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let falls = values.si("falls").unwrap_or(1.0);
     if falls != falls.round() {
@@ -55,36 +50,14 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
             &[(falls, "number")],
         )]);
     }
-    Ok(Model::Transmission(Box::new(Reeving {
-        coupling: Coupling {
-            forward: values.si("efficiency").unwrap_or(1.0),
-            backward: Known::of(values.si("efficiency_backward"), "efficiency_backward"),
-            ..Coupling::ideal(falls)
+    let block = Fixed {
+        ports: (Motion::Linear, Motion::Linear),
+        symbols: |coupling, state| {
+            vec![("n", coupling.effort), ("eta", coupling.forward), ("F", state.input_effort)]
         },
-        limits: limits(values, &[("max_load", LimitOn::OutputEffort)]),
-    })))
-}
-
-impl Transmission for Reeving {
-    fn input(&self) -> Motion {
-        Motion::Linear
-    }
-
-    fn output(&self) -> Motion {
-        Motion::Linear
-    }
-
-    fn coupling(&self, _gear: usize) -> Coupling {
-        self.coupling
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn symbols(&self, state: &TransmissionState) -> Vec<(&'static str, f64)> {
-        vec![("n", self.coupling.effort), ("eta", self.coupling.forward), ("F", state.input_effort)]
-    }
+        ..Fixed::geared(values, falls)
+    };
+    Ok(block.limited(values, &[("max_load", LimitOn::OutputEffort)]).model())
 }
 
 #[cfg(test)]

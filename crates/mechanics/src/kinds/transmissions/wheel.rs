@@ -1,10 +1,11 @@
 //! A driven wheel on the ground.
 
+use super::fixed::Fixed;
 use crate::fault::Fault;
 use crate::kinds::fields::{MAX_INPUT_SPEED, MAX_INPUT_TORQUE, SMALL_INERTIA, positive, quantity, range};
-use crate::kinds::reading::{limits, only_one};
+use crate::kinds::reading::only_one;
 use crate::laws::wheel as law;
-use crate::model::{Coupling, Grip, Known, Limit, LimitOn, Model, Motion, Transmission, TransmissionState};
+use crate::model::{Coupling, Grip, Known, LimitOn, Model, Motion};
 use crate::registry::{Bounds, Field, KindRow, Need, ResultRow, ResultShape, Role};
 use crate::values::Values;
 use core::f64::consts::TAU;
@@ -89,53 +90,20 @@ fn radius(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     })
 }
 
-#[derive(Debug)]
-struct Wheel {
-    radius: f64,
-    grip: Option<Grip>,
-    inertia: f64,
-    limits: Vec<Limit>,
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let Some(radius) = radius(values, &mut faults) else { return Err(faults) };
     let share = Known::of(values.si("driven_weight_share"), "driven_weight_share");
-    Ok(Model::Transmission(Box::new(Wheel {
-        radius,
+    let wheel = Fixed {
+        ports: (Motion::Rotary, Motion::Linear),
+        coupling: Coupling::ideal(law::wheel_ratio(radius)),
         grip: values.si("grip").map(|friction| Grip { friction, share }),
-        inertia: values.si("inertia").unwrap_or(0.0),
-        limits: limits(
-            values,
-            &[("max_input_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)],
-        ),
-    })))
-}
-
-impl Transmission for Wheel {
-    fn output(&self) -> Motion {
-        Motion::Linear
-    }
-
-    fn coupling(&self, _gear: usize) -> Coupling {
-        Coupling::ideal(law::wheel_ratio(self.radius))
-    }
-
-    fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
-    }
-
-    fn limits(&self) -> Vec<Limit> {
-        self.limits.clone()
-    }
-
-    fn grip(&self) -> Option<Grip> {
-        self.grip
-    }
-
-    fn symbols(&self, state: &TransmissionState) -> Vec<(&'static str, f64)> {
-        vec![("w", state.input_speed), ("C", self.radius * TAU)]
-    }
+        constants: vec![("C", radius * TAU)],
+        symbols: |_, state| vec![("w", state.input_speed)],
+        ..Fixed::shafts(values)
+    };
+    let limits = [("max_input_torque", LimitOn::InputEffort), ("max_input_speed", LimitOn::InputSpeed)];
+    Ok(wheel.limited(values, &limits).model())
 }
 
 #[cfg(test)]

@@ -1,0 +1,142 @@
+//! The model most transmissions share: two ports coupled by numbers that the fields fix once and for all.
+
+use crate::kinds::reading::limits;
+use crate::model::{
+    Brake, Coupling, Grip, Known, Limit, LimitOn, Model, Motion, Transmission, TransmissionState,
+};
+use crate::solution::{Answer, Marks};
+use crate::values::Values;
+
+/// Symbols of a row's formulas with their values.
+pub(super) type Symbols = Vec<(&'static str, f64)>;
+
+/// A result of a kind's own that follows from where the part stands.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Own {
+    /// Its name in the row.
+    pub name: &'static str,
+    /// Its kind.
+    pub kind: &'static str,
+    /// Its SI value.
+    pub value: fn(&Fixed, &TransmissionState) -> f64,
+}
+
+/// A part of fixed coupling.
+#[derive(Debug)]
+pub(super) struct Fixed {
+    /// How input and output move.
+    pub ports: (Motion, Motion),
+    /// How they are coupled.
+    pub coupling: Coupling,
+    /// Inertia at the input.
+    pub inertia: f64,
+    /// Limits.
+    pub limits: Vec<Limit>,
+    /// Whether it passes only driving effort.
+    pub one_way: bool,
+    /// Its brake.
+    pub brake: Option<Brake>,
+    /// Its hold on the ground.
+    pub grip: Option<Grip>,
+    /// Most effort friction passes to its output.
+    pub slip_limit: Option<fn(&Fixed, &TransmissionState) -> f64>,
+    /// Symbols that stay as they are.
+    pub constants: Symbols,
+    /// Symbols that depend on where it stands.
+    pub symbols: fn(&Coupling, &TransmissionState) -> Symbols,
+    /// Results of its own.
+    pub own: &'static [Own],
+}
+
+impl Fixed {
+    /// Two turning shafts at one speed, nothing lost, with the inertia among `values`.
+    pub(super) fn shafts(values: &Values) -> Self {
+        Self {
+            ports: (Motion::Rotary, Motion::Rotary),
+            coupling: Coupling::ideal(1.0),
+            inertia: values.si("inertia").unwrap_or(0.0),
+            limits: Vec::new(),
+            one_way: false,
+            brake: None,
+            grip: None,
+            slip_limit: None,
+            constants: Vec::new(),
+            symbols: |_, _| Vec::new(),
+            own: &[],
+        }
+    }
+
+    /// A ratio with the efficiencies among `values`, those given as fields of their own.
+    pub(super) fn geared(values: &Values, ratio: f64) -> Self {
+        let coupling = Coupling {
+            forward: values.si("efficiency").unwrap_or(1.0),
+            backward: Known::of(values.si("efficiency_backward"), "efficiency_backward"),
+            ..Coupling::ideal(ratio)
+        };
+        Self { coupling, ..Self::shafts(values) }
+    }
+
+    /// The same with the limits that are given.
+    pub(super) fn limited(self, values: &Values, fields: &[(&'static str, LimitOn)]) -> Self {
+        Self { limits: limits(values, fields), ..self }
+    }
+
+    /// A symbol that stays as it is; 0 without it.
+    pub(super) fn constant(&self, name: &str) -> f64 {
+        self.constants.iter().find(|(symbol, _)| *symbol == name).map_or(0.0, |(_, si)| *si)
+    }
+
+    /// As a model.
+    pub(super) fn model(self) -> Model {
+        Model::Transmission(Box::new(self))
+    }
+}
+
+impl Transmission for Fixed {
+    fn input(&self) -> Motion {
+        self.ports.0
+    }
+
+    fn output(&self) -> Motion {
+        self.ports.1
+    }
+
+    fn coupling(&self, _gear: usize) -> Coupling {
+        self.coupling
+    }
+
+    fn input_inertia(&self) -> Known {
+        Known::Value(self.inertia)
+    }
+
+    fn limits(&self) -> Vec<Limit> {
+        self.limits.clone()
+    }
+
+    fn brake(&self) -> Option<Brake> {
+        self.brake
+    }
+
+    fn one_way(&self) -> bool {
+        self.one_way
+    }
+
+    fn grip(&self) -> Option<Grip> {
+        self.grip
+    }
+
+    fn slip_limit(&self, state: &TransmissionState) -> Option<f64> {
+        self.slip_limit.map(|limit| limit(self, state))
+    }
+
+    fn answer(&self, name: &str, state: &TransmissionState) -> Option<Answer> {
+        let own = self.own.iter().find(|own| own.name == name)?;
+        Some(Answer::Quantity { si: (own.value)(self, state), kind: own.kind, marks: Marks::default() })
+    }
+
+    fn symbols(&self, state: &TransmissionState) -> Symbols {
+        let mut out = (self.symbols)(&self.coupling, state);
+        out.extend(&self.constants);
+        out
+    }
+}
