@@ -132,6 +132,11 @@ fn transmissions() {
 }
 
 #[test]
+fn ratios() {
+    run("ratios.toml");
+}
+
+#[test]
 fn loads_and_run_up() {
     run("loads.toml");
 }

@@ -105,11 +105,12 @@ codes! {
     BadAllow = "bad-allow", Error, "an allow of a code that cannot be allowed";
     // -- what a colleague would raise
     HoistWithoutBrake = "hoist-without-brake", Warning, "a load that falls and no brake to hold it";
+    SelfLockingTrusted = "self-locking-trusted", Warning, "a load that falls, held by nothing but a part that locks itself";
     PullUpDip = "pull-up-dip", Warning, "the source's dip on the way up leaves the drive hanging or nearly";
     PeakAsContinuous = "peak-as-continuous", Warning, "the drive runs on more than the source can give for long";
     Overspeed = "overspeed", Warning, "the drive can pass the highest speed a part allows";
     LoadShare = "load-share", Warning, "sources on one shaft do not share the load, or one drives another";
     OutsideData = "outside-data", Warning, "a result taken outside the range in which a curve was measured";
     PartLimit = "part-limit", Warning, "a part is loaded above its own limit";
-    Slips = "slips", Warning, "the wheel asks for more than its grip";
+    Slips = "slips", Warning, "a wheel, belt or clutch is asked for more than its friction passes";
 }

@@ -15,7 +15,7 @@ mod transmission;
 pub use load::{Load, LoadState, Standstill};
 pub use source::{Braking, Characteristic, Draw, DrawLaw, Drawn, Ratings, Source, SourceState};
 pub use supply::{Feed, Supply, SupplyData};
-pub use transmission::{Brake, Coupling, Grip, Limit, LimitOn, Transmission, TransmissionState};
+pub use transmission::{Brake, Coupling, Grip, Limit, LimitOn, Slip, Transmission, TransmissionState};
 
 /// A part, read from its fields.
 #[derive(Debug)]

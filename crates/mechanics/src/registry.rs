@@ -170,7 +170,7 @@ impl Bounds {
 }
 
 /// Something that can be asked after the drive is solved.
-#[derive(Debug)]
+#[derive(Clone, Copy, Debug)]
 pub struct ResultRow {
     /// Its name: `torque`, `holding_reserve`.
     pub name: &'static str,

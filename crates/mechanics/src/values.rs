@@ -26,10 +26,31 @@ pub enum FieldValue {
         /// Teeth or diameter (m) of the driven wheel.
         driven: f64,
     },
-    /// Named gears with their reductions.
-    Gears(Vec<(String, f64)>),
+    /// Named gears.
+    Gears(Vec<Gear>),
     /// A duty type.
     Duty(Duty),
+}
+
+/// A gear of a gearbox.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Gear {
+    /// Its name.
+    pub name: String,
+    /// Its reduction; none in neutral.
+    pub reduction: Option<f64>,
+    /// Its own efficiency, where it has one.
+    pub efficiency: Option<f64>,
+    /// Its own efficiency backward.
+    pub efficiency_backward: Option<f64>,
+}
+
+impl Gear {
+    /// A gear with the losses of its gearbox.
+    #[must_use]
+    pub fn of(name: impl Into<String>, reduction: f64) -> Self {
+        Self { name: name.into(), reduction: Some(reduction), efficiency: None, efficiency_backward: None }
+    }
 }
 
 /// A duty type of IEC 60034-1 and its number.

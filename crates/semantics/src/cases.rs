@@ -7,7 +7,7 @@ use layshaft_diagnostics::{Code, Diagnostic, FileSpan, Span};
 use layshaft_mechanics::registry;
 use layshaft_syntax::{Block, CaseRef, Entry, ItemKind, Name, Value, ValueKind};
 
-use crate::defs::{Given, path_text, slot_of, unknown_field};
+use crate::defs::{Given, fits_member, path_text, slot_of, unknown_field};
 use crate::eval::{Eval, Overlay, Reading, Shared, Slot};
 use crate::quantity::Datum;
 use crate::world::{Declared, ItemRef};
@@ -23,7 +23,7 @@ pub(crate) struct Combination<'w> {
     pub members: Vec<Given<'w>>,
 }
 
-/// A state of the spec: plain, or one combination of a case, in one gear.
+/// A state of the spec: plain, or one combination of a case, in one gear, on one layer of rope.
 pub(crate) struct State<'w> {
     /// Index in the analysis' list of cases.
     pub case: usize,
@@ -42,16 +42,15 @@ pub(crate) fn states<'w>(shared: Shared<'w>) -> Vec<State<'w>> {
     let whole = FileSpan { file: layshaft_diagnostics::FileId(0), span: Span::default() };
     let mut states = Vec::new();
     let mut builder = Builder { shared, plain: Rc::clone(&plain), busy: Vec::new(), count: 1 };
-    builder.open(&mut states, 0, "plain", whole, Combination::default());
-    let mut case = 0;
+    let mut case = builder.open(&mut states, 0, "plain", whole, Combination::default());
     for (at, tree) in shared.world.items(0) {
         let ItemKind::Case { name, .. } = &tree.kind else { continue };
         if shared.world.find(0, &name.text) != Some((Declared::Case, at)) {
             continue;
         }
         for combination in builder.combinations(at) {
-            case += 1;
-            builder.open(&mut states, case, &name.text, shared.world.place(at, name.span), combination);
+            let place = shared.world.place(at, name.span);
+            case = builder.open(&mut states, case, &name.text, place, combination);
         }
     }
     states
@@ -71,9 +70,10 @@ pub(crate) fn states_with<'w>(
     let mut states = Vec::new();
     let words: Vec<_> = block.entries.iter().map(|entry| shared.world.text(at, entry.span)).collect();
     let name = format!("{} with {{ {} }}", base.label, words.join("; "));
-    for (index, combination) in builder.over(vec![start], at, block).into_iter().enumerate() {
+    let mut case = first_case;
+    for combination in builder.over(vec![start], at, block) {
         let place = shared.world.place(at, block.span);
-        builder.open(&mut states, first_case + index, &name, place, combination);
+        case = builder.open(&mut states, case, &name, place, combination);
     }
     states
 }
@@ -86,7 +86,8 @@ struct Builder<'w> {
 }
 
 impl<'w> Builder<'w> {
-    /// Adds the states of one combination: one, or one for each gear where none is engaged.
+    /// Adds the states of one combination: one, or one for each gear where none is engaged; and the same again on the
+    /// first layer of a drum that leaves its layer open, as a case of its own. Gives the next free index of a case.
     fn open(
         &self,
         states: &mut Vec<State<'w>>,
@@ -94,34 +95,57 @@ impl<'w> Builder<'w> {
         name: &str,
         place: FileSpan,
         of: Combination<'w>,
-    ) {
+    ) -> usize {
         let world = self.shared.world;
         let words: Vec<_> =
             of.members.iter().map(|given| world.text(given.at, given.value.span).to_owned()).collect();
         let label = if words.is_empty() { name.to_owned() } else { format!("{name}[{}]", words.join(", ")) };
-        let is_plain = case == 0;
-        let plain = (!is_plain).then(|| Rc::clone(&self.plain));
-        let first = if is_plain {
-            Rc::clone(&self.plain)
-        } else {
-            Rc::new(Eval::new(self.shared, of.overlay.clone(), plain.clone(), None))
+        let plain = (case != 0).then(|| Rc::clone(&self.plain));
+        let first = match &plain {
+            None => Rc::clone(&self.plain),
+            Some(_) => Rc::new(Eval::new(self.shared, of.overlay.clone(), plain.clone(), None)),
         };
-        let gears = crate::gears::open_gears(&first);
-        let state = |gear: Option<Box<str>>, eval| State {
+        let blank = State {
             case,
             name: name.into(),
-            label: label.clone(),
+            label,
             place,
             members: of.members.clone(),
+            gear: None,
+            eval: Rc::clone(&first),
+        };
+        self.in_gears(states, &blank, plain);
+        if states.len() >= MOST_STATES || !crate::gears::open_layers(&first) {
+            return case + 1;
+        }
+        let plain = Some(Rc::clone(&self.plain));
+        let mut eval = Eval::new(self.shared, of.overlay, plain.clone(), None);
+        eval.first_layer = true;
+        let label = format!("{}, layer 1", blank.label);
+        let blank = State { case: case + 1, label, eval: Rc::new(eval), ..blank };
+        self.in_gears(states, &blank, plain);
+        case + 2
+    }
+
+    /// Adds a state, in each gear where none is engaged.
+    fn in_gears(&self, states: &mut Vec<State<'w>>, blank: &State<'w>, plain: Option<Rc<Eval<'w>>>) {
+        let state = |gear: Option<Box<str>>, eval| State {
+            case: blank.case,
+            name: blank.name.clone(),
+            label: blank.label.clone(),
+            place: blank.place,
+            members: blank.members.clone(),
             gear,
             eval,
         };
+        let gears = crate::gears::open_gears(&blank.eval);
         if gears.is_empty() {
-            states.push(state(None, first));
-            return;
+            states.push(state(None, Rc::clone(&blank.eval)));
         }
         for gear in gears {
-            let eval = Eval::new(self.shared, of.overlay.clone(), plain.clone(), Some(gear.clone()));
+            let overlay = blank.eval.overlay.clone();
+            let mut eval = Eval::new(self.shared, overlay, plain.clone(), Some(gear.clone()));
+            eval.first_layer = blank.eval.first_layer;
             states.push(state(Some(gear), Rc::new(eval)));
         }
     }
@@ -278,7 +302,8 @@ impl<'w> Builder<'w> {
             (Declared::Part, 1) => {
                 let part = self.shared.parts.get(&item)?;
                 let row = part.row?;
-                if part.field(&slot.0).is_none() {
+                let fits = |field| fits_member(row, field, slot.1.is_some());
+                if !part.field(&slot.0).is_some_and(fits) {
                     self.report(unknown_field(world, at, row, part.role, entry));
                     return None;
                 }

@@ -204,13 +204,20 @@ impl<'w> Builder<'w, '_> {
         let slot = slot_of(entry);
         let row = def.row?;
         let known = field_of(row, def.role, &slot.0);
-        let fits = known.is_some_and(|field| slot.1.is_some() == (field.shape == Shape::Gears));
+        let fits = known.is_some_and(|field| fits_member(row, field, slot.1.is_some()));
         if fits && entry.key.names.len() == 1 {
             return Some(slot);
         }
         self.sink.push(unknown_field(self.world, def.at, row, def.role, entry));
         None
     }
+}
+
+/// Whether a field stands with (or without) a gear's name behind it: a gear always does, an efficiency may.
+pub(crate) fn fits_member(row: &KindRow, field: &Field, member: bool) -> bool {
+    let loss = field.name == "efficiency" || field.name == "efficiency_backward";
+    let geared = || row.fields.iter().any(|field| field.shape == Shape::Gears);
+    member == (field.shape == Shape::Gears) || (member && loss && geared())
 }
 
 /// The finding for a kind that does not exist.

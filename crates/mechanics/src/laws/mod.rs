@@ -7,6 +7,9 @@ use crate::registry::Formula;
 pub mod battery;
 pub mod belt;
 pub mod brake;
+pub mod capstan;
+pub mod clutch;
+pub mod crank;
 pub mod dc_envelope;
 pub mod dc_machine;
 pub mod drag;
@@ -17,13 +20,16 @@ pub mod inertia;
 pub mod kloss;
 pub mod person_power;
 pub mod planetary;
+pub mod rack;
 pub mod road;
 pub mod rope;
 pub mod screw;
 pub mod servo_envelope;
+pub mod shaft;
 pub mod straight_line;
 pub mod synchronous;
 pub mod table;
+pub mod universal_joint;
 pub mod wheel;
 pub mod winding;
 pub mod worm;
@@ -51,6 +57,9 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         battery::CHECKED,
         belt::CHECKED,
         brake::CHECKED,
+        capstan::CHECKED,
+        clutch::CHECKED,
+        crank::CHECKED,
         dc_envelope::CHECKED,
         dc_machine::CHECKED,
         drag::CHECKED,
@@ -61,13 +70,16 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         kloss::CHECKED,
         person_power::CHECKED,
         planetary::CHECKED,
+        rack::CHECKED,
         road::CHECKED,
         rope::CHECKED,
         screw::CHECKED,
         servo_envelope::CHECKED,
+        shaft::CHECKED,
         straight_line::CHECKED,
         synchronous::CHECKED,
         table::CHECKED,
+        universal_joint::CHECKED,
         wheel::CHECKED,
         winding::CHECKED,
         worm::CHECKED,

@@ -77,6 +77,17 @@ pub struct Grip {
     pub share: Known,
 }
 
+/// What is asked of a friction, and what it passes.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Slip {
+    /// Magnitude that has to pass.
+    pub asked: f64,
+    /// Most it passes.
+    pub most: f64,
+    /// Kind of both: `torque` or `force`.
+    pub kind: &'static str,
+}
+
 /// Where a transmission stands in a solved drive: efforts and speeds are of one part and with their signs.
 #[derive(Clone, Copy, Debug)]
 pub struct TransmissionState {
@@ -147,8 +158,8 @@ pub trait Transmission: Debug + Send + Sync {
         None
     }
 
-    /// Most effort that friction passes to its output where it stands so; `None` where it cannot slip.
-    fn slip_limit(&self, _state: &TransmissionState) -> Option<f64> {
+    /// What is asked of its friction where it stands so, and the most it passes; `None` where it cannot slip.
+    fn slip(&self, _state: &TransmissionState) -> Option<Slip> {
         None
     }
 

@@ -47,6 +47,8 @@ pub(crate) struct Stage {
     pub drag: Option<Box<dyn Curve>>,
     /// Whether it can be left behind.
     pub one_way: bool,
+    /// Whether it passes nothing.
+    pub open: bool,
     /// Which end is away from the root.
     pub far: Far,
 }
@@ -62,6 +64,9 @@ impl Stage {
 
     /// Output effort per input effort while that is not below zero, and while it is.
     pub fn gains(&self, back: bool) -> (f64, f64) {
+        if self.open {
+            return (0.0, 0.0);
+        }
         let forth = self.coupling.effort * self.coupling.forward;
         let returned = self.coupling.effort / self.backward();
         if back { (returned, forth) } else { (forth, returned) }
@@ -69,6 +74,9 @@ impl Stage {
 
     /// Input effort per output effort while that is not below zero, and while it is.
     pub fn needs(&self, back: bool) -> (f64, f64) {
+        if self.open {
+            return (0.0, 0.0);
+        }
         let forth = 1.0 / (self.coupling.effort * self.coupling.forward);
         let returned = self.backward() / self.coupling.effort;
         if back { (returned, forth) } else { (forth, returned) }
@@ -129,7 +137,7 @@ impl Assembly {
         let roles: Vec<Role> = spec.parts.iter().map(|part| part.row.role).collect();
         let tree = tree(&spec.chain, &roles, &models)?;
         let gears = gears_engaged(spec, &tree, &models)?;
-        let root = root(spec, &tree, &models);
+        let root = root(spec, &tree, &models, &gears);
         let (far, order) = directed(&tree, root);
         let stages = stages(&tree, &models, &gears, &far);
         self_locking_in_branch(&stages, &models)?;

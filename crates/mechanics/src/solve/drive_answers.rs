@@ -86,7 +86,9 @@ impl Solution {
             return Err(Answer::Absent(Note { template, quantities }));
         }
         if here.behind[index] {
-            return Err(absent("its freewheel leaves it behind: its speed is its own"));
+            return Err(absent(
+                "a freewheel, a neutral gear or an open clutch parts it from the load: its speed is its own",
+            ));
         }
         Ok(self.quantity(here.x * shaft.speed, shaft.motion.speed_kind(), here.marks))
     }

@@ -1,13 +1,15 @@
 //! What a colleague would raise about a solved drive.
 
 use super::answers::Solution;
+use super::assembly::{Far, Stage};
 use super::extreme::greatest;
 use super::points::range;
+use super::rest::about_to_move;
 use super::run_up::{Loading, smooth_pieces};
 use super::state::State;
 use crate::curve::Law;
 use crate::fault::Note;
-use crate::model::{Limit, LimitOn, Model, Motion};
+use crate::model::{Known, Limit, LimitOn, Model, Motion, Slip, TransmissionState};
 use crate::solution::{Answer, Finding, Mode, Outcome, Stability};
 
 /// A ratio of available to required effort on the way up below which a dip is worth a remark.
@@ -32,6 +34,7 @@ impl Solution {
             self.outside(here, &mut found);
             self.beyond_limits(here, &mut found);
             self.grip(here, &mut found);
+            self.slipping(here, &mut found);
         }
         found
     }
@@ -41,14 +44,32 @@ impl Solution {
         if drive.stages.iter().any(|s| drive.transmission(s).is_some_and(|t| t.brake().is_some())) {
             return;
         }
+        let locked = |s: &&Stage| matches!(s.coupling.backward, Known::Value(value) if value <= 0.0);
+        let locking = drive.stages.iter().find(locked);
         for load in &drive.loads {
-            if drive.load(load).is_some_and(|l| l.needs_holding()) {
-                let note = Note::plain(
-                    "nothing holds this load when the source is off: a load that can fall needs a brake of its own \
-                     (self-locking is none), chosen by the rules that apply where it is used",
-                );
-                found.push(Finding { code: "hoist-without-brake", part: Some(load.at.part), note });
+            if !drive.load(load).is_some_and(|l| l.needs_holding()) {
+                continue;
             }
+            let finding = match locking {
+                Some(stage) => Finding {
+                    code: "self-locking-trusted",
+                    part: Some(stage.at.part),
+                    note: Note::plain(
+                        "only its friction holds the load when the source is off: shaking, wear, heat or grease make it \
+                         run down; self-locking is no brake, and a load that can fall needs one of its own, chosen by \
+                         the rules that apply where it is used",
+                    ),
+                },
+                None => Finding {
+                    code: "hoist-without-brake",
+                    part: Some(load.at.part),
+                    note: Note::plain(
+                        "nothing holds this load when the source is off: a load that can fall needs a brake of its own \
+                         (self-locking is none), chosen by the rules that apply where it is used",
+                    ),
+                },
+            };
+            found.push(finding);
         }
     }
 
@@ -264,6 +285,47 @@ impl Solution {
                     Note { template, quantities: vec![(through.output.abs(), "force"), (most, "force")] };
                 found.push(Finding { code: "slips", part: Some(stage.at.part), note });
             }
+        }
+    }
+}
+
+impl Solution {
+    /// Belts, pulleys and clutches that are asked for more than their friction passes, running or to set the load
+    /// moving.
+    fn slipping(&self, here: &State, found: &mut Vec<Finding>) {
+        let drive = &self.drive;
+        let moves = self.path.as_ref().is_some_and(|path| !path.back && path.outcome == Outcome::Starts);
+        let start = moves.then(|| about_to_move(drive, false, true));
+        let factor = drive.spec.settings.application_factor;
+        for (index, stage) in drive.stages.iter().enumerate() {
+            let Some(part) = drive.transmission(stage) else { continue };
+            let running = part.slip(&self.stage_state(here, index));
+            // Between source and root what passes at rest is what the source pushes with, not what is asked.
+            let start = start.as_ref().filter(|_| stage.far == Far::Output);
+            let starting = start.and_then(|flow| {
+                let through = &flow.through[index];
+                part.slip(&TransmissionState {
+                    input_speed: 0.0,
+                    input_effort: through.input / stage.at.count,
+                    output_speed: 0.0,
+                    output_effort: through.output / stage.at.count,
+                    gear: stage.gear,
+                })
+            });
+            let beyond = |slip: &Slip| above(slip.asked * factor, slip.most);
+            let (slip, template) = match (running.filter(beyond), starting.filter(beyond)) {
+                (Some(slip), _) => {
+                    (slip, "{0} would have to pass here, and its friction passes {1}: it slips")
+                }
+                (None, Some(slip)) => (
+                    slip,
+                    "to set the load moving {0} would have to pass, and its friction passes {1}: it slips",
+                ),
+                (None, None) => continue,
+            };
+            let quantities = vec![(slip.asked * factor, slip.kind), (slip.most, slip.kind)];
+            let note = Note { template, quantities };
+            found.push(Finding { code: "slips", part: Some(stage.at.part), note });
         }
     }
 }

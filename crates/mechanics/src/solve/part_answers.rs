@@ -90,7 +90,9 @@ impl Solution {
             "torque_reserve" | "force_reserve" => self.reserve(here, source, effort, speed),
             "current" | "voltage" | "input_power" | "efficiency" => {
                 if behind {
-                    return Err(absent("its freewheel leaves it behind: it gives nothing"));
+                    return Err(absent(
+                        "a freewheel, a neutral gear or an open clutch parts it from the load: it gives nothing",
+                    ));
                 }
                 self.electrical(here, source, effort, speed, name)
             }

@@ -6,7 +6,7 @@ use super::assembly::{Far, Shaft, Stage};
 use super::chain::{Hung, Tree};
 use crate::drive::{Direction, DriveSpec};
 use crate::fault::{Fault, FaultKind, Note};
-use crate::model::{Known, Model, Motion};
+use crate::model::{Known, Model, Motion, Transmission};
 
 /// The names of the gears a drive can be in: those all its gearboxes have.
 pub(crate) fn gear_names(tree: &Tree, models: &[Arc<Model>]) -> Vec<String> {
@@ -35,6 +35,10 @@ pub(super) fn gears_engaged(
     let mut faults = Vec::new();
     for stage in &tree.stages {
         let Model::Transmission(model) = models[stage.part].as_ref() else { continue };
+        if let Some(index) = model.gear_towards(spec.settings.direction) {
+            engaged.push(index);
+            continue;
+        }
         let names = model.gears();
         let kind = match (&spec.settings.gear, names.len()) {
             (_, 0) | (None, 1) => {
@@ -95,8 +99,9 @@ fn way(tree: &Tree, from: usize, to: usize) -> Vec<usize> {
 }
 
 /// Where to balance: on the shaft at which the ways of all sources that are on to the first load have met, so that a
-/// single source is balanced at its own shaft; but behind the last freewheel on the common way.
-pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Arc<Model>]) -> usize {
+/// single source is balanced at its own shaft; but behind the last freewheel, neutral gear or open clutch on the
+/// common way.
+pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Arc<Model>], gears: &[usize]) -> usize {
     let goal = tree.loads[0].shaft;
     let on = |source: &&Hung| spec.parts[source.part].on;
     let mut ways: Vec<Vec<usize>> =
@@ -115,7 +120,8 @@ pub(super) fn root(spec: &DriveSpec, tree: &Tree, models: &[Arc<Model>]) -> usiz
     let mut root = shared.first().map_or(goal, |index| tree.stages[*index].input);
     for index in shared {
         let stage = &tree.stages[*index];
-        if matches!(models[stage.part].as_ref(), Model::Transmission(t) if t.one_way()) {
+        let apart = |t: &dyn Transmission| t.one_way() || t.open(gears[*index]);
+        if matches!(models[stage.part].as_ref(), Model::Transmission(t) if apart(t.as_ref())) {
             root = stage.output;
         }
     }
@@ -162,6 +168,7 @@ pub(super) fn stages(tree: &Tree, models: &[Arc<Model>], gears: &[usize], far: &
             coupling: model.coupling(gears[index]),
             drag: model.drag(),
             one_way: model.one_way(),
+            open: model.open(gears[index]),
             far: far[index],
         });
     }

@@ -24,7 +24,7 @@ pub(crate) struct State {
     pub marks: Marks,
     /// How power flows.
     pub mode: Mode,
-    /// Shafts that a freewheel leaves behind.
+    /// Shafts that a freewheel leaves behind or an open stage cuts off.
     pub behind: Vec<bool>,
 }
 
@@ -59,6 +59,11 @@ impl State {
                 *effort = 0.0;
             }
         }
+        for (load, effort) in drive.loads.iter().zip(&mut flow.loads) {
+            if behind[load.at.shaft] {
+                *effort = 0.0;
+            }
+        }
         for (stage, through) in drive.stages.iter().zip(&mut flow.through) {
             if behind[stage.at.input] {
                 *through = Through { input: 0.0, output: 0.0, hold: 0.0 };
@@ -75,7 +80,7 @@ impl State {
     }
 }
 
-/// The shafts before a freewheel that passes nothing: they run, or rest, at a speed of their own.
+/// The shafts before a freewheel that passes nothing, and beyond an open stage: they run, or rest, at a speed of their own.
 fn left_behind(drive: &Assembly, flow: &Flow<f64>) -> Vec<bool> {
     let mut behind = vec![false; drive.shafts.len()];
     for index in drive.order.iter().rev() {
@@ -85,7 +90,7 @@ fn left_behind(drive: &Assembly, flow: &Flow<f64>) -> Vec<bool> {
             Far::Output => (stage.at.input, stage.at.output),
         };
         let passes_nothing = stage.far == Far::Input && stage.one_way && flow.through[*index].input <= 0.0;
-        behind[far] = behind[near] || passes_nothing;
+        behind[far] = behind[near] || passes_nothing || stage.open;
     }
     behind
 }

@@ -93,6 +93,8 @@ pub(crate) struct Eval<'w> {
     pub plain: Option<Rc<Eval<'w>>>,
     /// The gear engaged where the spec gives none and all are solved.
     pub gear: Option<Box<str>>,
+    /// Whether a drum whose layer the spec leaves open runs on its first layer instead of its top one.
+    pub first_layer: bool,
     lets: Memos<ItemRef, Option<Datum>>,
     fields: Memos<Slot, Option<Rc<FieldRead>>>,
     built: Memos<ItemRef, Option<Rc<Built>>>,
@@ -122,6 +124,7 @@ impl<'w> Eval<'w> {
             overlay,
             plain,
             gear,
+            first_layer: false,
             lets: RefCell::default(),
             fields: RefCell::default(),
             built: RefCell::default(),

@@ -9,14 +9,14 @@ use std::collections::BTreeMap;
 
 use layshaft_diagnostics::{Code, Diagnostic};
 use layshaft_mechanics::registry::{self, Field, Need, Shape};
-use layshaft_mechanics::values::{FieldValue, Values};
+use layshaft_mechanics::values::{FieldValue, Gear, Values};
 
-use crate::defs::{PartDef, SlotName, required};
+use crate::defs::{Given, PartDef, SlotName, required};
 use crate::eval::Eval;
 use crate::quantity::{Datum, Quantity};
 use crate::world::ItemRef;
 
-pub(crate) use shape::read;
+pub(crate) use shape::{is_neutral, read};
 pub(crate) use table::Tables;
 
 /// A field as read: for the law, for a reader, and the part it names.
@@ -81,6 +81,26 @@ fn default_value(field: &Field, si: f64) -> Option<FieldValue> {
     }
 }
 
+/// Gives a gear a loss of its own; says so where there is no such gear.
+fn put_in_gear(
+    eval: &Eval<'_>,
+    gears: &mut [Gear],
+    (name, field, si): (&str, &str, f64),
+    given: &Given<'_>,
+) -> bool {
+    let Some(gear) = gears.iter_mut().find(|gear| gear.name == name) else {
+        let place = eval.place(given.at, given.entry.span);
+        let message = format!("no gear of this gearbox is called `{name}`");
+        let names: Vec<_> = gears.iter().map(|gear| gear.name.as_str()).collect();
+        let help = format!("its gears are {}", names.join(", "));
+        eval.report(Diagnostic::new(Code::UnknownName, place, message).help(help));
+        return false;
+    };
+    let slot = if field == "efficiency" { &mut gear.efficiency } else { &mut gear.efficiency_backward };
+    *slot = Some(si);
+    true
+}
+
 /// Reads every field of a part and tries its law on them.
 pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
     let part = eval.shared.parts.get(&at)?;
@@ -88,15 +108,23 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
     let mut built = Built { on: true, ..Built::default() };
     let mut whole = !part.broken;
     let mut gears = Vec::new();
+    let mut of_gears = Vec::new();
     for (slot, given) in eval.all_given(at) {
         let Some(field) = part.field(&slot.0) else { continue };
         let Some(read) = eval.read(at, &slot) else {
             whole = false;
             continue;
         };
-        if let (Shape::Gears, Some(name), FieldValue::Si(reduction)) = (field.shape, &slot.1, &read.value) {
-            gears.push((given.entry.span, name.to_string(), *reduction));
-            continue;
+        match (&slot.1, &read.value) {
+            (Some(_), FieldValue::Gears(own)) => {
+                gears.extend(own.iter().map(|gear| (given.entry.span, gear.clone())));
+                continue;
+            }
+            (Some(name), FieldValue::Si(si)) => {
+                of_gears.push((name.clone(), field.name, *si, given));
+                continue;
+            }
+            _ => {}
         }
         if let Some(link) = read.link {
             built.links.insert(field.name, link);
@@ -108,9 +136,15 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
     }
     if !gears.is_empty() {
         // In the order of the text, as a driver would name them.
-        gears.sort_by_key(|(span, ..)| *span);
-        let gears = gears.into_iter().map(|(_, name, reduction)| (name, reduction)).collect();
+        gears.sort_by_key(|(span, _)| *span);
+        let mut gears: Vec<Gear> = gears.into_iter().map(|(_, gear)| gear).collect();
+        for (name, field, si, given) in of_gears {
+            whole &= put_in_gear(eval, &mut gears, (&name, field, si), &given);
+        }
         built.values.set("gear", FieldValue::Gears(gears));
+    }
+    if eval.first_layer && part.field("layer").is_some() && built.values.get("layer").is_none() {
+        built.values.set("layer", FieldValue::Si(1.0));
     }
     if whole && !report_missing(eval, part, &built.values) {
         whole = false;

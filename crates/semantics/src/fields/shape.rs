@@ -2,8 +2,8 @@
 
 use layshaft_diagnostics::{Code, Diagnostic, Span};
 use layshaft_mechanics::registry::{Bounds, Field, Role, Shape};
-use layshaft_mechanics::values::{Duty, FieldValue};
-use layshaft_syntax::{BinaryOp, Expr, ExprKind, ValueKind};
+use layshaft_mechanics::values::{Duty, FieldValue, Gear};
+use layshaft_syntax::{BinaryOp, Expr, ExprKind, Value, ValueKind};
 use layshaft_units::Kind;
 
 use super::FieldRead;
@@ -36,6 +36,12 @@ pub(crate) fn read(
         Shape::Gears => reader.gear(),
         Shape::Duty => reader.duty(),
     }
+}
+
+/// Whether nothing passes in a gear of this value.
+pub(crate) fn is_neutral(value: &Value) -> bool {
+    matches!(&value.kind, ValueKind::Expr(Expr { kind: ExprKind::Path(path), .. })
+        if matches!(&path.names[..], [word] if &*word.text == "neutral"))
 }
 
 struct Reader<'a, 'w> {
@@ -286,13 +292,20 @@ impl Reader<'_, '_> {
                 return None;
             }
         };
-        let value = FieldValue::Gears(vec![(name.to_string(), 1.0)]);
+        let value = FieldValue::Gears(vec![Gear::of(&*name, 1.0)]);
         Some(FieldRead { value, datum: Some(Datum::Word(name)), link: None })
     }
 
-    /// `gear 1 = reduction 14.5`
+    /// `gear 1 = reduction 14.5`, `gear n = neutral`
     fn gear(&self) -> Option<FieldRead> {
-        let reduction = match &self.given.value.kind {
+        let reduction = if is_neutral(self.given.value) { None } else { Some(self.reduction()?) };
+        let Slot::Field(_, (_, Some(name))) = self.slot else { return None };
+        let gear = Gear { reduction, ..Gear::of(&**name, 1.0) };
+        Some(FieldRead { value: FieldValue::Gears(vec![gear]), datum: None, link: None })
+    }
+
+    fn reduction(&self) -> Option<f64> {
+        Some(match &self.given.value.kind {
             ValueKind::Teeth { driver, driven } => {
                 let (driver, driven) = (self.wheel(driver, false), self.wheel(driven, false));
                 driven? / driver?
@@ -312,12 +325,11 @@ impl Reader<'_, '_> {
             _ => {
                 let message = "a gear says which way it changes the speed".to_owned();
                 self.eval.report(self.refuse(Code::WrongValue, message).help(
-                    "write `reduction 14.5` (output slower), `increase 2` (output faster) or `18 drives 42`",
+                    "write `reduction 14.5` (output slower), `increase 2` (output faster), `18 drives 42` or `neutral`",
                 ));
                 return None;
             }
-        };
-        Some(FieldRead { value: FieldValue::Si(reduction), datum: None, link: None })
+        })
     }
 
     fn duty(&self) -> Option<FieldRead> {

@@ -65,7 +65,7 @@ fn entry<'s>(inp: &mut In<'s, '_>, value: &Rule<'s, Value>) -> Parsed<Entry> {
     Ok(Entry { docs, key, member, value, span })
 }
 
-/// `motor.voltage`, `gear 1`, `gear low`
+/// `motor.voltage`, `gear 1`, `gear low`, `efficiency low`
 pub(super) fn key(inp: &mut In<'_, '_>) -> Parsed<(Path, Option<Name>)> {
     let path = take_path(inp)?;
     let member = match inp.peek_ref() {
@@ -80,9 +80,10 @@ pub(super) fn key(inp: &mut In<'_, '_>) -> Parsed<(Path, Option<Name>)> {
     Ok((path, member))
 }
 
-/// Gears have names of their own; other fields have none, and two words are a slip.
+/// Gears have names of their own, and their losses by them; other fields have none, and two words are a slip.
 fn is_gear(path: &Path) -> bool {
-    path.names.last().is_some_and(|name| &*name.text == "gear")
+    let of_gears = ["gear", "efficiency", "efficiency_backward"];
+    path.names.last().is_some_and(|name| of_gears.contains(&&*name.text))
 }
 
 /// The `##` lines right above a place.

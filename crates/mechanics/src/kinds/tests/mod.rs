@@ -164,6 +164,11 @@ fn what_can_hurt_says_so() {
         "worm",
         "screw",
         "planetary",
+        "clutch",
+        "friction_pulley",
+        "rack",
+        "crank",
+        "gearbox",
         "person",
     ] {
         let row = ROWS.iter().find(|row| row.name == name);

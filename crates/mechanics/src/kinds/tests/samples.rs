@@ -1,7 +1,7 @@
 //! One part of every kind, by its fields, for tests that hold for all of them.
 
 use crate::registry::{KindRow, Role};
-use crate::values::{FieldValue, Table, Values};
+use crate::values::{FieldValue, Gear, Table, Values};
 
 fn si(fields: &[(&'static str, f64)]) -> Values {
     fields.iter().fold(Values::default(), |values, (name, si)| values.with(name, FieldValue::Si(*si)))
@@ -46,7 +46,7 @@ fn transmission(name: &str) -> Option<Values> {
     let pulleys = FieldValue::Ratio { driver: 0.1, driven: 0.25 };
     Some(match name {
         "gear" => losses(si(&[("reduction", 2.5)])),
-        "gearbox" => losses(Values::default()).with("gear", FieldValue::Gears(vec![("1".to_owned(), 2.5)])),
+        "gearbox" => losses(Values::default()).with("gear", FieldValue::Gears(vec![Gear::of("1", 2.5)])),
         "planetary" => losses(si(&[("sun_teeth", 16.0), ("ring_teeth", 64.0)]))
             .with("input", FieldValue::Word("sun"))
             .with("output", FieldValue::Word("carrier"))
@@ -67,6 +67,26 @@ fn transmission(name: &str) -> Option<Values> {
         "reeving" => losses(si(&[("falls", 4.0)])),
         "wheel" => si(&[("rolling_circumference", 2.0)]),
         "brake" => si(&[("torque", 60.0)]),
+        "clutch" => si(&[
+            ("friction_coefficient", 0.3),
+            ("clamp_force", 4e3),
+            ("outer_diameter", 0.24),
+            ("inner_diameter", 0.16),
+        ]),
+        "friction_pulley" => losses(si(&[
+            ("pitch_diameter", 0.6),
+            ("friction_coefficient", 0.25),
+            ("wrap", 2.8),
+            ("slack_tension", 1300.0),
+        ])),
+        "rack" => losses(si(&[("module", 0.004), ("pinion_teeth", 20.0)])),
+        "crank" => losses(si(&[("stroke", 0.12), ("rod_length", 0.3)])),
+        "shaft" => si(&[("drag_torque", 1.2), ("viscous_drag", 0.01), ("torsional_stiffness", 5e3)]),
+        "universal_joint" => si(&[("angle", 0.3)]),
+        "variable" => {
+            losses(si(&[("reduction", 1.4)])).with("reduction_range", FieldValue::Interval(0.5, 2.2))
+        }
+        "reversing_gear" => losses(si(&[("ahead_reduction", 2.5), ("astern_reduction", 2.9)])),
         "freewheel" | "coupling" => Values::default(),
         _ => return None,
     })

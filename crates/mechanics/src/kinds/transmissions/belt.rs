@@ -1,16 +1,18 @@
 //! A belt drive, with or without teeth.
 
-use super::gear::{RESULTS, TEETH, fixed_ratio, ratio};
+use super::fixed::Fixed;
+use super::gear::{REDUCTION_RESULT, TEETH, fixed_ratio, ratio};
+use super::wrap::{FRICTION, GROOVE, MASS, OWN, SLACK, TENSIONS, TIGHT, WRAP, slip, tension_ratio, wrapped};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     EFFICIENCY, EFFICIENCY_BACKWARD, MAX_INPUT_SPEED, MAX_INPUT_TORQUE, MAX_POWER, SMALL_INERTIA, plain,
     quantity, range,
 };
 use crate::kinds::reading::{contradiction, done, missing, only_one};
-use crate::laws::{belt as law, gear};
+use crate::laws::{belt as law, capstan, gear};
 use crate::model::{Known, Model};
-use crate::registry::{Bounds, Field, KindRow, Need, Role, Shape};
-use crate::values::Values;
+use crate::registry::{Bounds, Field, KindRow, Need, ResultRow, Role, Shape};
+use crate::values::{FieldValue, Values};
 
 /// The row.
 pub static ROW: KindRow = KindRow {
@@ -18,14 +20,27 @@ pub static ROW: KindRow = KindRow {
     name: "belt",
     title: "belt drive",
     summary: "Two pulleys and a belt: a friction belt by its pitch diameters and its slip, a toothed belt by its \
-              teeth. Slip costs speed but no torque; the loss by slip is beside the efficiency, not in it.",
+              teeth. Slip costs speed but no torque; the loss by slip is beside the efficiency, not in it. With friction, \
+              wrap and a tension it is checked whether the belt slips through.",
     fields: FIELDS,
     results: RESULTS,
-    formulas: &[law::SPEED, law::TOTAL_EFFICIENCY, gear::TORQUE, gear::TORQUE_BACKWARD],
+    formulas: &[
+        law::SPEED,
+        law::TOTAL_EFFICIENCY,
+        gear::TORQUE,
+        gear::TORQUE_BACKWARD,
+        capstan::TENSION_RATIO,
+        capstan::PULL_BY_SLACK,
+        capstan::PULL_BY_TIGHT,
+    ],
     cautions: &["Guard the belt: it draws in fingers and clothes. A friction belt is no holding device."],
     example: "transmission fan_belt: belt { pitch_diameters = 125 mm drives 200 mm; slip = 1.5 %; efficiency = 96 % }",
     build,
-    given: |values| diameter_ratio(values, &mut Vec::new()).map(|i| ("reduction", i)).into_iter().collect(),
+    given: |values| {
+        let reduction = diameter_ratio(values, &mut Vec::new()).map(|i| ("reduction", i));
+        let tensions = tension_ratio(values).map(|ratio| ("tension_ratio", ratio));
+        reduction.into_iter().chain(tensions).collect()
+    },
 };
 
 static FIELDS: &[Field] = &[
@@ -49,11 +64,19 @@ static FIELDS: &[Field] = &[
         ..EFFICIENCY
     },
     EFFICIENCY_BACKWARD,
+    FRICTION,
+    WRAP,
+    Field { need: Need::Optional, ..GROOVE },
+    Field { need: Need::Optional, ..SLACK },
+    Field { need: Need::Optional, ..TIGHT },
+    Field { need: Need::Optional, ..MASS },
     MAX_INPUT_TORQUE,
     MAX_INPUT_SPEED,
     MAX_POWER,
     SMALL_INERTIA,
 ];
+
+static RESULTS: &[ResultRow] = &[REDUCTION_RESULT, TENSIONS[0], TENSIONS[1], TENSIONS[2], TENSIONS[3]];
 
 fn diameter_ratio(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     let why = "the ratio: pitch diameters of a friction belt, or teeth of a toothed one";
@@ -64,7 +87,7 @@ fn diameter_ratio(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let Some(ratio) = diameter_ratio(values, &mut faults) else { return Err(faults) };
-    let slip = match (values.get("teeth"), values.si("slip")) {
+    let lost = match (values.get("teeth"), values.si("slip")) {
         (Some(_), Some(slip)) if slip > 0.0 => {
             faults.push(contradiction(&["teeth", "slip"], "a toothed belt does not slip", &[]));
             slip
@@ -77,14 +100,29 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         (_, slip) => slip.unwrap_or(0.0),
     };
     let mut belt = fixed_ratio(values, ratio);
-    belt.coupling.speed = law::speed_ratio(ratio, slip);
+    belt.coupling.speed = law::speed_ratio(ratio, lost);
     if let Known::Value(backward) = &mut belt.coupling.backward {
         // Slip loses power in both directions: the coupling's speed ratio takes it forward, so it counts twice here.
-        let kept = law::slip_factor(slip);
+        let kept = law::slip_factor(lost);
         *backward *= kept * kept;
     }
-    belt.constants.push(("s", slip));
+    belt.constants.push(("s", lost));
+    put_on_pulleys(&mut belt, values, &mut faults);
     done(belt.model(), faults)
+}
+
+/// What the friction of a belt passes, where it can be said.
+fn put_on_pulleys(belt: &mut Fixed, values: &Values, faults: &mut Vec<Fault>) {
+    let Some(wrap) = wrapped(values, false, faults) else { return };
+    let Some(FieldValue::Ratio { driver, driven }) = values.get("pitch_diameters") else {
+        let how = "a toothed belt does not pull by friction";
+        faults.push(contradiction(&["teeth", "friction_coefficient"], how, &[]));
+        return;
+    };
+    belt.constants.extend(wrap);
+    belt.hidden = vec![("rim", driver / 2.0), ("pull_in", 2.0 / driver), ("pull_out", 2.0 / driven)];
+    belt.slip = Some(slip);
+    belt.own = OWN;
 }
 
 #[cfg(test)]

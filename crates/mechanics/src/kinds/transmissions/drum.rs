@@ -67,7 +67,7 @@ static FIELDS: &[Field] = &[
         Need::Optional,
         range(1.0, 50.0),
         range(1.0, 10.0),
-        "the layer the rope runs on, counted from the barrel; the top one, which asks most of the drive, when not given",
+        "the layer the rope runs on, counted from the barrel; when not given, first and top layer are both judged",
     ),
     EFFICIENCY,
     EFFICIENCY_BACKWARD,

@@ -1,8 +1,11 @@
 //! The model most transmissions share: two ports coupled by numbers that the fields fix once and for all.
 
+use crate::curve::Curve;
+use crate::fault::Note;
 use crate::kinds::reading::limits;
+use crate::laws::shaft::Drag;
 use crate::model::{
-    Brake, Coupling, Grip, Known, Limit, LimitOn, Model, Motion, Transmission, TransmissionState,
+    Brake, Coupling, Grip, Known, Limit, LimitOn, Model, Motion, Slip, Transmission, TransmissionState,
 };
 use crate::solution::{Answer, Marks};
 use crate::values::Values;
@@ -38,10 +41,16 @@ pub(super) struct Fixed {
     pub brake: Option<Brake>,
     /// Its hold on the ground.
     pub grip: Option<Grip>,
-    /// Most effort friction passes to its output.
-    pub slip_limit: Option<fn(&Fixed, &TransmissionState) -> f64>,
+    /// Its drag.
+    pub drag: Option<Drag>,
+    /// Whether it passes nothing.
+    pub open: bool,
+    /// How far it is from slipping.
+    pub slip: Option<fn(&Fixed, &TransmissionState) -> Slip>,
     /// Symbols that stay as they are.
     pub constants: Symbols,
+    /// Numbers that no formula of the row names.
+    pub hidden: Symbols,
     /// Symbols that depend on where it stands.
     pub symbols: fn(&Coupling, &TransmissionState) -> Symbols,
     /// Results of its own.
@@ -59,8 +68,11 @@ impl Fixed {
             one_way: false,
             brake: None,
             grip: None,
-            slip_limit: None,
+            drag: None,
+            open: false,
+            slip: None,
             constants: Vec::new(),
+            hidden: Vec::new(),
             symbols: |_, _| Vec::new(),
             own: &[],
         }
@@ -81,9 +93,20 @@ impl Fixed {
         Self { limits: limits(values, fields), ..self }
     }
 
-    /// A symbol that stays as it is; 0 without it.
+    /// A number that stays as it is.
+    pub(super) fn known(&self, name: &str) -> Option<f64> {
+        let mut all = self.constants.iter().chain(&self.hidden);
+        all.find(|(symbol, _)| *symbol == name).map(|(_, si)| *si)
+    }
+
+    /// The same; 0 where it has none.
     pub(super) fn constant(&self, name: &str) -> f64 {
-        self.constants.iter().find(|(symbol, _)| *symbol == name).map_or(0.0, |(_, si)| *si)
+        self.known(name).unwrap_or(0.0)
+    }
+
+    /// How far it is from slipping.
+    pub(super) fn slip_at(&self, state: &TransmissionState) -> Option<Slip> {
+        self.slip.map(|slip| slip(self, state))
     }
 
     /// As a model.
@@ -125,13 +148,26 @@ impl Transmission for Fixed {
         self.grip
     }
 
-    fn slip_limit(&self, state: &TransmissionState) -> Option<f64> {
-        self.slip_limit.map(|limit| limit(self, state))
+    fn drag(&self) -> Option<Box<dyn Curve>> {
+        let drag = self.drag?;
+        Some(Box::new(drag))
+    }
+
+    fn open(&self, _gear: usize) -> bool {
+        self.open
+    }
+
+    fn slip(&self, state: &TransmissionState) -> Option<Slip> {
+        self.slip_at(state)
     }
 
     fn answer(&self, name: &str, state: &TransmissionState) -> Option<Answer> {
         let own = self.own.iter().find(|own| own.name == name)?;
-        Some(Answer::Quantity { si: (own.value)(self, state), kind: own.kind, marks: Marks::default() })
+        let si = (own.value)(self, state);
+        if si.is_finite() {
+            return Some(Answer::Quantity { si, kind: own.kind, marks: Marks::default() });
+        }
+        Some(Answer::Absent(Note::plain("nothing passes here, or a field that says it is not given")))
     }
 
     fn symbols(&self, state: &TransmissionState) -> Symbols {

@@ -6,7 +6,7 @@ use crate::registry::{Role, row};
 use crate::solution::{Answer, Outcome};
 use crate::solve::testing::{near, number, number_at};
 use crate::solve::{Extremes, Question, Solution, gears, solve, solve_at, worst_over};
-use crate::values::{Duty, FieldValue, Table, Values};
+use crate::values::{Duty, FieldValue, Gear, Table, Values};
 
 fn si(fields: &[(&'static str, f64)]) -> Values {
     fields.iter().fold(Values::default(), |values, (name, value)| values.with(name, FieldValue::Si(*value)))
@@ -138,7 +138,7 @@ fn trike(ride: Ride) -> DriveSpec {
         .with("point", FieldValue::Points(Table { columns, at: Vec::new() }));
     let rider = si(&[("sustained_power", 90.0)]).with("cadence", FieldValue::Interval(rpm(50.0), rpm(90.0)));
     let gearbox = si(&[("efficiency", 0.93), ("efficiency_backward", 0.93)])
-        .with("gear", FieldValue::Gears(vec![("1".into(), 14.5), ("2".into(), 8.2)]));
+        .with("gear", FieldValue::Gears(vec![Gear::of("1", 14.5), Gear::of("2", 8.2)]));
     let chain = si(&[("efficiency", 0.97)]).with("teeth", FieldValue::Ratio { driver: 42.0, driven: 18.0 });
     let wheel = si(&[("rolling_circumference", 1.52), ("grip", 0.6), ("driven_weight_share", 0.34)]);
     let road = si(&[
