@@ -124,8 +124,10 @@ pub fn factor(unit: &str) -> f64 {
     let pi = std::f64::consts::PI;
     match unit {
         "" | "rad/s" | "N·m" | "N" | "W" | "A" | "V" | "s" | "m" | "m/s" | "m/s²" | "Hz" | "N·m/A"
-        | "V·s/rad" | "kg" | "kg·m²" => 1.0,
+        | "V·s/rad" | "kg" | "kg·m²" | "rad/s²" => 1.0,
         "rpm" => pi / 30.0,
+        "°" => pi / 180.0,
+        "lbf·in" => 0.453_592_37 * 9.806_65 * 0.0254,
         "kW" | "kN·m" | "kN" => 1000.0,
         "hp" => 745.699_871_582_270_2,
         "km/h" => 1.0 / 3.6,

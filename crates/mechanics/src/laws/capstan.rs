@@ -116,8 +116,8 @@ mod tests {
     fn published_wraps() {
         // R. S. Khurmi, J. K. Gupta, Theory of Machines, 14th ed., 2009, Ex. 11.4 and 11.5, recomputed.
         let belt = tension_ratio(0.25, 160.0 * PI / 180.0, PI);
-        close(2500.0 / belt, 1243.784_852_34, 1e-10);
-        close(pull_by_tight(2500.0, belt) * 0.3 * 200.0 * PI / 30.0, 7893.032_558_46, 1e-10);
+        close(2500.0 / belt, 1_243.784_852_34, 1e-10);
+        close(pull_by_tight(2500.0, belt) * 0.3 * 200.0 * PI / 30.0, 7_893.032_558_46, 1e-10);
         let capstan = tension_ratio(0.25, 2.5 * 2.0 * PI, PI);
         close(9000.0 / capstan, 177.325_856_88, 1e-10);
         close(pull_by_slack(9000.0 / capstan, capstan), 9000.0 - 177.325_856_88, 1e-10);

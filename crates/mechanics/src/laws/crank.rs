@@ -144,7 +144,7 @@ mod tests {
         fn the_arm_is_the_slope_of_the_way(radius in 0.01..0.2f64, share in 1.2..8.0f64, angle in 0.1..3.0f64) {
             let rod = share * radius;
             let place = |t: f64| {
-                radius * libm::cos(t) + (rod * rod - (radius * libm::sin(t)).powi(2)).sqrt()
+                radius * libm::cos(t) + (rod * rod - radius * radius * libm::sin(t) * libm::sin(t)).sqrt()
             };
             let slope = -(place(angle + 1e-6) - place(angle - 1e-6)) / 2e-6;
             prop_assert!((slope - lever_arm(radius, rod, angle)).abs() < 1e-6 * radius.max(0.01));

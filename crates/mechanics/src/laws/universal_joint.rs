@@ -62,8 +62,8 @@ mod tests {
     fn published_joints() {
         // R. S. Khurmi, J. K. Gupta, Theory of Machines, 14th ed., 2009, Ex. 9.5 and 9.7, recomputed.
         let deg = core::f64::consts::PI / 180.0;
-        close(1200.0 * swing(16.422_907_927_710_23 * deg, 1.0), 1251.041_214_946_43, 1e-12);
-        close(1200.0 / swing(16.422_907_927_710_23 * deg, 1.0), 1151.041_214_946_43, 1e-12);
+        close(1200.0 * swing(16.422_907_927_710_23 * deg, 1.0), 1_251.041_214_946_43, 1e-12);
+        close(1200.0 / swing(16.422_907_927_710_23 * deg, 1.0), 1_151.041_214_946_43, 1e-12);
         close(500.0 * swing(20.0 * deg, 2.0), 566.237_165_715_897, 1e-12);
     }
 }

@@ -57,7 +57,7 @@ fn transmission(name: &str) -> Option<Values> {
             ("lead", 0.01),
             ("mean_diameter", 0.03),
             ("friction_coefficient", 0.1),
-            ("thread_angle", 0.5236),
+            ("thread_angle", 0.52),
             ("collar_friction_coefficient", 0.05),
             ("collar_diameter", 0.04),
         ]),

@@ -112,12 +112,12 @@ mod tests {
         let values = head(&[("wrap", 160.0 * PI / 180.0), ("tight_tension", 2500.0)]);
         let Ok(Model::Transmission(pulley)) = build(&values) else { panic!("no pulley") };
         let slip = pulley.slip(&at(1000.0)).unwrap();
-        close(slip.most * 2.0 * PI, 7893.032_558_46, 1e-10);
+        close(slip.most * 2.0 * PI, 7_893.032_558_46, 1e-10);
         close(slip.asked, 1000.0, 1e-15);
         let Some(Answer::Quantity { si, .. }) = pulley.answer("slack_tension", &at(slip.most)) else {
             panic!("no answer")
         };
-        close(si, 1243.784_852_34, 1e-10);
+        close(si, 1_243.784_852_34, 1e-10);
     }
 
     #[test]
@@ -128,7 +128,7 @@ mod tests {
             let Ok(Model::Transmission(pulley)) = build(values) else { panic!("no pulley") };
             pulley.slip(&at(100.0)).unwrap().most
         };
-        close(most(&heavy) / most(&light), 1.0 - 2.0 * (2.0 * PI).powi(2) / 500.0, 1e-12);
+        close(most(&heavy) / most(&light), 1.0 - 2.0 * 4.0 * PI * PI / 500.0, 1e-12);
     }
 
     #[test]

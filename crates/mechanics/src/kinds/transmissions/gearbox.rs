@@ -20,14 +20,12 @@ pub static ROW: KindRow = KindRow {
     name: "gearbox",
     title: "gearbox",
     summary: "A gearbox of which one gear is engaged at a time; the drive or a case says which. No gear is chosen \
-              silently: where none is said, every gear is solved and shown. In a gear called `neutral` nothing passes. A \
+              silently: where none is said, every gear is solved and shown. In a gear that is `neutral` nothing passes, and nothing holds the load. A \
               gear may have an efficiency of its own: `efficiency 1 = 91 %`.",
     fields: FIELDS,
     results: &[],
     formulas: &[law::SPEED, law::TORQUE, law::TORQUE_BACKWARD],
-    cautions: &[
-        "In neutral nothing holds the load but what stands behind the gearbox: a brake there, or it runs away.",
-    ],
+    cautions: &[],
     example: "transmission box: gearbox { gear 1 = reduction 14.5; gear 2 = reduction 8.2; efficiency = 93 % }",
     build,
     given: |_| Vec::new(),

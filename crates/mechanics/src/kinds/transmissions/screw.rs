@@ -284,7 +284,7 @@ mod tests {
     #[test]
     fn a_collar_and_a_sloping_flank_lose_more() {
         let plain = [("lead", 0.006), ("mean_diameter", 0.03), ("friction_coefficient", 0.12)];
-        let trapezoidal = [&plain[..], &[("thread_angle", 0.5236)]].concat();
+        let trapezoidal = [&plain[..], &[("thread_angle", 0.52)]].concat();
         let collar = [("collar_friction_coefficient", 0.1), ("collar_diameter", 0.04)];
         let collared = [&plain[..], &collar].concat();
         let forward = |fields: &[(&'static str, f64)]| screw(fields).unwrap().forward;
