@@ -1,5 +1,6 @@
 # Layshaft specs in Kakoune: colours, comments, indentation. The lists of words are written by the tests of the
-# repository. The language server comes with kak-lsp, see the README.
+# repository. \x7b and \x7d are the braces, which would have to be balanced here. The language server comes with
+# kak-lsp, see the README.
 
 declare-option -hidden str shaft_symbol '(?:hp_electric|short_ton|hp_boiler|long_ton|gal_imp|gal_us|mmH2O|inH2O|inch|thou|krpm|slug|barg|bara|psig|psia|mH2O|degC|degF|[%]|‰|ppm|deg|rev|nmi|mil|min|rpm|rps|mph|g_n|cfm|lbm|kgf|lbf|ozf|psi|atm|cSt|°C|°F|°|in|ft|yd|mi|ha|kn|lb|oz|kp|gf|tf|hp|PS|cP|cd|r|h|d|t|(?:T|G|M|k|h|da|d|c|m|μ|µ|u|n|p)?(?:Ohm|ohm|Hz|Wh|VA|Pa|Ω|Ah|Wb|m|l|L|g|N|J|W|A|V|H|F|C|T)|(?:m)?(?:bar|K)|(?:m|k)?(?:mol)|(?:m|μ|µ|u)?(?:rad|S)|(?:m|μ|µ|u|n|p)?(?:s))'
 
@@ -13,7 +14,7 @@ hook global WinSetOption filetype=shaft %{
     set-option buffer comment_line '#'
     set-option window indentwidth 4
     hook window InsertChar \n -group shaft-indent shaft-indent-on-new-line
-    hook window InsertChar \} -group shaft-indent shaft-indent-on-closing-brace
+    hook window InsertChar \x7d -group shaft-indent shaft-indent-on-closing-brace
     hook -once -always window WinSetOption filetype=.* %{
         remove-highlighter window/shaft
         remove-hooks window shaft-indent
@@ -35,9 +36,9 @@ add-highlighter shared/shaft/code/ regex '(?:^|[{;])\h*(gear)\h+(\w+)\h*=(?!=)' 
 add-highlighter shared/shaft/code/ regex '^\h*(supply|source|transmission|load|let)\h+(\w+)' 1:keyword 2:variable
 add-highlighter shared/shaft/code/ regex '^\h*(drive|case)\h+(\w+)' 1:keyword 2:module
 add-highlighter shared/shaft/code/ regex '(?:^|[{;])\h*(allow)\h+([a-z][a-z0-9-]*)' 1:keyword 2:attribute
-add-highlighter shared/shaft/code/ regex '^\h*show\b(?=\h*["\w(-])(?!\h*=)' 0:keyword
+add-highlighter shared/shaft/code/ regex '^\h*(show)\h*["\w(-]' 1:keyword
 # Title, use and the like
-add-highlighter shared/shaft/code/ regex '^\h*(?:language|title|revision|use|require)\b(?=\h+["\w])(?!\h*=)' 0:keyword
+add-highlighter shared/shaft/code/ regex '^\h*(language|title|revision|use|require)\h+["\w]' 1:keyword
 # Kinds of parts
 add-highlighter shared/shaft/code/ regex '^\h*(?:supply|source|transmission|load)\h+\w+\h*:\h*(mains|battery|dc_bus|straight_line|straight_line_force|dc_motor|induction_motor|servo|person|measured_curve|gear|gearbox|belt|chain|drum|reeving|wheel|brake|freewheel|coupling|constant|viscous|quadratic|polynomial|hoist|incline|vehicle|flywheel)\b' 1:type
 # Kinds of quantities
@@ -47,7 +48,7 @@ add-highlighter shared/shaft/code/ regex '(?<![\w.])(?:and|or|not|if|then|else)\
 # Clauses
 add-highlighter shared/shaft/code/ regex '(?<![\w.])(?:as|at|with|within|only|because|from|measured|assumed|confidence|probability|points|csv|each|drives)\b' 0:keyword
 add-highlighter shared/shaft/code/ regex '\b(?:only\h+(in|where)|not\h+(in)|(of\h+value))\b' 1:keyword 2:keyword 3:keyword
-add-highlighter shared/shaft/code/ regex '\b(?:reduction|increase|teeth)(?=\h+\w)' 0:keyword
+add-highlighter shared/shaft/code/ regex '\b(reduction|increase|teeth)\h+\w' 1:keyword
 # Values
 add-highlighter shared/shaft/code/ regex '(?<![\w.])(?:true|false|yes|no|absent|rated)\b' 0:value
 add-highlighter shared/shaft/code/ regex '=\h*(S(?:10|[1-9]))\b' 1:value
@@ -64,21 +65,21 @@ evaluate-commands %sh{
     number='(?<![\w.])(\d+(?:\.\d+)?(?:[eE][+-]?\d+)?)'
     printf "add-highlighter shared/shaft/code/ regex '%s' 1:value 2:meta\n" "$number\\h*($unit)?"
     printf "add-highlighter shared/shaft/code/ regex '%s' 1:meta\n" "\\[\\h*($unit)\\h*\\]"
-    printf "add-highlighter shared/shaft/code/ regex '%s' 1:meta\n" "\\bas\\h+($unit)(?=\\h*(?:\$|#|only|not|at))"
+    printf "add-highlighter shared/shaft/code/ regex '%s' 1:meta\n" "\\bas\\h+($unit)\\h*(?:\$|#|only|not|at)"
 }
 
 define-command -hidden shaft-indent-on-new-line %{
     evaluate-commands -draft -itersel %{
         # Stand as the line before, one step further in behind a bracket that is left open.
         try %{ execute-keys -draft <semicolon> K <a-&> }
-        try %{ execute-keys -draft k <a-x> s '[{(\[]\h*(#[^\n]*)?$' <ret> j <a-gt> }
+        try %{ execute-keys -draft k <a-x> s '[\x7b(\[]\h*(#[^\n]*)?$' <ret> j <a-gt> }
         # Go on with a comment.
         try %{ execute-keys -draft k <a-x> s '^\h*\K##?\h+' <ret> y j <a-h> P }
     }
 }
 
 define-command -hidden shaft-indent-on-closing-brace %{
-    try %{ execute-keys -itersel -draft <a-h> <a-k> '^\h+\}$' <ret> h m s '\A|.\z' <ret> 1<a-&> }
+    try %{ execute-keys -itersel -draft <a-h> <a-k> '^\h+\x7d$' <ret> h m s '\A|.\z' <ret> 1<a-&> }
 }
 
 @
