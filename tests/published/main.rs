@@ -127,6 +127,16 @@ fn operating_points() {
 }
 
 #[test]
+fn induction_machines() {
+    run("induction.toml");
+}
+
+#[test]
+fn engines_turbines_and_fluids() {
+    run("sources.toml");
+}
+
+#[test]
 fn transmissions() {
     run("transmissions.toml");
 }

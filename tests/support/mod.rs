@@ -124,7 +124,7 @@ pub fn factor(unit: &str) -> f64 {
     let pi = std::f64::consts::PI;
     match unit {
         "" | "rad/s" | "N·m" | "N" | "W" | "A" | "V" | "s" | "m" | "m/s" | "m/s²" | "Hz" | "N·m/A"
-        | "V·s/rad" | "kg" | "kg·m²" | "rad/s²" => 1.0,
+        | "V·s/rad" | "Ω" | "m³/s" | "Pa" | "kg" | "kg·m²" | "rad/s²" => 1.0,
         "rpm" => pi / 30.0,
         "°" => pi / 180.0,
         "lbf·in" => 0.453_592_37 * 9.806_65 * 0.0254,

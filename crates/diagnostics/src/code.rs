@@ -109,6 +109,9 @@ codes! {
     PullUpDip = "pull-up-dip", Warning, "the source's dip on the way up leaves the drive hanging or nearly";
     PeakAsContinuous = "peak-as-continuous", Warning, "the drive runs on more than the source can give for long";
     Overspeed = "overspeed", Warning, "the drive can pass the highest speed a part allows";
+    Runaway = "runaway", Warning, "nothing bounds the speed of the drive";
+    HalfSpeedPeak = "half-speed-peak", Warning, "a motor runs near its peak power, where half of what it takes in warms it";
+    NoDerating = "no-derating", Warning, "the site is high or hot, and no table says what that takes from the source";
     LoadShare = "load-share", Warning, "sources on one shaft do not share the load, or one drives another";
     OutsideData = "outside-data", Warning, "a result taken outside the range in which a curve was measured";
     PartLimit = "part-limit", Warning, "a part is loaded above its own limit";

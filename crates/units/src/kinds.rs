@@ -178,6 +178,9 @@ pub static KINDS: &[Kind] = &[
     Kind::new("torque_constant", "torque constant", VOLT_SECOND, Some(-1))
         .units("N·m/A", &["N·m/A", "mN·m/A", "lbf·in/A", "ozf·in/A"])
         .means("torque per current"),
+    Kind::new("series_constant", "series constant", Dim::whole(2, 1, -2, -2, 0), Some(-1))
+        .units("N·m/A²", &["N·m/A²", "mN·m/A²"])
+        .means("torque per square of the current of a series-wound motor"),
     Kind::new("voltage_constant", "voltage constant", VOLT_SECOND, Some(-1))
         .units("V/(rad/s)", &["V/krpm", "V/rpm", "V·s/rad", "V/(rad/s)"])
         .means("induced voltage per rotational speed"),

@@ -1,6 +1,7 @@
 //! Every kind of part: one file a kind, with its registry row and its model beside it. A new kind is its file and
 //! one line in [`ROWS`].
 
+pub(crate) mod derating;
 mod fields;
 pub mod loads;
 mod reading;
@@ -15,13 +16,24 @@ pub static ROWS: &[&KindRow] = &[
     &supplies::mains::ROW,
     &supplies::battery::ROW,
     &supplies::dc_bus::ROW,
+    &supplies::hydraulic_unit::ROW,
+    &supplies::compressed_air::ROW,
     &sources::straight_line::ROW,
     &sources::straight_line_force::ROW,
     &sources::dc_motor::ROW,
+    &sources::series_motor::ROW,
     &sources::induction_motor::ROW,
+    &sources::induction_circuit::ROW,
     &sources::servo::ROW,
+    &sources::engine::ROW,
+    &sources::wind_turbine::ROW,
+    &sources::water_turbine::ROW,
+    &sources::hydraulic_motor::ROW,
+    &sources::pneumatic_motor::ROW,
     &sources::person::ROW,
     &sources::measured_curve::ROW,
+    &sources::polynomial::ROW,
+    &sources::constant_speed::ROW,
     &transmissions::gear::ROW,
     &transmissions::gearbox::ROW,
     &transmissions::reversing_gear::ROW,

@@ -4,6 +4,7 @@
 
 use crate::registry::Formula;
 
+pub mod air_motor;
 pub mod battery;
 pub mod belt;
 pub mod brake;
@@ -13,8 +14,11 @@ pub mod crank;
 pub mod dc_envelope;
 pub mod dc_machine;
 pub mod drag;
+pub mod engine;
 pub mod gear;
+pub mod hydraulic_motor;
 pub mod incline;
+pub mod induction_circuit;
 pub mod induction_curve;
 pub mod inertia;
 pub mod kloss;
@@ -24,13 +28,17 @@ pub mod rack;
 pub mod road;
 pub mod rope;
 pub mod screw;
+pub mod scaled_table;
+pub mod series_machine;
 pub mod servo_envelope;
 pub mod shaft;
 pub mod straight_line;
 pub mod synchronous;
 pub mod table;
 pub mod universal_joint;
+pub mod torque_polynomial;
 pub mod wheel;
+pub mod wind_rotor;
 pub mod winding;
 pub mod worm;
 
@@ -54,6 +62,7 @@ pub struct Checked {
 /// Every formula with its kernel.
 pub fn checked() -> impl Iterator<Item = &'static Checked> {
     let laws: &[&'static [Checked]] = &[
+        air_motor::CHECKED,
         battery::CHECKED,
         belt::CHECKED,
         brake::CHECKED,
@@ -63,8 +72,11 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         dc_envelope::CHECKED,
         dc_machine::CHECKED,
         drag::CHECKED,
+        engine::CHECKED,
         gear::CHECKED,
+        hydraulic_motor::CHECKED,
         incline::CHECKED,
+        induction_circuit::CHECKED,
         induction_curve::CHECKED,
         inertia::CHECKED,
         kloss::CHECKED,
@@ -74,13 +86,17 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         road::CHECKED,
         rope::CHECKED,
         screw::CHECKED,
+        scaled_table::CHECKED,
+        series_machine::CHECKED,
         servo_envelope::CHECKED,
         shaft::CHECKED,
         straight_line::CHECKED,
         synchronous::CHECKED,
         table::CHECKED,
         universal_joint::CHECKED,
+        torque_polynomial::CHECKED,
         wheel::CHECKED,
+        wind_rotor::CHECKED,
         winding::CHECKED,
         worm::CHECKED,
     ];

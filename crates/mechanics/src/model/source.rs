@@ -36,10 +36,14 @@ pub struct Characteristic {
     pub scaled: bool,
     /// The speed at which it comes to the drive through a clutch: an engine's idle speed.
     pub idle: Option<f64>,
+    /// Drop of its set speed from no torque to full torque, where it has one of its own.
+    pub droop: Option<f64>,
     /// Whether a set speed of the drive acts on it (servo, inverter, governor).
     pub follows_set_speed: bool,
     /// Whether it can run in both directions.
     pub reversible: bool,
+    /// The speed it holds whatever that takes: a source without limits, for sizing before a motor is chosen.
+    pub holds: Option<f64>,
 }
 
 impl Characteristic {
@@ -53,8 +57,10 @@ impl Characteristic {
             measured: None,
             scaled: false,
             idle: None,
+            droop: None,
             follows_set_speed: true,
             reversible: true,
+            holds: None,
         }
     }
 }

@@ -1,6 +1,7 @@
 //! What every drive and every part of a role has: settings, fields and results, as rows like those of the kinds.
 
 use super::{Bounds, Field, Need, ResultRow, ResultShape, Role, Shape};
+use crate::kinds::derating::{ALTITUDE_DERATING, AMBIENT_DERATING};
 use crate::solution::Mode;
 
 const fn quantity(name: &'static str, kind: &'static str, meaning: &'static str) -> ResultRow {
@@ -103,6 +104,17 @@ static SOURCE_RESULTS: &[ResultRow] = &[
     quantity("torque_reserve", "number", "most torque it can give (or hold back) here over what it gives"),
     quantity("force_reserve", "number", "most force it can give (or hold back) here over what it gives"),
     quantity(
+        "continuous_torque",
+        "torque",
+        "torque it can give for long at its rated duty, derated to the site of the drive",
+    ),
+    quantity(
+        "continuous_power",
+        "mechanical_power",
+        "power it can give for long at its rated duty, derated to the site of the drive",
+    ),
+    quantity("derating", "percentage", "share of the rated values that is left at the site of the drive"),
+    quantity(
         "load_share",
         "percentage",
         "its share of the power of all sources; below zero where another drives it",
@@ -136,14 +148,18 @@ pub fn common_results(role: Role) -> &'static [ResultRow] {
     }
 }
 
-static SOURCE_FIELDS: &[Field] = &[Field {
-    name: "on",
-    shape: Shape::Flag,
-    need: Need::Default { si: 1.0, why: "a source that stands in a drive drives" },
-    hard: Bounds::ANY,
-    plausible: Bounds::ANY,
-    meaning: "whether it drives; off, it gives and brakes nothing, but its inertia stays",
-}];
+static SOURCE_FIELDS: &[Field] = &[
+    Field {
+        name: "on",
+        shape: Shape::Flag,
+        need: Need::Default { si: 1.0, why: "a source that stands in a drive drives" },
+        hard: Bounds::ANY,
+        plausible: Bounds::ANY,
+        meaning: "whether it drives; off, it gives and brakes nothing, but its inertia stays",
+    },
+    ALTITUDE_DERATING,
+    AMBIENT_DERATING,
+];
 
 /// Fields every part of a role has, beyond those of its kind.
 #[must_use]

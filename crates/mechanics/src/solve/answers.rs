@@ -4,6 +4,7 @@ use std::sync::OnceLock;
 
 use super::assembly::Assembly;
 use super::extreme::Greatest;
+use super::held;
 use super::points::{Full, range};
 use super::rest::{Path, path};
 use super::roots::Crossing;
@@ -81,6 +82,11 @@ impl Solution {
     }
 
     pub(super) fn from_rest(drive: Assembly) -> Result<Self, Vec<Fault>> {
+        if let Some((holder, speed)) = held::holder(&drive) {
+            let point = held::state(&drive, holder, speed);
+            let here = sound(held::state(&drive, holder, speed));
+            return Ok(Self::new(drive, None, vec![point], here));
+        }
         let path = path(&drive);
         let points = path.meets.iter().map(|meet| State::at_meet(&drive, meet)).collect();
         let here = come_to(&drive, &path);
@@ -88,9 +94,10 @@ impl Solution {
     }
 
     pub(super) fn at_speed(drive: Assembly, x: f64) -> Self {
-        let here = stated::at(&drive, x).and_then(|state| {
-            if state.faults.is_empty() { Ok(state) } else { Err(Answer::Refused(state.faults)) }
-        });
+        let here = match held::holder(&drive) {
+            Some((holder, _)) => sound(held::at(&drive, holder, x)),
+            None => stated::at(&drive, x).and_then(sound),
+        };
         Self::new(drive, None, Vec::new(), here)
     }
 
@@ -192,7 +199,11 @@ fn come_to(drive: &Assembly, path: &Path) -> Result<State, Answer> {
         return Err(absent("it runs away: the load drives it and nothing holds it"));
     };
     debug_assert!(meet.crossing != Crossing::Rising);
-    let state = State::at_meet(drive, meet);
+    sound(State::at_meet(drive, meet))
+}
+
+/// A state that rests on no field that is not given.
+fn sound(state: State) -> Result<State, Answer> {
     if state.faults.is_empty() { Ok(state) } else { Err(Answer::Refused(state.faults)) }
 }
 

@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use super::balance::Program;
 use super::chain::{Between, Hung, Tree, tree};
+use super::held;
 use super::shafts::{directed, gears_engaged, inertias, root, self_locking_in_branch, shafts, stages, turn};
 use super::source::{SourceAt, sources};
 use crate::curve::Curve;
@@ -172,6 +173,9 @@ impl Assembly {
             None => None,
         };
         drive.sources = sources(&drive)?;
+        if let Some(fault) = held::more_than_one(&drive) {
+            return Err(vec![fault]);
+        }
         drive.scale = drive.natural_scale();
         drive.program = Program::new(&drive);
         Ok(drive)

@@ -3,7 +3,8 @@
 use super::answers::Solution;
 use super::assembly::Assembly;
 use super::points::pieces;
-use crate::model::{Model, Motion};
+use super::ratings::ratings;
+use crate::model::Motion;
 use crate::solution::Stability;
 
 /// Curves over the speed of one station.
@@ -91,10 +92,7 @@ impl Solution {
                 reached: self.here.as_ref().is_ok_and(|here| here.x == state.x),
             })
         });
-        let continuous = source.and_then(|s| match drive.models[s.at.part].as_ref() {
-            Model::Source(model) => model.ratings(drive.spec.settings.duty).effort,
-            _ => None,
-        });
+        let continuous = source.and_then(|s| ratings(drive, s).effort);
         Some(Chart {
             motion: station.motion,
             curves: vec![

@@ -3,6 +3,7 @@
 use super::answers::{Solution, absent};
 use super::assembly::Assembly;
 use super::extreme::{Greatest, greatest};
+use super::held;
 use super::points::pieces;
 use super::rest::Path;
 use super::run_up::{RunUp, reserve, run_up};
@@ -95,7 +96,7 @@ impl Solution {
 
     fn flag(&self, name: &str) -> Result<Answer, Answer> {
         let Some(path) = &self.path else {
-            return Err(absent("a stated speed is not reached from rest"));
+            return Err(self.no_way_from_rest());
         };
         if !path.refused.is_empty() {
             return Err(Answer::Refused(path.refused.clone()));
@@ -168,7 +169,7 @@ impl Solution {
     }
 
     pub(super) fn peak(&self) -> Result<Greatest, Answer> {
-        let peak = self.peak.get_or_init(|| {
+        let peak = *self.peak.get_or_init(|| {
             let drive = &self.drive;
             // Along measured curves: what lies beyond their last points is no more than an extrapolation.
             let measured = drive.sources.iter().filter_map(|s| {
@@ -178,7 +179,19 @@ impl Solution {
             let top = measured.fold(4.0 * drive.scale, f64::min);
             greatest(&Peak(&self.drive), &with_kinks(&self.drive, top)).filter(|p| p.value > 0.0)
         });
-        peak.ok_or_else(|| absent("no source is on"))
+        match peak {
+            _ if held::holder(&self.drive).is_some() => Err(held::without_limits()),
+            Some(peak) => Ok(peak),
+            None => Err(absent("no source is on")),
+        }
+    }
+
+    /// Why a state is not one that was reached from rest.
+    fn no_way_from_rest(&self) -> Answer {
+        match held::holder(&self.drive) {
+            Some(_) => held::without_limits(),
+            None => absent("a stated speed is not reached from rest"),
+        }
     }
 
     fn run_up(&self) -> Result<RunUp, Answer> {
@@ -193,7 +206,7 @@ impl Solution {
     fn moving(&self) -> Result<&Path, Answer> {
         self.here()?;
         match &self.path {
-            None => Err(absent("a stated speed is not reached from rest")),
+            None => Err(self.no_way_from_rest()),
             Some(path) if path.back => Err(absent("it does not run up: the load drives it back")),
             Some(path) if path.outcome == Outcome::Stalls => Err(absent("it does not run up: it stalls")),
             Some(path) => Ok(path),
@@ -237,7 +250,8 @@ impl Solution {
     pub(super) fn holds_set_speed(&self) -> Result<bool, Answer> {
         let here = self.here()?;
         let Some(set) = self.drive.set else { return Err(absent("the drive has no set speed")) };
-        let droop = self.drive.spec.settings.droop;
+        let own = self.drive.sources.iter().filter_map(|s| s.character.as_ref()?.droop);
+        let droop = own.fold(self.drive.spec.settings.droop, f64::max);
         Ok(here.x > 0.0 && here.x <= set * (1.0 + 1e-9) && here.x >= set * (1.0 - droop) * (1.0 - 1e-9))
     }
 

@@ -5,6 +5,7 @@ use super::assembly::{Far, Stage};
 use super::extreme::greatest;
 use super::points::range;
 use super::rest::about_to_move;
+use super::ratings::ratings;
 use super::run_up::{Loading, smooth_pieces};
 use super::state::State;
 use crate::curve::Law;
@@ -28,8 +29,11 @@ impl Solution {
         self.without_brake(&mut found);
         self.dip(&mut found);
         self.too_fast(&mut found);
+        self.runs_away(&mut found);
+        self.without_derating(&mut found);
         if let Ok(here) = &self.here {
             self.beyond_ratings(here, &mut found);
+            self.near_peak(here, &mut found);
             self.sharing(here, &mut found);
             self.outside(here, &mut found);
             self.beyond_limits(here, &mut found);
@@ -167,9 +171,8 @@ impl Solution {
             return;
         }
         for (source, effort) in self.drive.sources.iter().zip(&here.flow.sources) {
-            let Model::Source(model) = self.drive.models[source.at.part].as_ref() else { continue };
             let shaft = &self.drive.shafts[source.at.shaft];
-            let ratings = model.ratings(self.drive.spec.settings.duty);
+            let ratings = ratings(&self.drive, source);
             let speed = here.x * shaft.speed;
             let current = self.drawn(here, source, *effort, speed).current.unwrap_or(0.0);
             let checks = [
@@ -177,6 +180,9 @@ impl Solution {
                 (ratings.power, (effort * speed).abs(), "mechanical_power"),
                 (ratings.current, current.abs(), "current"),
             ];
+            if self.lighter_duty(source, found) {
+                continue;
+            }
             let beyond = checks.into_iter().find_map(|(limit, value, kind)| {
                 limit.filter(|limit| above(value, *limit)).map(|limit| (value, limit, kind))
             });

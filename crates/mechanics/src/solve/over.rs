@@ -4,6 +4,7 @@
 use super::assembly::Assembly;
 use super::extreme::greatest_of_dear;
 use super::flow::{Acting, Flow, flow};
+use super::held;
 use super::points::pieces;
 use super::share::{Shared, shared};
 use super::solve_at;
@@ -57,6 +58,13 @@ pub fn worst_over(
                    at single speeds";
         return Err(vec![Fault {
             part: question.part,
+            kind: FaultKind::Unsettled { how: Note::plain(how) },
+        }]);
+    }
+    if let Some((holder, _)) = held::holder(&drive) {
+        let how = "a source of constant speed is asked at single speeds, not over a range of them";
+        return Err(vec![Fault {
+            part: Some(drive.sources[holder].at.part),
             kind: FaultKind::Unsettled { how: Note::plain(how) },
         }]);
     }

@@ -2,12 +2,14 @@
 
 use super::answers::{Solution, absent};
 use super::assembly::{LoadAt, Stage};
+use super::held;
+use super::ratings::{derating, ratings};
 use super::source::SourceAt;
 use super::source_peak::search_peak;
 use super::state::State;
 use crate::drive::Port;
 use crate::fault::{Fault, FaultKind, Note};
-use crate::model::{Drawn, Known, LoadState, Model, SourceState, TransmissionState};
+use crate::model::{Drawn, Known, LoadState, Model, Motion, SourceState, TransmissionState};
 use crate::solution::{Answer, Marks, Mode};
 
 impl Solution {
@@ -69,6 +71,7 @@ impl Solution {
             "peak_power_speed" => {
                 return Ok(self.quantity(self.source_peak(source)?.0, kind, of_curve));
             }
+            "continuous_torque" | "continuous_power" | "derating" => return self.continuous(source, name),
             _ => {}
         }
         if !self.known_of_source(source, name) {
@@ -107,20 +110,33 @@ impl Solution {
         }
     }
 
+    /// What it can give for long where the drive stands.
+    fn continuous(&self, source: &SourceAt, name: &str) -> Result<Answer, Answer> {
+        let unknown = || absent("nothing says what this source can give for long");
+        let rated = ratings(&self.drive, source);
+        let (value, kind) = match name {
+            "derating" => (derating(&self.drive, source).ok(), "percentage"),
+            "continuous_power" => (rated.power, "mechanical_power"),
+            _ if self.drive.shafts[source.at.shaft].motion == Motion::Linear => return Ok(Answer::NoSuch),
+            _ => (rated.effort, "torque"),
+        };
+        Ok(self.quantity(value.ok_or_else(unknown)?, kind, Marks::default()))
+    }
+
     /// Whether a source has a result of this name at all.
     fn known_of_source(&self, source: &SourceAt, name: &str) -> bool {
         let own = self.drive.spec.parts[source.at.part].row.results.iter().any(|r| r.name == name);
         let common = ["power", "power_share", "mode", "load_share"].contains(&name);
         let reserve = match self.drive.shafts[source.at.shaft].motion {
-            crate::model::Motion::Rotary => "torque_reserve",
-            crate::model::Motion::Linear => "force_reserve",
+            Motion::Rotary => "torque_reserve",
+            Motion::Linear => "force_reserve",
         };
         let electrical = ["current", "voltage", "input_power", "efficiency"].contains(&name);
         own || common || electrical || name == reserve || self.effort_word(source.at.shaft, name)
     }
 
     /// Speed and power of a source's peak.
-    fn source_peak(&self, source: &SourceAt) -> Result<(f64, f64), Answer> {
+    pub(super) fn source_peak(&self, source: &SourceAt) -> Result<(f64, f64), Answer> {
         let index = self.drive.sources.iter().position(|own| std::ptr::eq(own, source));
         match index.and_then(|index| self.source_peaks.get(index)) {
             Some(known) => known.get_or_init(|| search_peak(source)).clone(),
@@ -139,6 +155,9 @@ impl Solution {
 
     /// The most it can give (or hold back) here over what it gives.
     fn reserve(&self, here: &State, source: &SourceAt, effort: f64, speed: f64) -> Result<Answer, Answer> {
+        if source.character.as_ref().is_some_and(|c| c.holds.is_some()) {
+            return Err(held::without_limits());
+        }
         let most = if effort >= 0.0 { source.most(speed) } else { source.braking(speed) };
         if effort == 0.0 || most == 0.0 {
             return Err(absent("it gives nothing here"));
@@ -172,7 +191,10 @@ impl Solution {
         let (value, kind) = match name {
             "current" => (drawn.current.map(f64::abs), "current"),
             "voltage" => (drawn.voltage, "voltage"),
-            "input_power" => (drawn.input_power.map(f64::abs), "electrical_power"),
+            "input_power" => {
+                let electrical = source.feed.supply.is_none_or(|supply| supply.pressure.is_none());
+                (drawn.input_power.map(f64::abs).filter(|_| electrical), "electrical_power")
+            }
             _ => {
                 let input = drawn.input_power.ok_or_else(unknown)?;
                 let output = effort * speed;
@@ -202,9 +224,12 @@ impl Solution {
             let speed = here.x * self.drive.shafts[source.at.shaft].speed;
             let drawn = self.drawn(here, source, if behind { 0.0 } else { *effort }, speed);
             let Some(each) = drawn.supply_current else {
-                return Err(absent("a source on this supply does not know its current"));
+                return Err(absent("a source on this supply does not know its current or flow"));
             };
             current += each * source.at.count;
+        }
+        if model.data().voltage.is_none() {
+            return Ok(model.answer(name, current).unwrap_or(Answer::NoSuch));
         }
         let voltage = model.terminal(current);
         match name {

@@ -2,7 +2,7 @@
 
 use super::assembly::Assembly;
 use super::flow::{Acting, Flow, flow};
-use super::points::{Meet, Net, meets, range};
+use super::points::{Meet, Net, meets, range, size};
 use super::roots::Crossing;
 use super::state::unknowns;
 use crate::curve::Law;
@@ -89,7 +89,7 @@ pub(crate) fn path(drive: &Assembly) -> Path {
         refused: Vec::new(),
         unsettled,
     };
-    if ahead.net > 0.0 && net.eval(near) > 0.0 {
+    if ahead.net > 0.0 && net.eval(near) > 0.0 && pushes(drive, &ahead) {
         let alone = about_to_move(drive, false, false);
         let self_moving = alone.net > 0.0;
         if self_moving {
@@ -118,6 +118,13 @@ pub(crate) fn path(drive: &Assembly) -> Path {
         driven_back(drive, &mut path, &behind);
     }
     path
+}
+
+/// Whether anything sets the drive moving: a source without torque at standstill does not start itself, however small the
+/// load, though the least speed would do.
+fn pushes(drive: &Assembly, ahead: &Flow<f64>) -> bool {
+    const TRACE: f64 = 1e-10;
+    ahead.driving > TRACE * size(drive, 0.5 * drive.scale) || about_to_move(drive, false, false).net > 0.0
 }
 
 /// The load wins: follows it backwards.

@@ -224,7 +224,8 @@ pub(crate) fn sort_out(drive: &Assembly) -> Result<Vec<Hangs>, Vec<Fault>> {
         let hung: Vec<usize> = (0..sources.len()).filter(|i| on_it(&&sources[*i])).collect();
         let Model::Supply(supply) = drive.models[index].as_ref() else { continue };
         let data = supply.data();
-        let stiff = data.resistance.unwrap_or(0.0) == 0.0 && data.current_limit.is_none();
+        let limited = data.current_limit.is_some() || data.flow_limit.is_some();
+        let stiff = data.resistance.unwrap_or(0.0) == 0.0 && !limited;
         if hung.len() < 2 || stiff {
             continue;
         }

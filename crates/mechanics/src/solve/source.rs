@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use super::assembly::Assembly;
 use super::chain::Hung;
+use super::ratings::derating;
 use super::shared::{Coupled, Group, Hangs, sort_out};
 use crate::fault::{Fault, FaultKind, Note};
 use crate::model::{Braking, Characteristic, Draw, Feed, Model, Supply, SupplyData};
@@ -129,6 +130,11 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
         };
         let Model::Source(model) = drive.models[at.part].as_ref() else { continue };
         if drive.spec.parts[at.part].on {
+            if let Err(found) = derating(drive, &source) {
+                faults.extend(found.into_iter().map(|f| Fault { part: Some(at.part), ..f }));
+                placed.push(source);
+                continue;
+            }
             match model.characteristic(&feed) {
                 Ok(mut character) => {
                     if !character.reversible && drive.shafts[at.shaft].sense < 0.0 {
@@ -167,7 +173,8 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
 /// The set speed at a source's shaft.
 fn governor(drive: &Assembly, at: &Hung, character: &Characteristic) -> Option<Governor> {
     let set = drive.set.filter(|_| character.follows_set_speed)? * drive.shafts[at.shaft].speed;
-    let droop = drive.spec.settings.droop;
+    let own = character.droop.filter(|_| drive.spec.settings.droop == 0.0);
+    let droop = own.unwrap_or(drive.spec.settings.droop);
     if droop <= 0.0 || droop.is_nan() {
         return Some(Governor { speed: set, stiffness: None });
     }

@@ -2,6 +2,7 @@
 
 use super::answers::absent;
 use super::extreme::greatest;
+use super::held;
 use super::points::pieces;
 use super::source::SourceAt;
 use crate::curve::Law;
@@ -20,6 +21,9 @@ impl Law for SourcePeak<'_> {
 /// Where a source gives the most power along its own curve, and how much.
 pub(super) fn search_peak(source: &SourceAt) -> Result<(f64, f64), Answer> {
     let Some(character) = &source.character else { return Err(absent("this source is off")) };
+    if character.holds.is_some() {
+        return Err(held::without_limits());
+    }
     let mut jumps = character.drive.jumps();
     jumps.extend(character.drive.kinks());
     jumps.sort_by(f64::total_cmp);

@@ -30,7 +30,7 @@ pub(super) fn constants(values: &Values, faults: &mut Vec<Fault>) -> Option<DcCo
 }
 
 /// Factor on the resistance as given, for the temperature of the winding.
-fn warming(values: &Values, faults: &mut Vec<Fault>) -> f64 {
+pub(super) fn warming(values: &Values, faults: &mut Vec<Fault>) -> f64 {
     match (values.si("resistance_at"), values.si("winding_temperature")) {
         (Some(given), Some(running)) => copper_resistance(1.0, given, running),
         (None, None) => 1.0,

@@ -1,11 +1,14 @@
 //! A source known by measured points.
 
 use super::straight_line::ratings;
+use crate::curve::Curve;
 use crate::fault::Fault;
 use crate::kinds::fields::{
     BRAKING, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, RATED_TORQUE, SUPPLY_IF_ANY, plain,
 };
 use crate::kinds::reading::{HoldBack, bad_value, braking, differ, done, inertia, missing, table};
+use crate::laws::induction_curve;
+use crate::laws::scaled_table::{self, ScaledTable};
 use crate::laws::table::{self as law, Table};
 use crate::model::{Characteristic, Feed, Known, Model, Motion, Ratings, Source, SourceState};
 use crate::registry::{ColumnRow, Field, KindRow, Need, Role, Shape};
@@ -17,12 +20,15 @@ pub static ROW: KindRow = KindRow {
     name: "measured_curve",
     title: "source by measured points",
     summary: "Torque over speed as measured or read from a sheet, at full command, straight between the points. Results \
-              outside the measured speeds are marked. The points hold at the voltage they were taken at, and at no \
-              other.",
+              outside the measured speeds are marked. At another voltage than that of the measurement the curve is scaled \
+              and every result marked so: on direct voltage speeds and torques go with it, on mains the torque by its \
+              square.",
     fields: FIELDS,
     results: &[],
-    formulas: &[law::BETWEEN],
+    formulas: &[law::BETWEEN, scaled_table::DC_VOLTAGE, induction_curve::VOLTAGE],
     cautions: &[
+        "Scaling to another voltage leaves losses, saturation and a controller's limits aside: measure again where it is \
+         close.",
         "A curve of peak torque says nothing of what the machine can do for long: give rated_torque.",
     ],
     example: "source engine: measured_curve { curve = points (speed [rpm], torque [N·m]) {\n    1000 150\n    3000 190\n    \
@@ -48,8 +54,8 @@ const COLUMNS: &[ColumnRow] = &[
     ColumnRow { name: "power", kind: "mechanical_power", optional: true },
 ];
 
-/// How far the supply's voltage may lie from that of the measurement.
-const VOLTAGE_SLACK: f64 = 0.05;
+/// A difference of voltages that is no other voltage yet.
+const SAME: f64 = 1e-3;
 
 #[derive(Debug)]
 struct Measured {
@@ -84,6 +90,25 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     done(Model::Source(Box::new(measured)), faults)
 }
 
+impl Measured {
+    /// The curve at the voltage of the feed, and whether that is another than the measurement's.
+    fn scaled(&self, feed: &Feed) -> (ScaledTable, bool) {
+        let plain = ScaledTable::plain(self.table.clone());
+        let supply = feed.supply.unwrap_or_default();
+        let (Some(measured), Some(given)) = (self.voltage, supply.voltage) else { return (plain, false) };
+        if !differ(measured, given, SAME) {
+            return (plain, false);
+        }
+        let ratio = given / measured;
+        let scaled = match supply.frequency {
+            // An induction machine keeps its speed, and its torque goes by the square of the voltage.
+            Some(_) => ScaledTable { effort: ratio * ratio, ..plain },
+            None => ScaledTable { effort: ratio, speed: ratio, ..plain },
+        };
+        (scaled, true)
+    }
+}
+
 impl Source for Measured {
     fn motion(&self) -> Motion {
         Motion::Rotary
@@ -94,18 +119,12 @@ impl Source for Measured {
     }
 
     fn characteristic(&self, feed: &Feed) -> Result<Characteristic, Vec<Fault>> {
-        let voltage = feed.supply.and_then(|supply| supply.voltage);
-        if let (Some(measured), Some(given)) = (self.voltage, voltage)
-            && differ(measured, given, VOLTAGE_SLACK)
-        {
-            let why = "measured at {0}, while the supply gives {1}: take the curve of that voltage, or give the motor by \
-                       its constants";
-            return Err(vec![bad_value("curve", why, &[(measured, "voltage"), (given, "voltage")])]);
-        }
-        let curve = self.table.clone();
-        let braking = braking(self.braking, feed, || Box::new(HoldBack(curve)));
-        let mut character = Characteristic::new(Box::new(self.table.clone()), braking, self.table.range().1);
-        character.measured = Some(self.table.range());
+        let (curve, scaled) = self.scaled(feed);
+        let range = curve.range();
+        let braking = braking(self.braking, feed, || Box::new(HoldBack(curve.clone())));
+        let mut character = Characteristic::new(Box::new(curve), braking, range.1);
+        character.measured = Some(range);
+        character.scaled = scaled;
         Ok(character)
     }
 
@@ -114,7 +133,15 @@ impl Source for Measured {
     }
 
     fn symbols(&self, state: &SourceState<'_>) -> Vec<(&'static str, f64)> {
-        self.table.symbols(state.speed, Motion::Rotary)
+        let (curve, scaled) = self.scaled(state.feed);
+        let mut out = self.table.symbols(state.speed / curve.speed, Motion::Rotary);
+        let supply = state.feed.supply.unwrap_or_default();
+        if let (true, Some(measured), Some(given)) = (scaled, self.voltage, supply.voltage) {
+            let torque = self.table.at(state.speed / curve.speed);
+            let name = if supply.frequency.is_some() { "U_n" } else { "U_1" };
+            out.extend([("T", torque), ("U", given), (name, measured)]);
+        }
+        out
     }
 }
 
@@ -178,8 +205,18 @@ mod tests {
             supply: Some(SupplyData { voltage: Some(voltage), ..SupplyData::default() }),
             ..ALONE
         };
-        assert!(source.characteristic(&feed(37.0)).is_ok());
-        assert!(source.characteristic(&feed(48.0)).is_err());
+        let same = source.characteristic(&feed(36.0)).unwrap();
+        assert!(!same.scaled);
+        // Closed form: speeds and torques of a dc machine both go with its voltage.
+        let more = source.characteristic(&feed(48.0)).unwrap();
+        assert!(more.scaled);
+        close(more.drive.at(rpm(4000.0)), 190.0 * 48.0 / 36.0, 1e-12);
+        assert_eq!(more.measured, Some((rpm(1000.0) * 48.0 / 36.0, rpm(6000.0) * 48.0 / 36.0)));
+        // An induction machine keeps its speed, and its torque goes by the square.
+        let mut mains = feed(32.4);
+        mains.supply = mains.supply.map(|supply| SupplyData { frequency: Some(50.0), ..supply });
+        let less = source.characteristic(&mains).unwrap();
+        close(less.drive.at(rpm(3000.0)), 190.0 * 0.81, 1e-12);
     }
 
     #[test]

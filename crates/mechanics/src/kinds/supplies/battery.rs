@@ -53,11 +53,25 @@ static FIELDS: &[Field] = &[
 ];
 
 /// Results of the kinds that are a voltage behind a resistance.
-pub(super) static RESULTS: &[ResultRow] = &[ResultRow {
-    name: "peak_power",
-    shape: ResultShape::Quantity("electrical_power"),
-    meaning: "the most power it can give, at half its open-circuit voltage; not a working point",
-}];
+pub(super) static RESULTS: &[ResultRow] = &[
+    result(
+        "peak_power",
+        "electrical_power",
+        "the most power it can give, at half its open-circuit voltage; not a working point",
+    ),
+    result("peak_power_current", "current", "current at its peak power"),
+    result("peak_power_voltage", "voltage", "voltage at its terminals at its peak power"),
+    result(
+        "peak_power_efficiency",
+        "percentage",
+        "power at its terminals over power inside, at its peak power",
+    ),
+    result("short_circuit_current", "current", "current into a short circuit at its terminals"),
+];
+
+const fn result(name: &'static str, kind: &'static str, meaning: &'static str) -> ResultRow {
+    ResultRow { name, shape: ResultShape::Quantity(kind), meaning }
+}
 
 /// A voltage behind a resistance, as a supply.
 #[derive(Debug)]
@@ -87,7 +101,19 @@ impl Stored {
 
     /// Its greatest power, where it is bounded.
     pub(super) fn given(&self) -> Vec<(&'static str, f64)> {
-        if self.law.resistance > 0.0 { vec![("peak_power", self.law.peak_power())] } else { Vec::new() }
+        let Thevenin { open_circuit, resistance } = self.law;
+        if resistance <= 0.0 {
+            return Vec::new();
+        }
+        let (peak, short) = (self.law.peak_power(), open_circuit / resistance);
+        let current = 0.5 * short;
+        vec![
+            ("peak_power", peak),
+            ("peak_power_current", current),
+            ("peak_power_voltage", self.law.voltage(current)),
+            ("peak_power_efficiency", peak / (open_circuit * current)),
+            ("short_circuit_current", short),
+        ]
     }
 }
 

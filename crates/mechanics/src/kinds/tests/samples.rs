@@ -37,6 +37,45 @@ fn source(name: &str) -> Option<Values> {
         "measured_curve" => {
             Values::default().with("curve", table(&[("speed", &[10.0, 300.0]), ("torque", &[9.0, 5.0])]))
         }
+        "series_motor" => si(&[("series_constant", 0.02), ("resistance", 0.3), ("loss_torque", 0.01)]),
+        "induction_circuit" => si(&[
+            ("poles", 4.0),
+            ("rated_frequency", 50.0),
+            ("stator_resistance", 0.9),
+            ("stator_reactance", 1.6),
+            ("rotor_resistance", 0.8),
+            ("rotor_reactance", 1.9),
+            ("magnetizing_reactance", 45.0),
+            ("rotational_loss", 90.0),
+            ("current_limit", 40.0),
+        ]),
+        "engine" => si(&[("idle_speed", 80.0), ("governed_speed", 240.0), ("droop", 0.05)])
+            .with("curve", table(&[("speed", &[80.0, 150.0, 240.0]), ("torque", &[150.0, 210.0, 180.0])])),
+        "wind_turbine" => si(&[("diameter", 0.8), ("wind_speed", 8.0), ("air_density", 1.2)]).with(
+            "curve",
+            table(&[("tip_speed_ratio", &[2.0, 7.0, 12.0]), ("power_coefficient", &[0.08, 0.44, 0.0])]),
+        ),
+        "water_turbine" => si(&[("head", 12.0), ("measured_head", 10.0)]).with(
+            "curve",
+            table(&[
+                ("speed", &[0.0, 50.0, 150.0]),
+                ("torque", &[420.0, 300.0, 0.0]),
+                ("flow", &[0.09, 0.08, 0.06]),
+            ]),
+        ),
+        "hydraulic_motor" => {
+            si(&[("displacement", 1.6e-5), ("mechanical_efficiency", 0.9), ("volumetric_efficiency", 0.94)])
+        }
+        "pneumatic_motor" => si(&[
+            ("rated_pressure", 6e5),
+            ("stall_torque", 8.0),
+            ("no_load_speed", 400.0),
+            ("air_consumption", 0.01),
+        ]),
+        "polynomial" => {
+            si(&[("constant_torque", 12.0), ("viscous_torque", 0.05), ("quadratic_torque", -0.0008)])
+        }
+        "constant_speed" => si(&[("speed", 150.0)]),
         _ => return None,
     })
 }
@@ -137,6 +176,8 @@ pub(super) fn sample(row: &KindRow) -> Values {
             ("open_circuit_voltage", 37.0),
             ("frequency", 50.0),
             ("resistance", 0.1),
+            ("pressure", 6e5),
+            ("flow_limit", 0.05),
         ])),
         Role::Source => source(row.name),
         Role::Transmission => transmission(row.name),

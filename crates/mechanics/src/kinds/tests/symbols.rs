@@ -32,6 +32,10 @@ fn battery() -> SupplyData {
     }
 }
 
+fn oil_or_air() -> SupplyData {
+    SupplyData { pressure: Some(5e6), flow_limit: Some(1.0), ..SupplyData::default() }
+}
+
 fn built(row: &KindRow) -> Model {
     (row.build)(&sample(row)).unwrap_or_else(|faults| panic!("{}: {faults:?}", row.name))
 }
@@ -69,15 +73,24 @@ fn declared(row: &KindRow, symbols: Vec<(&'static str, f64)>) -> Symbols {
 fn sources_do_what_they_print() {
     for row in ROWS {
         let Model::Source(source) = built(row) else { continue };
-        let supply = if row.name == "induction_motor" { mains() } else { battery() };
+        let supply = match row.name {
+            "induction_motor" | "induction_circuit" => mains(),
+            "hydraulic_motor" | "pneumatic_motor" => oil_or_air(),
+            _ => battery(),
+        };
         let feed = Feed { supply: Some(supply), machines: 1.0, ambient: None, altitude: None };
         let curve = source.characteristic(&feed).unwrap_or_else(|faults| panic!("{faults:?}")).drive;
         let speed = if source.motion() == Motion::Linear { 1.3 } else { 120.0 };
         let effort = curve.at(speed);
         let symbols = declared(row, source.symbols(&SourceState { speed, effort, feed: &feed }));
+        // What holds its speed whatever it takes has no torque of its own to print.
+        if row.formulas.is_empty() {
+            continue;
+        }
         let (name, factor) = match row.name {
             "straight_line_force" => ("force", 1.0),
             "servo" => ("torque_above_corner", 1.0),
+            "water_turbine" => ("torque_at_head", 1.0),
             "induction_motor" => {
                 let torque = value(row, "torque_below_breakdown", &symbols).unwrap();
                 let at_slip = if symbols["s"] > symbols["s_b"] { torque } else { symbols["K"] };
