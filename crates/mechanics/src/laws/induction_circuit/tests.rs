@@ -69,14 +69,18 @@ fn power_is_conserved() {
     let with_core = Circuit { core: Some(90.0), ..machine.circuit }.on(machine.field_speed);
     for slip in [-0.05_f64, 0.001, 0.02, 0.3, 1.0] {
         let (input, _) = with_core.power(slip);
-        let stator = 3.0 * with_core.phase_current(slip).powi(2) * 0.294;
-        let rotor = 3.0 * with_core.rotor_current(slip).powi(2) * 0.144;
+        let stator = 3.0 * square(with_core.phase_current(slip)) * 0.294;
+        let rotor = 3.0 * square(with_core.rotor_current(slip)) * 0.144;
         let gap = with_core.air_gap_torque(slip) * with_core.field_speed;
         close(rotor, gap * slip, 1e-9);
         let core = input - stator - gap;
         let voltage = rotor_voltage(&with_core, slip);
         close(core, 3.0 * voltage * voltage / 90.0, 1e-8);
     }
+}
+
+fn square(x: f64) -> f64 {
+    x * x
 }
 
 fn rotor_voltage(machine: &CircuitCurve, slip: f64) -> f64 {
@@ -100,7 +104,7 @@ fn a_current_limit_lowers_the_torque_by_its_square() {
     let limited = CircuitCurve { current_limit: Some(60.0), rotational: None, ..published() };
     let full = published();
     let current: f64 = full.phase_current(1.0);
-    close(limited.at(0.0), full.air_gap_torque(1.0) * (60.0 / current).powi(2), 1e-12);
+    close(limited.at(0.0), full.air_gap_torque(1.0) * square(60.0 / current), 1e-12);
     close(limited.at(rpm(1190.0)), full.air_gap_torque(limited.slip(rpm(1190.0))), 1e-12);
 }
 
