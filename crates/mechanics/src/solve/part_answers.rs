@@ -3,7 +3,6 @@
 use super::answers::{Solution, absent};
 use super::assembly::{LoadAt, Stage};
 use super::held;
-use super::ratings::{derating, ratings};
 use super::source::SourceAt;
 use super::source_peak::search_peak;
 use super::state::State;
@@ -108,19 +107,6 @@ impl Solution {
                 Ok(model.answer(name, &state).unwrap_or(Answer::NoSuch))
             }
         }
-    }
-
-    /// What it can give for long where the drive stands.
-    fn continuous(&self, source: &SourceAt, name: &str) -> Result<Answer, Answer> {
-        let unknown = || absent("nothing says what this source can give for long");
-        let rated = ratings(&self.drive, source);
-        let (value, kind) = match name {
-            "derating" => (derating(&self.drive, source).ok(), "percentage"),
-            "continuous_power" => (rated.power, "mechanical_power"),
-            _ if self.drive.shafts[source.at.shaft].motion == Motion::Linear => return Ok(Answer::NoSuch),
-            _ => (rated.effort, "torque"),
-        };
-        Ok(self.quantity(value.ok_or_else(unknown)?, kind, Marks::default()))
     }
 
     /// Whether a source has a result of this name at all.
