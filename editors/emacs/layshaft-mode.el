@@ -67,9 +67,12 @@
 
 (defconst layshaft-kinds
   '(
-    "mains" "battery" "dc_bus" "straight_line" "straight_line_force" "dc_motor" "induction_motor" "servo"
-    "person" "measured_curve" "gear" "gearbox" "belt" "chain" "drum" "reeving" "wheel" "brake" "freewheel"
-    "coupling" "constant" "viscous" "quadratic" "polynomial" "hoist" "incline" "vehicle" "flywheel")
+    "mains" "battery" "dc_bus" "hydraulic_unit" "compressed_air" "straight_line" "straight_line_force"
+    "dc_motor" "series_motor" "induction_motor" "induction_circuit" "servo" "engine" "wind_turbine"
+    "water_turbine" "hydraulic_motor" "pneumatic_motor" "person" "measured_curve" "polynomial"
+    "constant_speed" "gear" "gearbox" "reversing_gear" "variable" "planetary" "worm" "belt" "chain"
+    "friction_pulley" "drum" "reeving" "wheel" "screw" "rack" "crank" "shaft" "universal_joint" "brake"
+    "freewheel" "coupling" "clutch" "constant" "viscous" "quadratic" "hoist" "incline" "vehicle" "flywheel")
   "Kinds of parts.")
 
 (defconst layshaft-quantities
@@ -80,12 +83,12 @@
     "electrical_power" "heat" "moment_of_inertia" "flywheel_effect" "torsional_stiffness" "angular_momentum"
     "viscous_torque_coefficient" "quadratic_torque_coefficient" "cubic_power_coefficient" "stiffness"
     "viscous_force_coefficient" "quadratic_force_coefficient" "cubic_force_coefficient" "momentum" "voltage"
-    "current" "resistance" "inductance" "capacitance" "charge" "torque_constant" "voltage_constant"
-    "speed_constant" "force_constant" "speed_regulation" "pressure" "gauge_pressure" "absolute_pressure"
-    "flow" "mass_flow" "dynamic_viscosity" "kinematic_viscosity" "temperature" "temperature_difference"
-    "temperature_coefficient" "thermal_resistance" "thermal_conductance" "heat_transfer_coefficient"
-    "heat_capacity" "specific_heat_capacity" "specific_energy" "specific_consumption" "specific_power"
-    "power_per_area")
+    "current" "resistance" "inductance" "capacitance" "charge" "torque_constant" "series_constant"
+    "voltage_constant" "speed_constant" "force_constant" "speed_regulation" "pressure" "gauge_pressure"
+    "absolute_pressure" "flow" "mass_flow" "dynamic_viscosity" "kinematic_viscosity" "temperature"
+    "temperature_difference" "temperature_coefficient" "thermal_resistance" "thermal_conductance"
+    "heat_transfer_coefficient" "heat_capacity" "specific_heat_capacity" "specific_energy"
+    "specific_consumption" "specific_power" "power_per_area")
   "Kinds of quantities.")
 
 (defconst layshaft--symbol

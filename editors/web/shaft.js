@@ -23,9 +23,12 @@ const knownValues = new Set([
   "pi", "standard_gravity"
 ]);
 const kinds = new Set([
-  "mains", "battery", "dc_bus", "straight_line", "straight_line_force", "dc_motor", "induction_motor",
-  "servo", "person", "measured_curve", "gear", "gearbox", "belt", "chain", "drum", "reeving", "wheel",
-  "brake", "freewheel", "coupling", "constant", "viscous", "quadratic", "polynomial", "hoist", "incline",
+  "mains", "battery", "dc_bus", "hydraulic_unit", "compressed_air", "straight_line", "straight_line_force",
+  "dc_motor", "series_motor", "induction_motor", "induction_circuit", "servo", "engine", "wind_turbine",
+  "water_turbine", "hydraulic_motor", "pneumatic_motor", "person", "measured_curve", "polynomial",
+  "constant_speed", "gear", "gearbox", "reversing_gear", "variable", "planetary", "worm", "belt", "chain",
+  "friction_pulley", "drum", "reeving", "wheel", "screw", "rack", "crank", "shaft", "universal_joint",
+  "brake", "freewheel", "coupling", "clutch", "constant", "viscous", "quadratic", "hoist", "incline",
   "vehicle", "flywheel"
 ]);
 const quantities = new Set([
@@ -36,11 +39,12 @@ const quantities = new Set([
   "torsional_stiffness", "angular_momentum", "viscous_torque_coefficient", "quadratic_torque_coefficient",
   "cubic_power_coefficient", "stiffness", "viscous_force_coefficient", "quadratic_force_coefficient",
   "cubic_force_coefficient", "momentum", "voltage", "current", "resistance", "inductance", "capacitance",
-  "charge", "torque_constant", "voltage_constant", "speed_constant", "force_constant", "speed_regulation",
-  "pressure", "gauge_pressure", "absolute_pressure", "flow", "mass_flow", "dynamic_viscosity",
-  "kinematic_viscosity", "temperature", "temperature_difference", "temperature_coefficient",
-  "thermal_resistance", "thermal_conductance", "heat_transfer_coefficient", "heat_capacity",
-  "specific_heat_capacity", "specific_energy", "specific_consumption", "specific_power", "power_per_area"
+  "charge", "torque_constant", "series_constant", "voltage_constant", "speed_constant", "force_constant",
+  "speed_regulation", "pressure", "gauge_pressure", "absolute_pressure", "flow", "mass_flow",
+  "dynamic_viscosity", "kinematic_viscosity", "temperature", "temperature_difference",
+  "temperature_coefficient", "thermal_resistance", "thermal_conductance", "heat_transfer_coefficient",
+  "heat_capacity", "specific_heat_capacity", "specific_energy", "specific_consumption", "specific_power",
+  "power_per_area"
 ]);
 const symbol = "(?:hp_electric|short_ton|hp_boiler|long_ton|gal_imp|gal_us|mmH2O|inH2O|inch|thou|krpm|slug|barg|bara|psig|psia|mH2O|degC|degF|[%]|‰|ppm|deg|rev|nmi|mil|min|rpm|rps|mph|g_n|cfm|lbm|kgf|lbf|ozf|psi|atm|cSt|°C|°F|°|in|ft|yd|mi|ha|kn|lb|oz|kp|gf|tf|hp|PS|cP|cd|r|h|d|t|(?:T|G|M|k|h|da|d|c|m|μ|µ|u|n|p)?(?:Ohm|ohm|Hz|Wh|VA|Pa|Ω|Ah|Wb|m|l|L|g|N|J|W|A|V|H|F|C|T)|(?:m)?(?:bar|K)|(?:m|k)?(?:mol)|(?:m|μ|µ|u)?(?:rad|S)|(?:m|μ|µ|u|n|p)?(?:s))";
 
