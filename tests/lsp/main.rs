@@ -5,8 +5,11 @@ mod support;
 
 mod abuse;
 mod client;
+mod complete;
 mod edits;
 mod features;
+mod folder;
 mod life;
+mod places;
 mod pull;
 mod same;

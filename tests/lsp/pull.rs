@@ -1,40 +1,9 @@
 //! Findings that are asked for, files that use one another, files that change on the disk.
 
-#![allow(clippy::disallowed_methods, reason = "these tests write files of their own")]
-
-use std::fs;
-use std::path::PathBuf;
-
 use serde_json::{Value, json};
 
 use crate::client::Client;
-
-/// A folder of its own for a test.
-struct Folder(PathBuf);
-
-impl Folder {
-    fn new(name: &str) -> Self {
-        let path = std::env::temp_dir().join(format!("layshaft-lsp-{name}-{}", std::process::id()));
-        let _ = fs::remove_dir_all(&path);
-        fs::create_dir_all(&path).expect("a folder for the test");
-        Self(fs::canonicalize(path).expect("it is there"))
-    }
-
-    fn write(&self, name: &str, text: &str) -> String {
-        fs::write(self.0.join(name), text).expect("a file for the test");
-        self.uri(name)
-    }
-
-    fn uri(&self, name: &str) -> String {
-        format!("file://{}/{name}", self.0.display())
-    }
-}
-
-impl Drop for Folder {
-    fn drop(&mut self) {
-        let _ = fs::remove_dir_all(&self.0);
-    }
-}
+use crate::folder::Folder;
 
 fn pulling() -> Value {
     json!({

@@ -4,6 +4,8 @@
 
 pub mod base;
 pub mod call_hierarchy;
+pub mod completion;
+mod cursor;
 pub mod definition;
 pub mod diagnostics;
 pub mod documents;
@@ -16,11 +18,15 @@ pub mod implementations;
 pub mod lenses;
 pub mod links;
 mod markup;
+mod names;
 mod numbers;
+pub mod on_type;
 pub mod references;
 pub mod sensitivity;
+pub mod signature;
 pub mod snapshot;
 pub mod symbols;
+pub mod tokens;
 mod tree;
 pub mod type_definition;
 

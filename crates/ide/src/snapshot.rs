@@ -11,6 +11,8 @@ use layshaft_semantics::index::{Index, Reference, Target};
 use layshaft_semantics::{Analysis, Files, Memo};
 use layshaft_syntax::Item;
 
+use crate::names::Names;
+
 /// One state of a spec and the files it uses. Immutable; a later state is another snapshot.
 #[derive(Clone, Debug)]
 pub struct Snapshot {
@@ -21,6 +23,7 @@ pub struct Snapshot {
     habits: Arc<OnceLock<Habits>>,
     criteria: Arc<OnceLock<ByName>>,
     drives: Arc<OnceLock<ByName>>,
+    names: Arc<OnceLock<Names>>,
 }
 
 /// Indices of criteria or drives under the place of a name.
@@ -41,6 +44,7 @@ impl Snapshot {
             habits: Arc::default(),
             criteria: Arc::default(),
             drives: Arc::default(),
+            names: Arc::default(),
         }
     }
 
@@ -85,6 +89,11 @@ impl Snapshot {
     #[must_use]
     pub fn habits(&self) -> &Habits {
         self.habits.get_or_init(|| sheet::habits(&self.analysis))
+    }
+
+    /// The names of each file, found at the first question.
+    pub(crate) fn names(&self) -> &Names {
+        self.names.get_or_init(|| Names::of(self))
     }
 
     /// The criteria that ask about a drive, by index; found for all drives at the first question.

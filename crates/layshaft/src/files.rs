@@ -21,6 +21,8 @@ pub const TABLE_LIMIT: u64 = 100_000_000;
 pub const ROOT_MARK: &str = "layshaft.toml";
 /// The ending of a spec.
 pub const SPEC_ENDING: &str = "shaft";
+/// Names of one folder that are listed at most.
+const MOST_LISTED: usize = 2_000;
 /// Folders nested deeper than this are not searched.
 const DEEPEST: usize = 64;
 
@@ -57,6 +59,28 @@ impl Root {
     #[must_use]
     pub fn below(&self, folder: &Path, file: &OsStr) -> Option<String> {
         self.relative(&fs::canonicalize(folder).ok()?.join(file))
+    }
+
+    /// What a folder inside the root holds, sorted: each name, and whether it is a folder. Names that begin with a
+    /// point and names that are not in Unicode are left out, and of a very full folder the rest.
+    ///
+    /// # Errors
+    /// The folder cannot be listed, or lies outside.
+    pub fn list(&self, folder: &str) -> io::Result<Vec<(String, bool)>> {
+        let real = fs::canonicalize(self.folder.join(folder))?;
+        if !real.starts_with(&self.folder) {
+            return Err(io::ErrorKind::PermissionDenied.into());
+        }
+        let mut found = Vec::new();
+        for entry in fs::read_dir(real)?.take(MOST_LISTED) {
+            let entry = entry?;
+            let Ok(name) = entry.file_name().into_string() else { continue };
+            if !name.starts_with('.') {
+                found.push((name, entry.path().is_dir()));
+            }
+        }
+        found.sort();
+        Ok(found)
     }
 
     /// A path below the root with `/` between names; `None` if it is elsewhere or not in Unicode.

@@ -43,6 +43,10 @@ impl Disk for OnDisk {
         files::specs_below(folder).unwrap_or_default()
     }
 
+    fn list(&self, root: &Path, folder: &str) -> Vec<(String, bool)> {
+        Root::at(root).list(folder).unwrap_or_default()
+    }
+
     fn runs(&self, process: u32) -> Option<bool> {
         files::runs(process)
     }

@@ -1,6 +1,8 @@
 //! What the client can do, as far as the server acts upon it.
 
-use tower_lsp::lsp_types::{ClientCapabilities, InitializeParams, PositionEncodingKind};
+use tower_lsp::lsp_types::{
+    ClientCapabilities, CompletionClientCapabilities, InitializeParams, PositionEncodingKind,
+};
 
 use crate::convert::Encoding;
 
@@ -25,6 +27,8 @@ pub struct Client {
     pub refresh: Refresh,
     /// Whether an edit may name the version it is for.
     pub versioned_edits: bool,
+    /// What a list of entries may hold.
+    pub completion: Completion,
     /// Whether charts may stand in a hover.
     pub charts: bool,
     /// The process to end with.
@@ -40,6 +44,35 @@ pub struct Refresh {
     pub hints: bool,
     /// Code lenses.
     pub lenses: bool,
+    /// Semantic tokens.
+    pub tokens: bool,
+}
+
+/// What a list of entries may hold.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Completion {
+    /// Texts with places to be filled in.
+    pub snippets: bool,
+    /// One edit for putting a word in and one for writing it anew.
+    pub insert_replace: bool,
+    /// A few words beside the label.
+    pub label_details: bool,
+    /// One range for all entries.
+    pub default_range: bool,
+}
+
+impl Completion {
+    fn new(of: &CompletionClientCapabilities) -> Self {
+        let item = of.completion_item.as_ref();
+        let on = |flag: Option<bool>| flag == Some(true);
+        let defaults = of.completion_list.as_ref().and_then(|list| list.item_defaults.as_ref());
+        Self {
+            snippets: on(item.and_then(|of| of.snippet_support)),
+            insert_replace: on(item.and_then(|of| of.insert_replace_support)),
+            label_details: on(item.and_then(|of| of.label_details_support)),
+            default_range: defaults.is_some_and(|known| known.iter().any(|one| one == "editRange")),
+        }
+    }
 }
 
 impl Client {
@@ -72,11 +105,17 @@ impl Client {
                     .and_then(|of| of.diagnostic.as_ref())
                     .and_then(|of| of.refresh_support)),
                 hints: on(workspace.and_then(|of| of.inlay_hint.as_ref()).and_then(|of| of.refresh_support)),
+                tokens: on(workspace
+                    .and_then(|of| of.semantic_tokens.as_ref())
+                    .and_then(|of| of.refresh_support)),
                 lenses: on(workspace.and_then(|of| of.code_lens.as_ref()).and_then(|of| of.refresh_support)),
             },
             versioned_edits: on(workspace
                 .and_then(|of| of.workspace_edit.as_ref())
                 .and_then(|of| of.document_changes)),
+            completion: document
+                .and_then(|of| of.completion.as_ref())
+                .map_or_else(Completion::default, Completion::new),
             process: params.process_id,
             charts: options.and_then(|of| of.get("charts")).and_then(serde_json::Value::as_bool)
                 == Some(true),

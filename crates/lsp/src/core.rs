@@ -11,7 +11,9 @@ use std::time::{Duration, Instant};
 
 use serde_json::Value;
 use tower_lsp::jsonrpc::{Error, ErrorCode, Response};
-use tower_lsp::lsp_types::request::{CodeLensRefresh, InlayHintRefreshRequest, WorkspaceDiagnosticRefresh};
+use tower_lsp::lsp_types::request::{
+    CodeLensRefresh, InlayHintRefreshRequest, SemanticTokensRefresh, WorkspaceDiagnosticRefresh,
+};
 use tower_lsp::lsp_types::{MessageType, Url};
 
 use crate::client::Client;
@@ -242,6 +244,9 @@ impl Core {
         }
         if may.hints {
             self.out.ask::<InlayHintRefreshRequest>(&(), Asked::Favour);
+        }
+        if may.tokens {
+            self.out.ask::<SemanticTokensRefresh>(&(), Asked::Favour);
         }
         if may.lenses {
             self.out.ask::<CodeLensRefresh>(&(), Asked::Favour);

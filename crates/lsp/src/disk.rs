@@ -50,6 +50,9 @@ pub trait Disk: Send {
     /// The specs below a folder, sorted.
     fn specs(&self, folder: &Path) -> Vec<PathBuf>;
 
+    /// What a folder below a root holds, sorted: each name, and whether it is a folder.
+    fn list(&self, root: &Path, folder: &str) -> Vec<(String, bool)>;
+
     /// Whether a process runs; none where that cannot be told.
     fn runs(&self, process: u32) -> Option<bool>;
 }

@@ -13,6 +13,7 @@ use tower_lsp::lsp_types::Url;
 
 use crate::disk::{Disk, Place, Stamp, below};
 use crate::document::Document;
+use crate::handlers::paint;
 
 /// An open spec.
 #[derive(Debug, Default)]
@@ -28,6 +29,8 @@ pub struct Spec {
     pub told: Option<Instant>,
     /// The last good hint of each declaration.
     pub hints: BTreeMap<String, Hint>,
+    /// The semantic tokens that the client was last told.
+    pub painted: paint::Kept,
     /// Every file that was asked for, found or not.
     pub reads: BTreeSet<PathBuf>,
 }

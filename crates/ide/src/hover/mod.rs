@@ -25,9 +25,11 @@ use crate::Snapshot;
 
 pub(crate) use criterion::{page as criterion_page, verdict};
 pub(crate) use drive::{points as drive_points, rows as drive_rows};
-pub(crate) use field::{entries, key};
+pub(crate) use field::{entries, key, wants};
 pub(crate) use kinds::{part_kind, quantity_kind};
+pub(crate) use result::result as result_page;
 pub(crate) use result::row_of;
+pub(crate) use words::{constant, function, role_of, unit};
 
 /// Cases listed in a hover; the result table has them all.
 pub(crate) const MOST: usize = 16;

@@ -16,7 +16,7 @@ use crate::Snapshot;
 use crate::markup::{self, Page, code, text};
 use crate::numbers::{entry, port_of};
 
-pub(super) fn result(
+pub(crate) fn result(
     snapshot: &Snapshot,
     drive: FileSpan,
     part: Option<FileSpan>,

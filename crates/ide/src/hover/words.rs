@@ -39,7 +39,7 @@ pub(super) fn keyword(snapshot: &Snapshot, file: FileId, item: &Item, here: u32)
 }
 
 /// A unit by itself, in the head of a table or behind `as`: its kind and its size in SI.
-fn unit(word: &str) -> Option<String> {
+pub(crate) fn unit(word: &str) -> Option<String> {
     let unit = layshaft_units::parse_unit(word).ok()?;
     let kind = kind_of(&unit.ty).map_or_else(|| number(&unit.ty.describe()), |kind| kind.title.to_owned());
     let si = joined(&written(unit.to_si(1.0)), &unit.ty.si_unit());
@@ -47,13 +47,13 @@ fn unit(word: &str) -> Option<String> {
 }
 
 /// A function, with its arguments.
-pub(super) fn function(word: &str) -> Option<String> {
+pub(crate) fn function(word: &str) -> Option<String> {
     let function = Function::from_name(word)?;
     Some(format!("{}: {} (takes {})", code(function.name()), function.meaning(), function.arity_text()))
 }
 
 /// A constant of the language.
-pub(super) fn constant(word: &str) -> Option<String> {
+pub(crate) fn constant(word: &str) -> Option<String> {
     match word {
         "pi" => Some("`pi` = 3.14159…: half a turn over one radian".to_owned()),
         "standard_gravity" => Some(

@@ -3,20 +3,21 @@
 use tower_lsp::jsonrpc::Result;
 use tower_lsp::lsp_types::request::RegisterCapability;
 use tower_lsp::lsp_types::{
-    CallHierarchyServerCapability, CodeLensOptions, DiagnosticOptions, DiagnosticServerCapabilities,
-    DidChangeWatchedFilesRegistrationOptions, DocumentLinkOptions, ExecuteCommandOptions, FileSystemWatcher,
-    FoldingRangeProviderCapability, GlobPattern, HoverProviderCapability, ImplementationProviderCapability,
-    InitializeParams, InitializeResult, InlayHintOptions, InlayHintServerCapabilities, OneOf,
-    PositionEncodingKind, Registration, RegistrationParams, RenameOptions, SaveOptions,
-    SelectionRangeProviderCapability, ServerCapabilities, ServerInfo, TextDocumentSyncCapability,
-    TextDocumentSyncKind, TextDocumentSyncOptions, TextDocumentSyncSaveOptions, WorkDoneProgressOptions,
-    WorkspaceFoldersServerCapabilities, WorkspaceServerCapabilities,
+    CallHierarchyServerCapability, CodeLensOptions, CompletionOptions, DiagnosticOptions,
+    DiagnosticServerCapabilities, DidChangeWatchedFilesRegistrationOptions, DocumentLinkOptions,
+    ExecuteCommandOptions, FileSystemWatcher, FoldingRangeProviderCapability, GlobPattern,
+    HoverProviderCapability, ImplementationProviderCapability, InitializeParams, InitializeResult,
+    InlayHintOptions, InlayHintServerCapabilities, OneOf, PositionEncodingKind, Registration,
+    RegistrationParams, RenameOptions, SaveOptions, SelectionRangeProviderCapability, ServerCapabilities,
+    ServerInfo, TextDocumentSyncCapability, TextDocumentSyncKind, TextDocumentSyncOptions,
+    TextDocumentSyncSaveOptions, WorkDoneProgressOptions, WorkspaceFoldersServerCapabilities,
+    WorkspaceServerCapabilities,
 };
 
 use crate::client::Client;
 use crate::convert::Encoding;
 use crate::core::Core;
-use crate::handlers::{commands, settings};
+use crate::handlers::{commands, complete, paint, settings, typing};
 use crate::outbox::{Asked, value};
 
 /// What may change answers though it is not open.
@@ -100,6 +101,14 @@ fn features() -> ServerCapabilities {
             work_done_progress_options: WorkDoneProgressOptions::default(),
         }))),
         code_lens_provider: Some(CodeLensOptions { resolve_provider: Some(false) }),
+        completion_provider: Some(CompletionOptions {
+            resolve_provider: Some(true),
+            trigger_characters: Some(complete::TRIGGERS.map(String::from).to_vec()),
+            ..CompletionOptions::default()
+        }),
+        signature_help_provider: Some(typing::signature_options()),
+        semantic_tokens_provider: Some(paint::options().into()),
+        document_on_type_formatting_provider: Some(typing::typing_options()),
         document_symbol_provider: Some(OneOf::Left(true)),
         workspace_symbol_provider: Some(OneOf::Left(true)),
         folding_range_provider: Some(FoldingRangeProviderCapability::Simple(true)),

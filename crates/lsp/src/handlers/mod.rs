@@ -2,15 +2,18 @@
 
 mod calls;
 pub mod commands;
+mod complete;
 pub mod diagnostics;
 mod format;
 mod initialize;
 mod names;
 mod navigate;
 mod outline;
+pub mod paint;
 mod read;
 pub mod settings;
 mod sync;
+mod typing;
 
 use std::sync::Arc;
 
@@ -45,6 +48,13 @@ pub fn request(core: &mut Core, method: &str, params: Value) -> Result<Value> {
         "textDocument/inlayHint" => typed(core, params, read::inlay),
         "inlayHint/resolve" => typed(core, params, read::resolve_inlay),
         "textDocument/codeLens" => typed(core, params, read::lens),
+        "textDocument/completion" => typed(core, params, complete::complete),
+        "completionItem/resolve" => typed(core, params, complete::resolve),
+        "textDocument/signatureHelp" => typed(core, params, typing::signature),
+        "textDocument/semanticTokens/full" => typed(core, params, paint::full),
+        "textDocument/semanticTokens/full/delta" => typed(core, params, paint::delta),
+        "textDocument/semanticTokens/range" => typed(core, params, paint::range),
+        "textDocument/onTypeFormatting" => typed(core, params, typing::typed),
         "textDocument/documentSymbol" => typed(core, params, outline::document),
         "workspace/symbol" => typed(core, params, outline::workspace),
         "textDocument/foldingRange" => typed(core, params, outline::folding),
