@@ -21,6 +21,7 @@ pub mod incline;
 pub mod induction_circuit;
 pub mod induction_curve;
 pub mod inertia;
+pub mod inverter_envelope;
 pub mod kloss;
 pub mod person_power;
 pub mod planetary;
@@ -79,6 +80,7 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         induction_circuit::CHECKED,
         induction_curve::CHECKED,
         inertia::CHECKED,
+        inverter_envelope::CHECKED,
         kloss::CHECKED,
         person_power::CHECKED,
         planetary::CHECKED,

@@ -32,10 +32,14 @@ pub struct Characteristic {
     pub top_speed: f64,
     /// The range of speeds its data were measured in.
     pub measured: Option<(f64, f64)>,
+    /// The range of efforts its data were measured in, where the speeds follow the supply.
+    pub measured_effort: Option<(f64, f64)>,
     /// Whether the data were taken at other conditions and scaled to these.
     pub scaled: bool,
     /// The speed at which it comes to the drive through a clutch: an engine's idle speed.
     pub idle: Option<f64>,
+    /// The field that would have to say at which speed it runs where the drive sets none.
+    pub needs_set_speed: Option<&'static str>,
     /// Drop of its set speed from no torque to full torque, where it has one of its own.
     pub droop: Option<f64>,
     /// Whether a set speed of the drive acts on it (servo, inverter, governor).
@@ -55,9 +59,11 @@ impl Characteristic {
             braking,
             top_speed,
             measured: None,
+            measured_effort: None,
             scaled: false,
             idle: None,
             droop: None,
+            needs_set_speed: None,
             follows_set_speed: true,
             reversible: true,
             holds: None,

@@ -36,6 +36,7 @@ impl Solution {
             self.near_peak(here, &mut found);
             self.sharing(here, &mut found);
             self.outside(here, &mut found);
+            self.beyond_points(here, &mut found);
             self.beyond_limits(here, &mut found);
             self.grip(here, &mut found);
             self.slipping(here, &mut found);

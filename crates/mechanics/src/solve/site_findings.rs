@@ -11,6 +11,9 @@ use crate::values::Duty;
 /// Altitude (m) and ambient temperature (K) up to which rated values hold: IEC 60034-1 (from memory).
 const SITE: (f64, f64) = (1000.0, 313.15);
 
+/// Torque over the most measured from which a straight line is trusted no more without a word.
+const EXTRAPOLATED: f64 = 1.1;
+
 /// Share of its peak power from which a motor counts as run at its peak.
 const NEAR_PEAK: f64 = 0.8;
 
@@ -99,6 +102,21 @@ impl Solution {
                 let note = Note { template, quantities: vec![(1.0 - power / input, "percentage")] };
                 found.push(Finding { code: "half-speed-peak", part: Some(source.at.part), note });
             }
+        }
+    }
+
+    /// A motor that gives more than at any of its measured points.
+    pub(super) fn beyond_points(&self, here: &State, found: &mut Vec<Finding>) {
+        for (source, effort) in self.drive.sources.iter().zip(&here.flow.sources) {
+            let measured = source.character.as_ref().and_then(|c| c.measured_effort);
+            let Some((low, high)) = measured.filter(|(_, high)| *effort > EXTRAPOLATED * high) else {
+                continue;
+            };
+            let kind = self.drive.shafts[source.at.shaft].motion.effort_kind();
+            let template = "it gives {0}, and its points were measured from {1} to {2}: the result is no more than an \
+                            extrapolation";
+            let note = Note { template, quantities: vec![(*effort, kind), (low, kind), (high, kind)] };
+            found.push(Finding { code: "outside-data", part: Some(source.at.part), note });
         }
     }
 

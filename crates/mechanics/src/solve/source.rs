@@ -145,6 +145,12 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
                             kind: FaultKind::Chain { how: Note::plain(how) },
                         });
                     }
+                    if let (Some(field), None) = (character.needs_set_speed, drive.set) {
+                        let why = "an inverter runs its motor at a speed or a frequency that is set: the drive's set_speed, or \
+                                   this";
+                        let kind = FaultKind::Missing { any_of: vec![vec![field]], why: Note::plain(why) };
+                        faults.push(Fault { part: Some(at.part), kind });
+                    }
                     if let Hangs::Coupled(group, index) = hangs {
                         character.drive = Box::new(Coupled { group: Arc::clone(&group), index });
                         source.coupled = Some((group, index));

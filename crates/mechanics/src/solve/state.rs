@@ -71,7 +71,16 @@ impl State {
         }
         let mode = mode(drive, x, &flow);
         let faults = unknowns(drive, x, &flow);
-        Self { x, stability: None, vertical: false, faults, marks: marks(drive, x), mode, behind, flow }
+        Self {
+            x,
+            stability: None,
+            vertical: false,
+            faults,
+            marks: marks(drive, x, &flow),
+            mode,
+            behind,
+            flow,
+        }
     }
 
     /// Mechanical power of all sources.
@@ -129,7 +138,7 @@ fn efforts(drive: &Assembly, flow: &Flow<f64>) -> f64 {
 }
 
 /// Whether any curve is used outside its measured range at this speed, or scaled.
-fn marks(drive: &Assembly, x: f64) -> Marks {
+fn marks(drive: &Assembly, x: f64, flow: &Flow<f64>) -> Marks {
     let mut marks = Marks::default();
     let outside = |range: Option<(f64, f64)>, speed: f64| {
         range.is_some_and(|(lo, hi)| {
@@ -137,8 +146,10 @@ fn marks(drive: &Assembly, x: f64) -> Marks {
             speed < lo - slack || speed > hi + slack
         })
     };
-    for source in &drive.sources {
+    for (source, effort) in drive.sources.iter().zip(&flow.sources) {
         let Some(character) = &source.character else { continue };
+        // What gives nothing rests on no data.
+        marks.outside |= *effort != 0.0 && outside(character.measured_effort, *effort);
         marks.outside |= outside(character.measured, x * drive.shafts[source.at.shaft].speed);
         marks.scaled |= character.scaled;
     }

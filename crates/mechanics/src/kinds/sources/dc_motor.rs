@@ -16,7 +16,7 @@ use crate::laws::winding;
 use crate::model::{Braking, Characteristic, Draw, Feed, Known, Model, Motion, Ratings, Source, SourceState};
 use crate::registry::{Bounds, ColumnRow, Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
 use crate::solution::{Answer, Marks};
-use crate::values::{Duty, Values};
+use crate::values::{Duty, FieldValue, Values};
 
 /// The row.
 pub static ROW: KindRow = KindRow {
@@ -175,6 +175,8 @@ const fn result(name: &'static str, kind: &'static str, meaning: &'static str) -
 #[derive(Debug)]
 struct DcMotor {
     dc: DcConstants,
+    /// The torques of its measured points.
+    measured: Option<(f64, f64)>,
     current_limit: Option<f64>,
     inertia: Known,
     braking: Option<&'static str>,
@@ -197,6 +199,7 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     }
     let motor = DcMotor {
         dc,
+        measured: torques(values),
         current_limit: values.si("current_limit"),
         inertia,
         braking: values.word("braking"),
@@ -208,6 +211,13 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         },
     };
     done(Model::Source(Box::new(motor)), faults)
+}
+
+/// The least and the most torque of the measured points.
+pub(super) fn torques(values: &Values) -> Option<(f64, f64)> {
+    let Some(FieldValue::Points(table)) = values.get("point") else { return None };
+    let torques = table.column("torque")?.iter().copied();
+    Some(torques.fold((f64::INFINITY, f64::NEG_INFINITY), |(lo, hi), t| (f64::min(lo, t), f64::max(hi, t))))
 }
 
 fn rated_torque(values: &Values, dc: &DcConstants) -> Option<f64> {
@@ -276,6 +286,7 @@ impl Source for DcMotor {
         let mut character =
             Characteristic::new(Box::new(envelope), braking(self.braking, feed, hold), top_speed);
         character.follows_set_speed = self.current_limit.is_some();
+        character.measured_effort = self.measured;
         Ok(character)
     }
 

@@ -1,13 +1,18 @@
 //! A three-phase cage motor from its name plate and its catalogue.
 
+use super::circuit_fields::CONTROL;
+use super::plate_control::{Feeding, MAX_TORQUE, OUTPUT_FREQUENCY, Started, feeding};
 use super::plate_reading::{PULL_UP_SPEED, Plate, plate};
+use super::starting::{CHANGEOVER_SPEED, STARTING, STARTING_VOLTAGE};
 use super::straight_line::ratings;
+use crate::curve::Curve;
 use crate::fault::{Fault, Note};
 use crate::kinds::fields::{
-    FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, SUPPLY, default, positive, quantity, range,
+    BRAKING, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, RATED_DUTY, SUPPLY, default, positive, quantity, range,
 };
-use crate::kinds::reading::{HoldBack, bad_value, differ, done, inertia, missing, returning};
+use crate::kinds::reading::{HoldBack, bad_value, braking, differ, done, inertia, missing, returning};
 use crate::laws::induction_curve::{self, CataloguePoint, InductionCurve, flux_factor};
+use crate::laws::inverter_envelope::{self, InverterEnvelope};
 use crate::laws::{kloss, synchronous};
 use crate::model::{Characteristic, Feed, Known, Model, Motion, Ratings, Source, SourceState};
 use crate::registry::{Bounds, Field, KindRow, Need, ResultRow, ResultShape, Role, Shape};
@@ -19,9 +24,9 @@ pub static ROW: KindRow = KindRow {
     role: Role::Source,
     name: "induction_motor",
     title: "three-phase induction motor",
-    summary: "A cage motor switched directly on the mains, from its name plate and the torque ratios of its catalogue. \
-              Torque goes by the square of the voltage; above its synchronous speed it brakes. A name plate gives no \
-              current away from the rated point.",
+    summary: "A cage motor from its name plate and the torque ratios of its catalogue: on the mains, started in star or \
+              softly, or on an inverter. Torque goes by the square of the voltage; above its synchronous speed it brakes. \
+              A name plate gives no current away from the rated point.",
     fields: FIELDS,
     results: RESULTS,
     formulas: &[
@@ -32,6 +37,7 @@ pub static ROW: KindRow = KindRow {
         kloss::TORQUE,
         induction_curve::STRETCHED,
         induction_curve::VOLTAGE,
+        inverter_envelope::WEAKENED,
     ],
     cautions: &[
         "Locked-rotor, pull-up and breakdown torque are for seconds: the rated torque at its duty is what the motor can \
@@ -118,9 +124,19 @@ static FIELDS: &[Field] = &[
         range(0.05, 1e5),
         "current in each line at rated power",
     ),
+    CONTROL,
+    OUTPUT_FREQUENCY,
+    MAX_TORQUE,
+    STARTING,
+    STARTING_VOLTAGE,
+    CHANGEOVER_SPEED,
     MAX_SPEED,
     INERTIA,
     FLYWHEEL_EFFECT,
+    Field {
+        meaning: "what its inverter does while the load drives; on the mains the supply decides",
+        ..BRAKING
+    },
 ];
 
 /// A torque of the catalogue, usually a multiple of the rated one.
@@ -155,6 +171,8 @@ const FREQUENCIES: (f64, f64) = (0.8, 1.25);
 #[derive(Debug)]
 struct InductionMotor {
     plate: Plate,
+    feeding: Feeding,
+    braking: Option<&'static str>,
     inertia: Known,
     ratings: Ratings,
 }
@@ -169,7 +187,9 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         current: values.si("rated_current"),
         ..ratings(values, "rated_torque")
     };
-    done(Model::Source(Box::new(InductionMotor { plate, inertia, ratings })), faults)
+    let feeding = feeding(values, &plate, &mut faults);
+    let motor = InductionMotor { plate, feeding, braking: values.word("braking"), inertia, ratings };
+    done(Model::Source(Box::new(motor)), faults)
 }
 
 fn given(values: &Values) -> Vec<(&'static str, f64)> {
@@ -184,19 +204,22 @@ impl InductionMotor {
         let Some(supply) = feed.supply else {
             return Err(vec![missing(&[&["supply"]], "voltage and frequency of the mains it hangs on")]);
         };
-        let (Some(voltage), Some(frequency)) = (supply.voltage, supply.frequency) else {
-            let why = "an induction motor needs a supply with voltage and frequency: mains";
-            return Err(vec![bad_value("supply", why, &[])]);
+        let Some(voltage) = supply.voltage else {
+            return Err(vec![bad_value("supply", "this supply has no voltage", &[])]);
         };
         let plate = &self.plate;
+        let (voltage, frequency) = self.feeding.terminals(plate, voltage, supply.frequency)?;
         let ratio = frequency / plate.frequency;
-        if !(FREQUENCIES.0..=FREQUENCIES.1).contains(&ratio) {
+        let direct = matches!(self.feeding, Feeding::Direct(_));
+        if direct && !(FREQUENCIES.0..=FREQUENCIES.1).contains(&ratio) {
             let why = "at {0} a plate for {1} says too little: the law leaves the stator's resistance aside";
             let quantities = [(frequency, "frequency"), (plate.frequency, "frequency")];
             return Err(vec![bad_value("supply", why, &quantities)]);
         }
+        let field_speed = synchronous::synchronous_speed(frequency, plate.poles);
+        self.feeding.reaches(field_speed)?;
         Ok(InductionCurve {
-            field_speed: synchronous::synchronous_speed(frequency, plate.poles),
+            field_speed,
             rated_field_speed: plate.field_speed,
             breakdown: plate.breakdown,
             locked_rotor: plate.locked_rotor,
@@ -205,11 +228,18 @@ impl InductionMotor {
         })
     }
 
+    /// What it gives at the most where its inverter holds a speed.
+    fn envelope(&self, curve: &InductionCurve) -> Option<InverterEnvelope> {
+        self.feeding.envelope(curve, &self.plate, self.ratings.max_speed)
+    }
+
     /// Whether the supply is another than the plate's.
     fn scaled(&self, feed: &Feed) -> bool {
-        let other = |value: Option<f64>, rated| value.is_some_and(|value| differ(value, rated, 1e-3));
-        feed.supply.is_some_and(|supply| {
-            other(supply.voltage, self.plate.voltage) || other(supply.frequency, self.plate.frequency)
+        let supply = feed.supply.unwrap_or_default();
+        let Some(voltage) = supply.voltage else { return false };
+        let at = self.feeding.terminals(&self.plate, voltage, supply.frequency);
+        at.is_ok_and(|(voltage, frequency)| {
+            differ(voltage, self.plate.voltage, 1e-3) || differ(frequency, self.plate.frequency, 1e-3)
         })
     }
 }
@@ -226,10 +256,23 @@ impl Source for InductionMotor {
     fn characteristic(&self, feed: &Feed) -> Result<Characteristic, Vec<Fault>> {
         let curve = self.curve(feed)?;
         let top_speed = curve.field_speed;
-        let braking = returning(feed, || Box::new(HoldBack(curve.clone())));
-        let mut character = Characteristic::new(Box::new(curve), braking, top_speed);
+        let on_inverter = !matches!(self.feeding, Feeding::Direct(_));
+        let hold = || -> Box<dyn Curve> { Box::new(HoldBack(curve.clone())) };
+        let mut character = if let Some(envelope) = self.envelope(&curve) {
+            let braking = braking(self.braking, feed, || Box::new(envelope));
+            Characteristic::new(Box::new(envelope), braking, top_speed)
+        } else {
+            let braking = if on_inverter { braking(self.braking, feed, hold) } else { returning(feed, hold) };
+            let drive: Box<dyn Curve> = match self.feeding {
+                Feeding::Direct(Some(start)) => Box::new(Started { curve: curve.clone(), start }),
+                _ => Box::new(curve.clone()),
+            };
+            Characteristic::new(drive, braking, top_speed)
+        };
+        let holds_speed = matches!(self.feeding, Feeding::SetSpeed { .. });
         character.scaled = self.scaled(feed);
-        character.follows_set_speed = false;
+        character.follows_set_speed = holds_speed;
+        character.needs_set_speed = holds_speed.then_some("output_frequency");
         Ok(character)
     }
 
@@ -239,13 +282,26 @@ impl Source for InductionMotor {
 
     fn answer(&self, name: &str, state: &SourceState<'_>) -> Option<Answer> {
         let curve = self.curve(state.feed).ok()?;
+        if self.envelope(&curve).is_some()
+            && ["slip", "locked_rotor_torque", "pull_up_torque"].contains(&name)
+        {
+            return Some(Answer::Absent(Note::plain(
+                "its inverter sets the frequency as the speed needs it",
+            )));
+        }
+        let first = match self.feeding {
+            Feeding::Direct(Some(start)) => start.torque,
+            _ => 1.0,
+        };
         let torque = |torque: f64| (torque * curve.factor, "torque");
         let (si, kind) = match name {
             "synchronous_speed" => (curve.field_speed, "rotational_speed"),
             "slip" => (synchronous::slip(curve.field_speed, state.speed), "percentage"),
-            "locked_rotor_torque" => torque(curve.over_slip(curve.field_speed / curve.rated_field_speed)),
+            "locked_rotor_torque" => {
+                torque(first * curve.over_slip(curve.field_speed / curve.rated_field_speed))
+            }
             "pull_up_torque" => match curve.pull_up {
-                Some(point) => torque(point.torque),
+                Some(point) => torque(first * point.torque),
                 None => return Some(Answer::Absent(Note::plain("no pull-up torque is given"))),
             },
             "breakdown_torque" => torque(curve.breakdown.torque),
@@ -259,6 +315,14 @@ impl Source for InductionMotor {
     fn symbols(&self, state: &SourceState<'_>) -> Vec<(&'static str, f64)> {
         let plate = &self.plate;
         let Ok(curve) = self.curve(state.feed) else { return Vec::new() };
+        if let Some(envelope) = self.envelope(&curve) {
+            return vec![
+                ("T_b", envelope.breakdown),
+                ("w_s", envelope.field),
+                ("w", state.speed),
+                ("s_b", envelope.slip),
+            ];
+        }
         let slip = (curve.field_speed - state.speed) / curve.rated_field_speed;
         let kloss = |slip| kloss::torque(plate.breakdown.torque, plate.breakdown.slip, slip);
         let supply = state.feed.supply.unwrap_or_default();

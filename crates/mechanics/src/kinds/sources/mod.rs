@@ -13,6 +13,7 @@ pub mod induction_motor;
 mod line_reading;
 pub mod measured_curve;
 pub mod person;
+mod plate_control;
 mod plate_reading;
 pub mod pneumatic_motor;
 pub mod polynomial;

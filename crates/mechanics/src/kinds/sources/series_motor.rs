@@ -1,5 +1,6 @@
 //! A series-wound dc motor.
 
+use super::dc_motor::torques;
 use super::dc_reading::warming;
 use super::series_draw::SeriesDraw;
 use super::series_reading::magnet;
@@ -150,6 +151,8 @@ const fn result(name: &'static str, kind: &'static str, meaning: &'static str) -
 #[derive(Debug)]
 struct SeriesMotor {
     magnet: Magnet,
+    /// The torques of its measured points.
+    measured: Option<(f64, f64)>,
     resistance: f64,
     current_limit: Option<f64>,
     inertia: Known,
@@ -169,6 +172,7 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let current = values.si("rated_current");
     let of_current = current.map(|current| magnet.torque(current));
     let motor = SeriesMotor {
+        measured: torques(values).filter(|_| magnet.saturates()),
         resistance,
         current_limit: values.si("current_limit"),
         inertia,
@@ -235,6 +239,7 @@ impl Source for SeriesMotor {
         let top_speed = envelope.speed(low);
         let mut character = Characteristic::new(Box::new(envelope), Braking::Cannot, top_speed);
         character.follows_set_speed = self.current_limit.is_some();
+        character.measured_effort = self.measured;
         Ok(character)
     }
 

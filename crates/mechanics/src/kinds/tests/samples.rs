@@ -49,6 +49,17 @@ fn source(name: &str) -> Option<Values> {
             ("rotational_loss", 90.0),
             ("current_limit", 40.0),
         ]),
+        "polynomial" => {
+            si(&[("constant_torque", 12.0), ("viscous_torque", 0.05), ("quadratic_torque", -0.0008)])
+        }
+        "constant_speed" => si(&[("speed", 150.0)]),
+        _ => return prime_mover(name),
+    })
+}
+
+/// Engines, turbines, motors on oil and air.
+fn prime_mover(name: &str) -> Option<Values> {
+    Some(match name {
         "engine" => si(&[("idle_speed", 80.0), ("governed_speed", 240.0), ("droop", 0.05)])
             .with("curve", table(&[("speed", &[80.0, 150.0, 240.0]), ("torque", &[150.0, 210.0, 180.0])])),
         "wind_turbine" => si(&[("diameter", 0.8), ("wind_speed", 8.0), ("air_density", 1.2)]).with(
@@ -72,10 +83,6 @@ fn source(name: &str) -> Option<Values> {
             ("no_load_speed", 400.0),
             ("air_consumption", 0.01),
         ]),
-        "polynomial" => {
-            si(&[("constant_torque", 12.0), ("viscous_torque", 0.05), ("quadratic_torque", -0.0008)])
-        }
-        "constant_speed" => si(&[("speed", 150.0)]),
         _ => return None,
     })
 }
