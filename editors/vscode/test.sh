@@ -84,6 +84,7 @@ if ! cmp -s package-lock.json node_modules/.lock-as-installed; then
 fi
 npm run --silent check
 npm run --silent test
+node e2e/snippets.mjs
 npm run --silent build >/dev/null
 (
     cd "$work/package"

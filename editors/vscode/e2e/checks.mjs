@@ -22,6 +22,7 @@ export function prepare(workspace) {
     fs.writeFileSync(path.join(workspace, name), text);
   };
   write("broken.shaft", hoist.replace("rated_power = 4 kW", "rated_power = 4 kg"));
+  write("unit.shaft", hoist.replace("rated_power = 4 kW", "rated_power = 4 kw"));
   write("messy.shaft", hoist.replace("let block_mass = 60 kg", "let   block_mass=60   kg"));
   write("named.shaft", hoist.replace('title "Mill hoist H3"', 'title "To be renamed"'));
 }
@@ -139,7 +140,241 @@ async function rename(editor) {
   };
   await until("the new name where it is declared and where it is used", async () => (await changed()) === 2);
   await editor.goto(60, 1);
-  return until("the new name in the cases below", async () => ((await changed()) === 3 ? "in 4 lines" : undefined));
+  return until("the new name in the cases below", async () => ((await changed()) === 2 ? "in 4 lines" : undefined));
+}
+
+async function quickFix(editor) {
+  await editor.open("unit.shaft");
+  await until("a wavy line", async () => (await editor.active.locator(".squiggly-error").count()) > 0);
+  await editor.goto(11, 21);
+  await editor.page.keyboard.press("Control+.");
+  const menu = editor.page.locator(".action-widget .monaco-list-row");
+  const offer = await until("the fix among what is offered", async () => {
+    const rows = await menu.allInnerTexts();
+    return rows.find((row) => row.includes("kW"));
+  });
+  await editor.picture("quick-fix");
+  await menu.filter({ hasText: offer.trim().split("\n")[0] }).first().click();
+  await until("the unit mended", async () => /rated_power = 4 kW/.test((await editor.line("rated_power")) ?? ""));
+  await until("no wavy line", async () => (await editor.active.locator(".squiggly-error").count()) === 0);
+  return offer;
+}
+
+async function completion(editor) {
+  await editor.open("named.shaft");
+  await until("the server answers", async () => /14\.90/.test((await editor.line("drive lift")) ?? ""));
+  await editor.goto(17, 26);
+  await editor.page.keyboard.press("End");
+  await editor.page.keyboard.press("Enter");
+  await editor.page.keyboard.type("bra");
+  const rows = editor.page.locator(".suggest-widget.visible .monaco-list-row");
+  const offered = await until("the field among what is offered", async () => {
+    const texts = await rows.allInnerTexts();
+    return texts.find((text) => /^braking/.test(text.trim()));
+  });
+  await editor.picture("completion");
+  await editor.page.keyboard.press("Escape");
+  return offered;
+}
+
+/** What the panel shows now, as texts. */
+async function panelSays(panel) {
+  return panel.evaluate(() => {
+    const text = (selector) => document.querySelector(selector)?.textContent ?? "";
+    const rows = (id) => [...document.querySelectorAll(`#${id} tbody tr`)].map((row) => [...row.children].map((cell) => cell.textContent));
+    return {
+      title: text("h1"),
+      of: text(".of"),
+      station: text(".chip.picked"),
+      here: text(".chart .tick.here"),
+      names: [...document.querySelectorAll(".chart .name")].map((name) => name.textContent),
+      required: document.querySelector(".chart polyline.required")?.getAttribute("points") ?? "",
+      points: rows("points"),
+      cases: rows("cases"),
+      criteria: rows("criteria"),
+      results: rows("results"),
+      picked: document.querySelector('input[name="case"]:checked')?.id ?? "",
+      notice: text(".notice"),
+      focused: document.activeElement?.id ?? "",
+    };
+  });
+}
+
+async function panelOpens(editor) {
+  await editor.closeAll();
+  await editor.open(HOIST);
+  await until("the server answers", () => solved(editor));
+  await editor.goto(9, 10);
+  await editor.command("Layshaft: Show Results");
+  const panel = await editor.panel();
+  const says = await until("the chart", async () => {
+    const says = await panelSays(panel);
+    return says.required === "" ? undefined : says;
+  });
+  must(says.title === "lift", `another drive: ${says.title}`);
+  must(says.station === "at the cursor: motor", `another station: ${says.station}`);
+  must(says.here === "1447 rpm", `another speed at the axis: ${says.here}`);
+  for (const name of ["available", "required", "runs here", "most 9.668 kW"]) {
+    must(says.names.includes(name), `${name} is not written in the chart: ${says.names}`);
+  }
+  must(says.points.length === 1 && says.points[0].includes("1447 rpm") && /stable/.test(says.points[0][0]), `points: ${says.points}`);
+  must(says.cases.length === 1 + 15, `${says.cases.length} cases`);
+  must(says.criteria.length === 6, `${says.criteria.length} criteria`);
+  must(says.results.some(([name, value]) => name === "motor.peak_power" && value === "9.668 kW"), "no peak power in the table");
+  must(editor.complaints.length === 0, `the browser refused: ${editor.complaints[0]}`);
+  await editor.picture("panel-dark");
+  return `${says.points[0].join(" ")}; ${says.cases.length - 1} cases`;
+}
+
+async function panelCase(editor) {
+  const panel = await editor.panel();
+  const before = await panelSays(panel);
+  const label = before.cases.find(([name]) => name.includes("test_load") && name.includes("reverse"))?.[0];
+  must(label !== undefined, `no such case: ${before.cases.map(([name]) => name)}`);
+  await panel.locator("#cases label", { hasText: label }).locator("input").check();
+  const says = await until(`the case ${label}`, async () => {
+    const says = await panelSays(panel);
+    return says.of.includes(label) && says.required !== before.required ? says : undefined;
+  });
+  must(says.here !== before.here, "the speed reached is the same");
+  must(says.points.some((point) => point.includes("braking")), `a load let down is braked: ${says.points}`);
+  await panel.evaluate(() => window.scrollTo(0, 0));
+  await editor.picture("panel-case");
+  // The same with keys: one down, and back to the cursor.
+  await panel.locator("#case-cursor").focus();
+  await editor.page.keyboard.press("Space");
+  await until("the cursor's case", async () => (await panelSays(panel)).picked === "case-cursor");
+  await editor.page.keyboard.press("ArrowDown");
+  const first = await until("the first case, the keys still there", async () => {
+    const says = await panelSays(panel);
+    return says.picked === "case-0" && says.focused === "case-0" && says.required === before.required ? says : undefined;
+  });
+  must(first.here === before.here, `plain runs at ${first.here}, not as before at ${before.here}`);
+  await editor.page.keyboard.press("ArrowUp");
+  await until("the cursor's case again", async () => (await panelSays(panel)).picked === "case-cursor");
+  return `${before.here} became ${says.here}`;
+}
+
+async function panelKeys(editor) {
+  const panel = await editor.panel();
+  await panel.locator("#chart").focus();
+  await editor.page.keyboard.press("Home");
+  const reading = () => panel.locator("#reading").innerText();
+  const first = await until("a reading", async () => ((await reading()).startsWith("0 rpm") ? reading() : undefined));
+  for (let step = 0; step < 3; step += 1) {
+    await editor.page.keyboard.press("ArrowRight");
+  }
+  const second = await until("another reading", async () => ((await reading()) !== first ? reading() : undefined));
+  must(/available [\d.]+ N·m/.test(second) && /required [\d.]+ N·m/.test(second), second);
+  return second;
+}
+
+async function panelFollows(editor) {
+  const panel = await editor.panel();
+  await editor.intoText();
+  await editor.goto(23, 16);
+  const says = await until("the reducer", async () => {
+    const says = await panelSays(panel);
+    return says.station === "at the cursor: reducer" && says.here === "35.12 rpm" ? says : undefined;
+  });
+  // What is typed is seen at once, and what cannot be solved leaves the last picture.
+  const type = async (text) => {
+    await editor.goto(4, 22);
+    await editor.page.keyboard.press("Shift+ArrowLeft");
+    await editor.page.keyboard.type(text);
+  };
+  await editor.goto(4, 22);
+  const motor = await until("the motor, where the cursor is on no part", async () => {
+    const now = await panelSays(panel);
+    return now.station === "at the cursor: motor" && now.here === "1447 rpm" ? now : undefined;
+  });
+  await type("9");
+  await until("what was typed", async () => /1259 kg/.test(await editor.line("let rated_load")));
+  const heavier = await until("a heavier load", async () => {
+    const now = await panelSays(panel);
+    return now.required !== motor.required && now.required !== "" ? now : undefined;
+  });
+  await type("+");
+  await until("the last picture, marked as old", async () => {
+    const now = await panelSays(panel);
+    return /As it was before/.test(now.notice) && now.required === heavier.required ? now : undefined;
+  });
+  await panel.evaluate(() => window.scrollTo(0, 0));
+  await editor.picture("panel-old");
+  await type("0");
+  await until("as it was", async () => {
+    const now = await panelSays(panel);
+    return now.notice === "" && now.required === motor.required;
+  });
+  return says.here;
+}
+
+/** Contrast of two colours, as the rules for readable pages reckon it (WCAG 2, relative luminance). */
+function contrast(one, other) {
+  const luminance = (colour) => {
+    const most = colour.startsWith("color(") ? 1 : 255;
+    const parts = colour.match(/[\d.]+/g).slice(0, 3).map((part) => Number(part) / most);
+    const [r, g, b] = parts.map((part) => (part <= 0.04045 ? part / 12.92 : ((part + 0.055) / 1.055) ** 2.4));
+    return 0.2126 * r + 0.7152 * g + 0.0722 * b;
+  };
+  const [low, high] = [luminance(one), luminance(other)].sort((a, b) => a - b);
+  return (high + 0.05) / (low + 0.05);
+}
+
+async function themes(editor) {
+  const panel = await editor.panel();
+  await editor.intoText();
+  await editor.goto(9, 10);
+  await until("the motor", async () => (await panelSays(panel)).station === "at the cursor: motor");
+  const out = [];
+  for (const [theme, kind, name] of [
+    ["Light Modern", "vscode-light", "panel-light"],
+    ["Dark High Contrast", "vscode-high-contrast", "panel-high-contrast"],
+    ["Light High Contrast", "vscode-high-contrast-light", "panel-high-contrast-light"],
+    ["Dark Modern", "vscode-dark", "panel-dark-again"],
+  ]) {
+    await editor.theme(theme);
+    await until(theme, () => panel.evaluate((kind) => document.body.classList.contains(kind), kind));
+    const colours = await until(`the colours of ${theme}`, () =>
+      panel.evaluate(() => {
+        const style = (selector) => getComputedStyle(document.querySelector(selector));
+        return {
+          ground: getComputedStyle(document.body).backgroundColor,
+          text: [style("#results td").color, style(".chart .name").fill, style(".chart .tick").fill, style("thead th").color],
+          lines: [style(".chart polyline.available").stroke, style(".chart polyline.required").stroke, style(".chart .point circle").stroke],
+        };
+      }),
+    );
+    for (const colour of colours.text) {
+      must(contrast(colour, colours.ground) >= 4.5, `${theme}: text ${colour} on ${colours.ground}`);
+    }
+    for (const colour of colours.lines) {
+      must(contrast(colour, colours.ground) >= 3, `${theme}: line ${colour} on ${colours.ground}`);
+    }
+    await panel.evaluate(() => window.scrollTo(0, 0));
+    if (name !== "panel-dark-again") {
+      await editor.picture(name);
+    }
+    out.push(kind);
+  }
+  return out.join(", ");
+}
+
+async function resultTable(editor) {
+  await editor.intoText();
+  await editor.goto(38, 8);
+  await editor.command("Layshaft: Show Result Table of Drive");
+  const text = await until("the page with the table", async () => {
+    for (const frame of editor.page.frames()) {
+      const heading = await frame.locator("h1").first().innerText({ timeout: 200 }).catch(() => "");
+      if (heading.includes("Mill hoist H3: lift")) {
+        return (await frame.locator("table").count()) > 0 ? heading : undefined;
+      }
+    }
+    return undefined;
+  });
+  await editor.picture("result-table");
+  return text;
 }
 
 export const all = [
@@ -151,4 +386,10 @@ export const all = [
   { name: "page of a code", check: pageOfCode },
   { name: "format", check: format },
   { name: "rename", check: rename },
+  { name: "panel opens with chart and numbers", check: panelOpens },
+  { name: "panel: another case", check: panelCase },
+  { name: "panel: read with keys", check: panelKeys },
+  { name: "panel follows the cursor and the text", check: panelFollows },
+  { name: "panel in every theme", check: themes },
+  { name: "result table as a page", check: resultTable },
 ];

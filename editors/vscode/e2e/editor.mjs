@@ -43,7 +43,7 @@ function freePort() {
 /** The editor's settings: no first-run pages, nothing that moves by itself. */
 const SETTINGS = {
   "workbench.startupEditor": "none",
-  "workbench.colorTheme": "Default Dark Modern",
+  "workbench.colorTheme": "Dark Modern",
   "workbench.secondarySideBar.defaultVisibility": "hidden",
   "workbench.tips.enabled": false,
   "window.autoDetectColorScheme": false,
@@ -86,8 +86,8 @@ export async function start({ work, workspace, bin, vsix }) {
     throw new Error("the extension could not be installed; see code-server.log");
   }
   const flags = ["--disable-telemetry", "--disable-update-check", "--disable-workspace-trust", "--disable-getting-started-override"];
-  const editor = new Editor(work, profile);
-  editor.set({});
+  fs.writeFileSync(path.join(profile, "data/User/settings.json"), JSON.stringify(SETTINGS, null, 2));
+  const editor = new Editor(work);
   editor.server = spawn(process.execPath, [entry, ...folders, ...flags], options);
   const base = `http://127.0.0.1:${port}`;
   await until("VS Code listens", async () => (await fetch(`${base}/healthz`)).ok);
@@ -97,17 +97,23 @@ export async function start({ work, workspace, bin, vsix }) {
 
 /** A window of VS Code. */
 class Editor {
-  constructor(work, profile) {
+  constructor(work) {
     this.work = work;
-    this.profile = profile;
-    this.settings = { ...SETTINGS };
+    /** What the browser refused to the panel. */
     this.complaints = [];
   }
 
-  /** Writes settings; VS Code sees it by itself. */
-  set(settings) {
-    Object.assign(this.settings, settings);
-    fs.writeFileSync(path.join(this.profile, "data/User/settings.json"), JSON.stringify(this.settings, null, 2));
+  /** Picks a colour theme as a user does. */
+  async theme(label) {
+    await this.command("Preferences: Color Theme");
+    const input = this.page.locator(".quick-input-widget input").first();
+    await input.waitFor({ state: "visible" });
+    await input.fill(label);
+    await until(`the theme ${label} in the list`, async () =>
+      (await this.page.locator(".quick-input-widget .monaco-list-row.focused").first().innerText()).trim().startsWith(label),
+    );
+    await this.page.keyboard.press("Enter");
+    await input.waitFor({ state: "hidden" });
   }
 
   async browse(url) {
@@ -152,12 +158,15 @@ class Editor {
     const input = page.locator(".quick-input-widget input").first();
     await input.waitFor({ state: "visible" });
     await input.fill(`>${title}`);
-    await until(`the command ${title}`, async () => {
-      const first = page.locator(".quick-input-widget .monaco-list-row.focused").first();
-      return (await first.innerText()).replace(/\u00a0/g, " ").includes(title);
+    const row = await until(`the command ${title}`, async () => {
+      const rows = page.locator(".quick-input-widget .monaco-list-row");
+      const labels = await rows.evaluateAll((rows) => rows.map((row) => row.getAttribute("aria-label") ?? ""));
+      const at = labels.findIndex((label) => label === title || label.startsWith(`${title},`));
+      return at >= 0 ? rows.nth(at) : undefined;
     });
-    await page.keyboard.press("Enter");
-    await input.waitFor({ state: "hidden" }).catch(() => {});
+    await row.click();
+    // A command may ask on in the same box.
+    await until(`the command ${title} taken`, async () => !(await input.isVisible()) || !(await input.inputValue()).startsWith(">"));
   }
 
   /** Opens a file of the workspace and waits for its text. */
@@ -264,6 +273,23 @@ class Editor {
   /** Messages at the corner of the window. */
   async notifications() {
     return this.page.locator(".notification-list-item").allInnerTexts();
+  }
+
+  /** The page inside the results panel. */
+  async panel() {
+    return until("the results panel", async () => {
+      for (const frame of this.page.frames()) {
+        if ((await frame.locator("main#page > *").count().catch(() => 0)) > 0) {
+          return frame;
+        }
+      }
+      return undefined;
+    });
+  }
+
+  /** Puts the keys back into the text, wherever they were. */
+  async intoText() {
+    await this.page.locator(".editor-group-container .editor-instance .view-lines").first().click({ position: { x: 5, y: 5 } });
   }
 
   async closeAll() {

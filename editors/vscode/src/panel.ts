@@ -75,6 +75,8 @@ export class ResultsPanel implements vscode.Disposable {
       enableCommandUris: false,
       localResourceRoots: [vscode.Uri.joinPath(this.extension, "dist")],
     };
+    const icon = (name: string) => vscode.Uri.joinPath(this.extension, "icons", name);
+    panel.iconPath = { light: icon("spec-light.svg"), dark: icon("spec-dark.svg") };
     panel.webview.onDidReceiveMessage((message: FromPage) => this.heard(message));
     panel.onDidChangeViewState(() => this.schedule(0));
     panel.onDidDispose(() => {

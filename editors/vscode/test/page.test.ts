@@ -4,7 +4,7 @@ import assert from "node:assert/strict";
 import { test } from "node:test";
 
 import { choiceOf, isResults, type Choice, type Results } from "../src/results";
-import { page, picked, pictureKey, reading, summary, type State } from "../src/view/page";
+import { page, picked, Pictures, reading, summary, type State } from "../src/view/page";
 import { valueText, verdictText } from "../src/view/tables";
 import { find, h, textOf, type Element } from "../src/view/tree";
 import { chart, number, results } from "./sample";
@@ -74,7 +74,7 @@ test("every result with its full name, value and meaning", () => {
 
 test("criteria with verdict in word and sign, here and over all cases", () => {
   assert.deepEqual(rows(shown(), "criteria")[1], [
-    "M-1 speed", "at least 1400 rpm", "412 rpm", "−70.6 %", "✗ fails", "✗ fails, tightest in plain",
+    "M-1 speed✗ fails over all cases, tightest in plain", "at least 1400 rpm", "412 rpm", "−70.6 %", "✗ fails",
   ]);
   assert.equal(byId(shown({ criteria: [] }), "criteria"), undefined);
 });
@@ -84,16 +84,39 @@ test("while a line is being typed the last picture stays, marked as old", () => 
   const without = shown({ chart: null, noChart: why });
   assert.equal(byId(without, "chart"), undefined);
   assert.ok(textOf(without).includes(`No chart: ${why}`));
-  const old = shown({ chart: null, noChart: why }, {}, chart());
+  const old = shown({ chart: null, noChart: why, stations: [], station: null, results: [] }, {}, results());
   assert.ok(byId(old, "chart") !== undefined);
   assert.equal(byId(old, "figure")?.attributes["class"], "old");
   assert.ok(textOf(old).includes(`As it was before: ${why}`));
+  assert.equal(rows(old, "points").length, 4, "the numbers stay with the picture");
+  assert.ok(byId(old, "station-2") !== undefined, "the parts stay, so that nothing jumps");
+  assert.equal(find(shown(), (e) => e.attributes["class"] === "old").length, 0);
 });
 
-test("one picture is told from another by drive, case, gear and station", () => {
-  const keys = [{}, { case: 1 }, { case: 2 }, { station: 2 }, { uri: "file:///other.shaft" }].map((more) => pictureKey(results(more)));
-  assert.equal(new Set(keys).size, keys.length);
-  assert.equal(pictureKey(results({ version: 9 })), pictureKey(results()));
+test("what stays is of the same spec, drive, case, gear and station", () => {
+  const gone = { chart: null, noChart: "gone" };
+  const before = (now: Partial<Results>) => {
+    const pictures = new Pictures();
+    pictures.keep(results());
+    return pictures.before(results(now));
+  };
+  assert.ok(before(gone) !== undefined);
+  assert.ok(before({ ...gone, version: 9 }) !== undefined);
+  assert.ok(before({ ...gone, stations: [], station: null }) !== undefined, "a drive that cannot be read has no parts");
+  for (const other of [{ case: 1 }, { case: 2 }, { station: 2 }, { uri: "file:///other.shaft" }]) {
+    assert.equal(before({ ...gone, ...other }), undefined, JSON.stringify(other));
+  }
+  assert.equal(before({}), undefined, "what has a chart needs no old one");
+});
+
+test("no more is kept than can be looked at", () => {
+  const pictures = new Pictures();
+  for (let index = 0; index < 200; index += 1) {
+    pictures.keep(results({ uri: `file:///${index}.shaft` }));
+  }
+  const before = (index: number) => pictures.before(results({ uri: `file:///${index}.shaft`, chart: null }));
+  assert.equal(before(0), undefined);
+  assert.ok(before(199) !== undefined);
 });
 
 test("texts of a spec stay texts", () => {
@@ -118,12 +141,12 @@ test("the chart in words, and what the curves say at a speed", () => {
   assert.match(words, /torque and power over speed at motor/);
   assert.match(words, /stable at .* rpm, .* N·m, runs here from rest; unstable at/);
   const said = reading(chart(), 750);
-  assert.match(said, /^750 rpm {3}available [\d.]+ N·m {3}required 46\.25 N·m {3}available power [\d.]+ kW$/);
+  assert.match(said, /^750 rpm {3}available [\d.]+ N·m {3}required 46\.25 N·m {3}up to [\d.]+ kW$/);
   assert.match(reading(chart(), 99_999), /available none/);
 });
 
 test("values and verdicts as words", () => {
-  assert.equal(valueText(number(3, "N", { scaled_data: true, outside_data: true })), "3 N (outside the measured range; scaled from data taken at other conditions)");
+  assert.equal(valueText(number(3, "N", { scaled_data: true, outside_data: true })), "3 N (outside the measured range; scaled data)");
   assert.equal(valueText({ type: "unbounded", shown: "no limit", reason: "nothing stops it" }), "no limit (nothing stops it)");
   assert.equal(valueText(null), "");
   assert.equal(verdictText("not_judged"), "? not judged");

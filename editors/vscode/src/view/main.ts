@@ -3,17 +3,14 @@
 import type { Chart, FromPage, ToPage } from "../results";
 import type { Frame } from "./chart";
 import { replace } from "./mount";
-import { page, picked, pictureKey, reading, type State } from "./page";
+import { HOW_TO_READ, page, picked, Pictures, reading, type State } from "./page";
 import { h } from "./tree";
 
 declare function acquireVsCodeApi(): { postMessage(message: FromPage): void };
 
 const editor = acquireVsCodeApi();
 const place = document.getElementById("page") as HTMLElement;
-/** The last chart of each picture, for while a line is being typed. */
-const charts = new Map<string, Chart>();
-/** Pictures kept. */
-const MOST = 50;
+const pictures = new Pictures();
 const NARROWEST = 320;
 const WIDEST = 760;
 
@@ -63,16 +60,9 @@ function heard(message: ToPage): void {
     }
     return;
   }
-  const key = pictureKey(message.results);
-  if (message.results.chart !== null) {
-    charts.delete(key);
-    charts.set(key, message.results.chart);
-    for (const oldest of [...charts.keys()].slice(0, -MOST)) {
-      charts.delete(oldest);
-    }
-  }
   const { results, choice, spec } = message;
-  state = { results, choice, spec, old: results.chart === null ? charts.get(key) : undefined };
+  pictures.keep(results);
+  state = { results, choice, spec, old: pictures.before(results) };
   render();
 }
 
@@ -87,6 +77,7 @@ function read(at: number | undefined): void {
   }
   line.classList.toggle("hidden", at === undefined);
   if (at === undefined) {
+    words.textContent = HOW_TO_READ;
     return;
   }
   const x = String(frame.x.at(at));
@@ -146,6 +137,20 @@ place.addEventListener("pointermove", (event) => {
   if (svg !== null && frame !== undefined) {
     const x = event.clientX - svg.getBoundingClientRect().left;
     read(Math.min(frame.x.high, Math.max(frame.x.low, frame.x.of(x))));
+  }
+});
+
+place.addEventListener("pointerout", (event) => {
+  const to = event.relatedTarget;
+  const inside = to instanceof Element && to.closest("#chart") !== null;
+  if (!inside && document.activeElement?.id !== "chart") {
+    read(undefined);
+  }
+});
+
+place.addEventListener("focusout", (event) => {
+  if (event.target instanceof Element && event.target.id === "chart") {
+    read(undefined);
   }
 });
 

@@ -12,8 +12,8 @@ export interface State {
   readonly results: Results;
   readonly choice: Choice;
   readonly spec: string;
-  /** The last chart of the same drive, case and station, where there is none now. */
-  readonly old: Chart | undefined;
+  /** The last answer with a chart of the same drive, case and station, where there is none now. */
+  readonly old: Results | undefined;
 }
 
 export interface Page {
@@ -22,14 +22,19 @@ export interface Page {
   readonly chart: Chart | undefined;
 }
 
-/** The whole page, the chart so wide. */
+/** What stands where the readings come. */
+export const HOW_TO_READ = "Point at the chart, or use the arrow keys, to read it.";
+
+/** The whole page, the chart so wide. What cannot be had while a line is being typed is shown as it was. */
 export function page(state: State, width: number): Page {
-  const { results } = state;
-  const chart = results.chart ?? state.old;
-  const drawing = chart === undefined ? undefined : draw(chart, width, summary(results, chart), peak(results));
+  const { results, old } = state;
+  const solved = results.chart === null ? (old ?? results) : results;
+  const chart = solved.chart ?? undefined;
+  const drawing = chart === undefined ? undefined : draw(chart, width, summary(solved, chart), peak(solved));
+  const mark = solved === results ? undefined : "old";
   const nodes = [
     header(state),
-    stations(state),
+    stations(solved, state.choice),
     h(
       "div",
       { class: "columns" },
@@ -37,11 +42,19 @@ export function page(state: State, width: number): Page {
         "div",
         { class: "picture" },
         notice(state),
-        h("figure", { id: "figure", class: results.chart === null && chart !== undefined ? "old" : undefined }, drawing?.svg),
-        chart === undefined ? undefined : h("p", { id: "reading", "aria-live": "polite" }, "Point at the chart, or use the arrow keys, to read it."),
-        pointsTable(results),
+        h("figure", { id: "figure", class: mark }, drawing?.svg),
+        chart === undefined
+          ? undefined
+          : h("p", { id: "reading", "aria-live": "polite" }, HOW_TO_READ),
+        h("div", { class: mark }, pointsTable(solved)),
       ),
-      h("div", { class: "numbers" }, casesTable(results, state.choice), criteriaTable(results), resultsTable(results)),
+      h(
+        "div",
+        { class: "numbers" },
+        casesTable(results, state.choice),
+        criteriaTable(results),
+        h("div", { class: mark }, resultsTable(solved)),
+      ),
     ),
   ];
   return { nodes, frame: drawing?.frame, chart };
@@ -57,7 +70,7 @@ function header({ results, choice, spec }: State): Element {
     {},
     h("h1", {}, h("button", { id: "drive-place", class: "link", type: "button", title: "Show the drive in the text" }, results.drive.name)),
     h("p", { class: "chain" }, results.drive.chain),
-    h("p", { class: "of" }, caseLine(results), ` of ${spec}`),
+    h("p", { class: "of" }, spec, caseLine(results)),
     results.drives.length > 1
       ? h("label", { class: "field" }, "Drive ", h("select", { id: "drive" }, follows, options))
       : undefined,
@@ -70,11 +83,11 @@ function caseLine(results: Results): string {
     return "";
   }
   const changes = shown.changes.length === 0 ? "" : `: ${shown.changes.join(", ")}`;
-  return `case ${caseName(shown)}${changes}`;
+  return `, case ${caseName(shown)}${changes}`;
 }
 
 /** The parts of the chain, one of them picked. */
-function stations({ results, choice }: State): Element {
+function stations(results: Results, choice: Choice): Element {
   const follows = choice.station === undefined;
   const shown = results.station === null ? undefined : results.stations[results.station]?.part;
   const chip = (id: string, picked: boolean, words: string, title: string) =>
@@ -135,15 +148,41 @@ export function reading(chart: Chart, speed: number): string {
     `${digits(speed)} ${chart.speed.unit}`,
     `available ${value(chart.available, chart.effort.unit)}`,
     `required ${value(chart.required, chart.effort.unit)}`,
-    `available power ${value(chart.availablePower, chart.power.unit)}`,
+    `up to ${value(chart.availablePower, chart.power.unit)}`,
   ].join("   ");
 }
 
-/** Tells one picture from another: the old chart of a picture is shown where a new one cannot be had. */
-export function pictureKey(results: Results): string {
+/** Answers kept at most. */
+const KEPT = 50;
+
+/** The last answer with a chart of each drive, case and station, for while a line is being typed. */
+export class Pictures {
+  private readonly kept = new Map<string, Results>();
+
+  keep(results: Results): void {
+    if (results.chart === null) {
+      return;
+    }
+    for (const key of [pictureKey(results, true), pictureKey(results, false)]) {
+      this.kept.delete(key);
+      this.kept.set(key, results);
+    }
+    for (const oldest of [...this.kept.keys()].slice(0, -KEPT)) {
+      this.kept.delete(oldest);
+    }
+  }
+
+  /** What was there before an answer without a chart. A drive that cannot be read has no parts to tell the station by. */
+  before(results: Results): Results | undefined {
+    return results.chart === null ? this.kept.get(pictureKey(results, results.station !== null)) : undefined;
+  }
+}
+
+/** Tells one picture from another. */
+function pictureKey(results: Results, withStation: boolean): string {
   const of = results.cases[results.case];
-  const station = results.station === null ? "" : results.stations[results.station]?.part;
-  return JSON.stringify([results.uri, results.drive.name, of?.label, of?.gear, station]);
+  const station = !withStation || results.station === null ? "" : results.stations[results.station]?.part;
+  return JSON.stringify([results.uri, results.drive.name, of?.label, of?.gear, withStation, station]);
 }
 
 /** What follows from a pick in the page. */

@@ -17,7 +17,7 @@ export function valueText(value: Value | null | undefined): string {
   }
   const marks = [
     value.outside_data === true ? "outside the measured range" : "",
-    value.scaled_data === true ? "scaled from data taken at other conditions" : "",
+    value.scaled_data === true ? "scaled data" : "",
     value.type === "unbounded" && value.reason !== undefined ? value.reason : "",
   ].filter((mark) => mark !== "");
   return marks.length === 0 ? value.shown : `${value.shown} (${marks.join("; ")})`;
@@ -107,7 +107,7 @@ export function casesTable(results: Results, choice: Choice): Element {
     radio(`case-${index}`, !follows && index === results.case, caseName(one)),
     one.outcome,
     valueText(one.speed),
-    verdictText(one.verdict),
+    { of: "verdict", nodes: [verdictText(one.verdict)] },
   ]);
   return table("Cases", "cases", ["case", "from rest", "speed", "criteria"], [first, ...rows], "cases");
 }
@@ -119,22 +119,22 @@ export function criteriaTable(results: Results): Element | undefined {
   }
   const rows = results.criteria.map((criterion, index): Cell[] => {
     const here = criterion.here[0];
+    const clause = h("button", { id: `criterion-${index}`, class: "link", type: "button" }, criterion.clause);
     return [
-      { of: "", nodes: [h("button", { id: `criterion-${index}`, class: "link", type: "button" }, criterion.clause)] },
+      { of: "", nodes: [clause, h("div", { class: "of" }, overAll(criterion))] },
       criterion.required,
-      here === undefined ? "not asked in this case" : valueText(here.found),
+      here === undefined ? "" : valueText(here.found),
       here?.margin?.shown ?? "",
-      { of: `verdict ${here?.verdict ?? "none"}`, nodes: [here === undefined ? "" : verdictText(here.verdict)] },
-      worst(criterion),
+      { of: `verdict ${here?.verdict ?? "none"}`, nodes: [here === undefined ? "not asked" : verdictText(here.verdict)] },
     ];
   });
-  const head = ["criterion", "required", "found", "margin", "in this case", "over all cases"];
-  return table("Criteria", "criteria", head, rows, "criteria");
+  return table("Criteria", "criteria", ["criterion", "required", "found", "margin", "in this case"], rows, "criteria");
 }
 
-function worst(criterion: Criterion): string {
-  const at = criterion.governing === null ? "" : `, tightest in ${criterion.governing.case}`;
-  return `${verdictText(criterion.verdict)}${at}`;
+function overAll(criterion: Criterion): string {
+  const judged = criterion.verdict === "holds" || criterion.verdict === "fails";
+  const at = criterion.governing === null || !judged ? "" : `, tightest in ${criterion.governing.case}`;
+  return `${verdictText(criterion.verdict)} over all cases${at}`;
 }
 
 /** Every result that has an answer, part by part. */
