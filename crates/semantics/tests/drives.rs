@@ -250,3 +250,11 @@ fn rows_of_a_csv_file_are_told_by_their_line() {
         &[("m.csv", csv)],
     );
 }
+
+#[test]
+fn a_curve_with_a_row_that_cannot_be_read_is_not_called_short() {
+    check(
+        "source m: measured_curve { curve = points (speed [rpm], torque [N·m]) { 800 60; 1200, 72 #! syntax
+} }",
+    );
+}

@@ -46,6 +46,12 @@ pub(super) fn read(
     field: &'static Field,
     columns: &'static [ColumnRow],
 ) -> Option<Table> {
+    // A row that cannot be read has been reported; a curve without it would be another curve.
+    let problems = &eval.shared.world.tree(given.at).problems;
+    let within = given.value.span;
+    if problems.iter().any(|problem| within.touches(problem.span.start)) {
+        return None;
+    }
     let reader = Reader { eval, at: given.at, columns, place: eval.place(given.at, given.value.span) };
     let table = match &given.value.kind {
         ValueKind::Pairs(pairs) => reader.pairs(pairs)?,
