@@ -3,6 +3,8 @@
 use std::sync::Arc;
 
 use layshaft_diagnostics::Diagnostic;
+use layshaft_mechanics::registry;
+use layshaft_semantics::analysis::DriveCase;
 use layshaft_semantics::{Analysis, Memo, MemoryFiles};
 
 use super::{debug, reading::without_a_line};
@@ -46,7 +48,27 @@ fn with_files(text: &str, files: &MemoryFiles) {
     };
     let _ = kept(&without_a_line(text), &mut memo);
     debug::same(&answers(&kept(text, &mut memo)), &answers(&analysis), "the memo changes what is answered");
+    let other = with_another_number(text);
+    debug::same(&answers(&kept(&other, &mut memo)), &answers(&fresh(&other)), "so does one number");
+    debug::same(&answers(&kept(text, &mut memo)), &answers(&analysis), "so does the way back");
+    bounded(text, files, &memo);
     debug::same(&answers(&fresh(text)), &answers(&analysis), "the same text gives two answers");
+}
+
+/// What is remembered is what the newest text asks for, and nothing of those before it.
+fn bounded(text: &str, files: &MemoryFiles, memo: &Memo) {
+    let mut new = Memo::default();
+    let _ = layshaft_semantics::analyze_with("a.shaft", Arc::from(text), files, &mut new);
+    assert_eq!(memo.solved(), new.solved(), "the memo keeps more or less than one text needs");
+}
+
+/// The text with the digit in its middle exchanged: an edit of one number, as a rule.
+fn with_another_number(text: &str) -> String {
+    let digits: Vec<usize> =
+        text.bytes().enumerate().filter(|(_, c)| c.is_ascii_digit()).map(|d| d.0).collect();
+    let Some(&at) = digits.get(digits.len() / 2) else { return text.to_owned() };
+    let other = if text.as_bytes()[at] == b'7' { "8" } else { "7" };
+    [&text[..at], other, &text[at + 1..]].concat()
 }
 
 /// Everything that is answered, to the bit: numbers are written so that they are read back the same.
@@ -54,9 +76,23 @@ fn answers(analysis: &Analysis) -> String {
     let Analysis {
         diagnostics, values, parts, cases, drives, criteria, shows, assumptions, accepted, ..
     } = analysis;
+    let asked: String = drives.iter().flat_map(|drive| &drive.cases).map(asked).collect();
     format!(
-        "{diagnostics:?}{values:?}{parts:?}{cases:?}{drives:?}{criteria:?}{shows:?}{assumptions:?}{accepted:?}"
+        "{diagnostics:?}{values:?}{parts:?}{cases:?}{drives:?}{criteria:?}{shows:?}{assumptions:?}{accepted:?}{asked}"
     )
+}
+
+/// Every result of a drive and of the parts in it.
+fn asked(case: &DriveCase) -> String {
+    let (Some(solution), Some(spec)) = (&case.solution, &case.spec) else { return String::new() };
+    let mut out = format!("{:?}{:?}", solution.outcome(), solution.findings());
+    let mut ask = |part, name| out.push_str(&format!("{:?}", solution.answer(part, None, name)));
+    registry::DRIVE_RESULTS.iter().for_each(|row| ask(None, row.name));
+    for (index, part) in spec.parts.iter().enumerate() {
+        let results = part.row.results.iter().chain(registry::common_results(part.row.role));
+        results.for_each(|row| ask(Some(index), row.name));
+    }
+    out
 }
 
 /// Every finding stands at whole characters of a file of the analysis, and says something.

@@ -1,7 +1,11 @@
 //! A drive as plain values: what the solver is asked.
 
+mod bits;
+
 use crate::registry::KindRow;
 use crate::values::{Duty, Values};
+
+pub use bits::Bits;
 
 /// A drive to be solved.
 #[derive(Clone, Debug, PartialEq)]

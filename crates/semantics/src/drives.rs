@@ -1,6 +1,5 @@
 //! Drives: their chain and settings, and what the solver makes of them.
 
-use std::cell::RefCell;
 use std::collections::BTreeMap;
 use std::collections::btree_map::Entry as BTreeEntry;
 use std::sync::Arc;
@@ -19,6 +18,7 @@ use crate::defs::{Given, SlotName, path_text, slot_of, slot_text};
 use crate::eval::{Ask, Eval};
 use crate::quantity::Datum;
 use crate::sink::Sink;
+use crate::solver::Handle;
 use crate::world::{Declared, ItemRef, World};
 
 /// A drive as declared.
@@ -153,44 +153,23 @@ fn member(world: &World, at: ItemRef, path: &layshaft_syntax::Path, sink: &Sink)
 /// A drive in one state.
 #[derive(Debug, Default)]
 pub(crate) struct Solved {
-    pub spec: Option<Arc<DriveSpec>>,
+    pub drive: Option<Handle>,
     pub solution: Option<Arc<Solution>>,
     pub faults: Vec<Fault>,
     /// Item of each part of the spec, supplies included.
     pub items: Vec<ItemRef>,
 }
 
-/// What the solver answered for a spec.
-type Outcome = Result<Arc<Solution>, Vec<Fault>>;
-
-/// Remembers what was solved: cases that leave a drive alone share its solution.
-#[derive(Debug, Default)]
-pub(crate) struct Solver {
-    known: RefCell<Vec<(Arc<DriveSpec>, Outcome)>>,
-}
-
-impl Solver {
-    fn solve(&self, spec: DriveSpec) -> (Arc<DriveSpec>, Outcome) {
-        if let Some((spec, known)) = self.known.borrow().iter().find(|(known, _)| **known == spec) {
-            return (Arc::clone(spec), known.clone());
-        }
-        let solution = layshaft_mechanics::solve::solve(&spec).map(Arc::new);
-        let spec = Arc::new(spec);
-        self.known.borrow_mut().push((Arc::clone(&spec), solution.clone()));
-        (spec, solution)
-    }
-}
-
 /// Lowers a drive in one state and solves it.
 pub(crate) fn solve(eval: &Eval<'_>, at: ItemRef) -> Solved {
     let Some(def) = eval.shared.drives.get(&at) else { return Solved::default() };
     let Some((spec, items)) = lowered(eval, at, def) else { return Solved::default() };
-    let (spec, solution) = eval.shared.solver.solve(spec);
+    let (drive, solution) = eval.shared.solver.solve(spec);
     let (solution, faults) = match solution {
         Ok(solution) => (Some(solution), Vec::new()),
         Err(faults) => (None, faults),
     };
-    let solved = Solved { spec: Some(spec), solution, faults, items };
+    let solved = Solved { drive: Some(drive), solution, faults, items };
     solved.report(eval, at, &solved.faults);
     if let Some(solution) = &solved.solution {
         solved.report(eval, at, &solution.faults());
@@ -325,8 +304,8 @@ impl Solved {
             None => None,
         };
         if let Some(ask) = ask {
-            let spec = self.spec.as_ref()?;
-            return match layshaft_mechanics::solve::solve_at(spec, ask.speed) {
+            let drive = self.drive.as_ref()?;
+            return match eval.shared.solver.solve_at(drive, ask.speed) {
                 Ok(solution) => Some(solution.answer(part, station.port, &station.result)),
                 Err(faults) => self.first_fault(eval, &faults),
             };

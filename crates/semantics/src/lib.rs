@@ -27,6 +27,7 @@ mod gears;
 mod load;
 mod record;
 mod sink;
+mod solver;
 mod world;
 
 use std::sync::Arc;
@@ -36,17 +37,31 @@ pub use files::{Files, MemoryFiles, NoFiles, ReadError};
 
 use eval::Shared;
 
-/// The trees of the texts analyzed before, so that an edit costs the items it touches. A memo skips work and never
-/// changes an answer.
+/// The trees and solved drives of the state analyzed before, so that an edit costs the items and drives it touches. A
+/// memo skips work and never changes an answer; what a state does not use is dropped behind it.
 #[derive(Debug, Default)]
 pub struct Memo {
     texts: std::collections::BTreeMap<String, layshaft_syntax::Memo>,
+    solver: solver::Solver,
 }
 
 impl Memo {
     fn parse(&mut self, path: &str, text: &str) -> Arc<layshaft_syntax::File> {
         let memo = self.texts.entry(path.to_owned()).or_default();
         Arc::new(layshaft_syntax::parse_with(text, memo))
+    }
+
+    /// Drops what this state of the texts did not use.
+    fn forget_unused(&mut self, world: &world::World) {
+        let used: std::collections::BTreeSet<&str> = world.files.iter().map(|file| &*file.path).collect();
+        self.texts.retain(|path, _| used.contains(&**path));
+        self.solver.forget_unused();
+    }
+
+    /// How many drives, and questions about them at stated speeds, are remembered.
+    #[must_use]
+    pub fn solved(&self) -> usize {
+        self.solver.len()
     }
 }
 
@@ -66,14 +81,13 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     let parts = defs::parts(&world, &sink);
     let drives = drives::drives(&world, &sink);
     let tables = fields::Tables::default();
-    let solver = drives::Solver::default();
     let shared = Shared {
         world: &world,
         parts: &parts,
         drives: &drives,
         files,
         tables: &tables,
-        solver: &solver,
+        solver: &memo.solver,
         sink: &sink,
     };
     let mut analysis = Analysis::default();
@@ -89,5 +103,6 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     let found = sink.finish();
     allow::accept(shared, found, &mut analysis);
     analysis.files.clone_from(&world.files);
+    memo.forget_unused(&world);
     analysis
 }

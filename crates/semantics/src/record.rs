@@ -239,7 +239,7 @@ fn drives(shared: Shared<'_>, states: &[&State<'_>], analysis: &mut Analysis) {
             cases.push(DriveCase {
                 case: state.case,
                 gear: state.gear.as_ref().map(ToString::to_string),
-                spec: solved.spec.clone(),
+                spec: solved.drive.as_ref().map(|drive| std::sync::Arc::clone(&drive.spec)),
                 solution: solved.solution.clone(),
                 faults: solved.faults.clone(),
                 parts: solved.items.iter().map(|item| name_place(shared, *item)).collect(),

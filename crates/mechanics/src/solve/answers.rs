@@ -15,7 +15,7 @@ use super::{flow::flow, stated};
 use crate::drive::Port;
 use crate::fault::{Fault, Note};
 use crate::model::Motion;
-use crate::solution::{Answer, Marks, Mode, Outcome, Stability};
+use crate::solution::{Answer, Finding, Marks, Mode, Outcome, Stability};
 
 /// An operating point.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -52,6 +52,7 @@ pub struct Solution {
     pub(super) peak: OnceLock<Option<Greatest>>,
     /// Speed and value of each source's own peak power.
     pub(super) source_peaks: Vec<OnceLock<Result<(f64, f64), Answer>>>,
+    pub(super) findings: OnceLock<Vec<Finding>>,
 }
 
 impl std::fmt::Debug for Solution {
@@ -78,6 +79,7 @@ impl Solution {
             reserve: OnceLock::new(),
             peak: OnceLock::new(),
             source_peaks,
+            findings: OnceLock::new(),
         }
     }
 

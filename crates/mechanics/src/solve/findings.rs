@@ -24,7 +24,11 @@ fn above(value: f64, limit: f64) -> bool {
 impl Solution {
     /// What a colleague would raise, in the order of the chain.
     #[must_use]
-    pub fn findings(&self) -> Vec<Finding> {
+    pub fn findings(&self) -> &[Finding] {
+        self.findings.get_or_init(|| self.raised())
+    }
+
+    fn raised(&self) -> Vec<Finding> {
         let mut found = Vec::new();
         self.without_brake(&mut found);
         self.dip(&mut found);

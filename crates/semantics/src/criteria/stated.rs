@@ -2,7 +2,7 @@
 
 use layshaft_diagnostics::{Code, Diagnostic};
 use layshaft_mechanics::drive::StatedSpeed;
-use layshaft_mechanics::solve::{Question, worst_over};
+use layshaft_mechanics::solve::Question;
 use layshaft_syntax::{At, BinaryOp, Expr, ExprKind, Path, ValueKind};
 
 use super::{Judged, judged};
@@ -70,7 +70,7 @@ fn worst_speeds(
         return None;
     }
     let solved = eval.solved(drive);
-    let spec = solved.spec.as_ref()?;
+    let handle = solved.drive.as_ref()?;
     let mut speeds = Vec::new();
     for path in paths {
         let Some((Declared::Drive, own, used)) = eval.shared.world.head(at.file, &path.names) else {
@@ -85,7 +85,7 @@ fn worst_speeds(
             None => None,
         };
         let question = Question { part, port: asked.port, name: &asked.result };
-        match worst_over(spec, (station.part, station.port), (low, high), question) {
+        match eval.shared.solver.worst_over(handle, (station.part, station.port), (low, high), question) {
             Ok(extremes) => {
                 speeds.extend([extremes.least.0, extremes.greatest.0]);
                 speeds.extend(extremes.unanswered.map(|(speed, _)| speed));

@@ -18,10 +18,11 @@ use layshaft_syntax::{ItemKind, ValueKind};
 use layshaft_units::{Kind, Type};
 
 use crate::defs::{Given, PartDef, SlotName};
-use crate::drives::{DriveDef, Solved, Solver};
+use crate::drives::{DriveDef, Solved};
 use crate::fields::{Built, FieldRead};
 use crate::quantity::{Datum, Quantity};
 use crate::sink::Sink;
+use crate::solver::Solver;
 use crate::world::{ItemRef, World};
 
 pub(crate) use compare::compare_words;
