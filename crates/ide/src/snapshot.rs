@@ -1,7 +1,7 @@
 //! An analysis with the index of its names: what every feature works on.
 
 use std::collections::BTreeMap;
-use std::sync::{Arc, OnceLock};
+use std::sync::{Arc, LazyLock, OnceLock};
 
 use layshaft_diagnostics::{FileId, FileSpan, Span};
 use layshaft_present::sheet;
@@ -18,13 +18,16 @@ use crate::names::Names;
 pub struct Snapshot {
     /// What the command would print of the same text.
     pub analysis: Arc<Analysis>,
-    /// Every name with what it stands for.
-    pub index: Arc<Index>,
+    /// Every name with what it stands for, gathered at the first question: an edit does not wait for it.
+    pub index: Arc<LazyLock<Index, MakeIndex>>,
     habits: Arc<OnceLock<Habits>>,
     criteria: Arc<OnceLock<ByName>>,
     drives: Arc<OnceLock<ByName>>,
     names: Arc<OnceLock<Names>>,
 }
+
+/// Gathers the names of an analysis.
+type MakeIndex = Box<dyn FnOnce() -> Index + Send>;
 
 /// Indices of criteria or drives under the place of a name.
 type ByName = BTreeMap<FileSpan, Vec<usize>>;
@@ -36,11 +39,12 @@ impl Snapshot {
     /// Analyzes a text; `path` is relative to the root that `files` reads from.
     #[must_use]
     pub fn new(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Self {
-        let analysis = layshaft_semantics::analyze_with(path, text, files, memo);
-        let index = Index::of(&analysis);
+        let analysis = Arc::new(layshaft_semantics::analyze_with(path, text, files, memo));
+        let of = Arc::clone(&analysis);
+        let index: MakeIndex = Box::new(move || Index::of(&of));
         Self {
-            analysis: Arc::new(analysis),
-            index: Arc::new(index),
+            analysis,
+            index: Arc::new(LazyLock::new(index)),
             habits: Arc::default(),
             criteria: Arc::default(),
             drives: Arc::default(),

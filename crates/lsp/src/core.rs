@@ -86,7 +86,10 @@ impl Core {
         while self.collect(events, &mut todo) {
             match todo.pop_front() {
                 Some(next) => self.answer(next),
-                None => self.background(),
+                None => {
+                    self.background();
+                    self.specs.retired = None;
+                }
             }
         }
     }

@@ -46,6 +46,8 @@ pub struct Specs {
     pub untold: BTreeSet<Url>,
     /// The document that was touched last.
     pub latest: Option<Url>,
+    /// The analysis before the newest, to be dropped when nobody waits.
+    pub retired: Option<Arc<Snapshot>>,
     open_at: BTreeMap<PathBuf, Url>,
     cache: RefCell<BTreeMap<PathBuf, Kept>>,
 }
@@ -62,6 +64,7 @@ impl Specs {
             specs: BTreeMap::new(),
             untold: BTreeSet::new(),
             latest: None,
+            retired: None,
             open_at: BTreeMap::new(),
             cache: RefCell::default(),
         }
@@ -169,7 +172,8 @@ impl Specs {
         }
         // Should the analysis panic, it is not tried again before the next change.
         spec.fresh = true;
-        spec.snapshot = None;
+        // Taking an analysis apart takes time: whoever waits for the new one does not wait for that.
+        self.retired = spec.snapshot.take();
         let mut memo = std::mem::take(&mut spec.memo);
         let text = document.text();
         let (snapshot, reads) = match &document.place {

@@ -4,6 +4,7 @@
 use divan::counter::ItemsCount;
 use divan::{Bencher, black_box};
 use layshaft_mechanics::curve::Law;
+use layshaft_mechanics::laws::kloss;
 use layshaft_mechanics::scalar::Real;
 use layshaft_mechanics::typed::{
     Quadratic, Sole, StraightLine, sole_operating_point, straight_lines_against_quadratics,
@@ -68,8 +69,18 @@ struct Machine {
 
 impl Law for Machine {
     fn eval<R: Real>(&self, speed: R) -> R {
-        let s = (R::of(self.synchronous) - speed) * (1.0 / (self.synchronous * self.slip));
-        s * (2.0 * self.breakdown) / (s.square() + 1.0)
+        let slip = (R::of(self.synchronous) - speed) * (1.0 / self.synchronous);
+        kloss::torque(self.breakdown, self.slip, slip)
+    }
+}
+
+/// The same, its formula written out by somebody who does not know the law.
+struct WrittenOut<'a>(&'a Machine);
+
+impl Law for WrittenOut<'_> {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        let s = (R::of(self.0.synchronous) - speed) * (1.0 / (self.0.synchronous * self.0.slip));
+        s * (2.0 * self.0.breakdown) / (s.square() + 1.0)
     }
 }
 
@@ -123,20 +134,31 @@ fn baseline_curved(bencher: Bencher) {
     bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
 }
 
-#[divan::bench(sample_count = 20)]
-fn curved_proved(bencher: Bencher) {
+/// The speed of the one operating point between breakdown and synchronous speed, proved to be the only one.
+fn proved(law: &impl Law, machine: &Machine, fan: &Fan) -> f64 {
+    let range = (rads(machine.synchronous * (1.0 - machine.slip)), rads(machine.synchronous));
+    match sole_operating_point(law, fan, range) {
+        Sole::Stable(point) => point.speed.get::<radian_per_second>(),
+        other => panic!("{other:?}"),
+    }
+}
+
+fn all_proved(bencher: Bencher, one: impl Fn(&(Machine, Fan)) -> f64) {
     let drives = curved();
-    let one = |(machine, fan): &(Machine, Fan)| {
-        let range = (rads(machine.synchronous * (1.0 - machine.slip)), rads(machine.synchronous));
-        match sole_operating_point(machine, fan, range) {
-            Sole::Stable(point) => point.speed.get::<radian_per_second>(),
-            other => panic!("{other:?}"),
-        }
-    };
     for drive in drives.iter().step_by(1000) {
         let (ours, bare) = (one(drive), newton(&drive.0, &drive.1));
         assert!((ours / bare - 1.0).abs() < 1e-12, "{ours} {bare}");
     }
-    let all = || black_box(&drives).iter().map(one).sum::<f64>();
+    let all = || black_box(&drives).iter().map(&one).sum::<f64>();
     bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
+}
+
+#[divan::bench(sample_count = 20)]
+fn curved_proved(bencher: Bencher) {
+    all_proved(bencher, |(machine, fan)| proved(machine, machine, fan));
+}
+
+#[divan::bench(sample_count = 20)]
+fn curved_written_out_proved(bencher: Bencher) {
+    all_proved(bencher, |(machine, fan)| proved(&WrittenOut(machine), machine, fan));
 }

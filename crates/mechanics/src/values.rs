@@ -1,6 +1,7 @@
 //! The values of a part's fields, units already taken off: SI throughout.
 
 use std::collections::BTreeMap;
+use std::sync::Arc;
 
 /// A value of a field.
 #[derive(Clone, Debug, PartialEq)]
@@ -82,13 +83,14 @@ impl Table {
 /// The fields of one part, by name.
 #[derive(Clone, Debug, PartialEq, Default)]
 pub struct Values {
-    map: BTreeMap<&'static str, FieldValue>,
+    /// Shared between the states of a spec that leave a part alone.
+    map: Arc<BTreeMap<&'static str, FieldValue>>,
 }
 
 impl Values {
     /// Sets a field.
     pub fn set(&mut self, name: &'static str, value: FieldValue) {
-        self.map.insert(name, value);
+        Arc::make_mut(&mut self.map).insert(name, value);
     }
 
     /// The same with a field set.

@@ -217,15 +217,15 @@ fn part_spec(eval: &Eval<'_>, item: ItemRef, items: &mut Vec<ItemRef>) -> Option
 fn settings(eval: &Eval<'_>, at: ItemRef, items: &[ItemRef]) -> Option<Settings> {
     let mut settings = Settings::default();
     let mut sound = true;
-    for slot in eval.all_given(at).into_keys() {
+    for slot in eval.all_given(at).keys() {
         if &*slot.0 == "gear" {
-            match eval.field(at, &slot) {
+            match eval.field(at, slot) {
                 Some(datum) => settings.gear = gear_name(&datum),
                 None => sound = false,
             }
             continue;
         }
-        let Some(read) = eval.read(at, &slot) else {
+        let Some(read) = eval.read(at, slot) else {
             sound = false;
             continue;
         };

@@ -28,6 +28,7 @@ mod load;
 mod record;
 mod sink;
 mod solver;
+mod unit_memo;
 mod world;
 
 use std::sync::Arc;
@@ -81,6 +82,7 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     let parts = defs::parts(&world, &sink);
     let drives = drives::drives(&world, &sink);
     let tables = fields::Tables::default();
+    let units = unit_memo::Units::default();
     let shared = Shared {
         world: &world,
         parts: &parts,
@@ -88,6 +90,7 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
         files,
         tables: &tables,
         solver: &memo.solver,
+        units: &units,
         sink: &sink,
     };
     let mut analysis = Analysis::default();

@@ -1,5 +1,7 @@
 //! A value of the language: a quantity with its type, its limits and the unit it was written in; or a flag, a word, a text.
 
+use std::sync::Arc;
+
 use layshaft_units::Type;
 
 /// A number with its kind.
@@ -17,7 +19,7 @@ pub struct Quantity {
     /// The confidence the limits were stated with, as a ratio.
     pub confidence: Option<f64>,
     /// The unit it was written in or is best shown in, canonical spelling.
-    pub unit: Option<Box<str>>,
+    pub unit: Option<Arc<str>>,
 }
 
 impl Quantity {

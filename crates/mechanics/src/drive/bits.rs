@@ -5,7 +5,7 @@
 //! their bits by running together.
 
 use super::{Chain, Direction, DriveSpec, PartSpec, Port, Settings, StatedSpeed};
-use crate::values::{Duty, FieldValue, Table};
+use crate::values::{Duty, FieldValue, Gear, Table};
 
 /// The exact bits of a drive or of a question about it.
 #[derive(Clone, Debug, Default, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -117,15 +117,20 @@ impl Bits {
             FieldValue::Gears(gears) => {
                 self.mark(8);
                 self.count(gears.len());
-                for (name, ratio) in gears {
-                    self.text(name);
-                    self.number(*ratio);
-                }
+                gears.iter().for_each(|gear| self.gear(gear));
             }
             FieldValue::Duty(duty) => {
                 self.mark(9);
                 self.duty(*duty);
             }
+        }
+    }
+
+    fn gear(&mut self, gear: &Gear) {
+        let Gear { name, reduction, efficiency, efficiency_backward } = gear;
+        self.text(name);
+        for value in [reduction, efficiency, efficiency_backward] {
+            self.maybe(*value, Self::number);
         }
     }
 
@@ -206,7 +211,7 @@ impl Bits {
 mod tests {
     use super::super::{Chain, DriveSpec, PartSpec, Port, Settings, StatedSpeed};
     use crate::registry::{Role, row};
-    use crate::values::{FieldValue, Table, Values};
+    use crate::values::{FieldValue, Gear, Table, Values};
 
     fn part(name: &str, role: Role, kind: &str, values: Values) -> PartSpec {
         PartSpec { name: name.to_owned(), row: row(role, kind).expect("a kind"), values, on: true }
@@ -255,7 +260,8 @@ mod tests {
             drive(FieldValue::Word("none")),
             drive(FieldValue::Flag(true)),
             drive(FieldValue::Part(1)),
-            drive(FieldValue::Gears(vec![("1".to_owned(), 2.0)])),
+            drive(FieldValue::Gears(vec![Gear::of("1", 2.0)])),
+            drive(FieldValue::Gears(vec![Gear { efficiency: Some(0.9), ..Gear::of("1", 2.0) }])),
             drive(table(&[1.0, 2.0], &[])),
             drive(table(&[1.0], &[("at", 2.0)])),
             changed(&|drive| drive.parts[0].name.push('x')),

@@ -57,8 +57,7 @@ pub const CHECKED: &[Checked] = &[
 /// Torque at a slip; below zero above the synchronous speed. Written without a division by the slip, which may be 0.
 #[must_use]
 pub fn torque<R: Real>(breakdown_torque: f64, breakdown_slip: f64, slip: R) -> R {
-    let ratio = slip * (1.0 / breakdown_slip);
-    ratio * (2.0 * breakdown_torque) / (ratio.square() + 1.0)
+    (slip * (1.0 / breakdown_slip)).kloss(2.0 * breakdown_torque)
 }
 
 /// Slip at breakdown, from the slip at the rated point and the ratio of breakdown to rated torque (1 or above).

@@ -18,11 +18,13 @@ pub struct Dual {
 impl Dual {
     /// The variable itself.
     #[must_use]
+    #[inline]
     pub fn variable(value: f64) -> Self {
         Self { value, slope: 1.0 }
     }
 
     /// A function of one number by its value and derivative here.
+    #[inline]
     fn chain(self, value: f64, rate: f64) -> Self {
         Self { value, slope: if self.slope == 0.0 { 0.0 } else { rate * self.slope } }
     }
@@ -30,6 +32,7 @@ impl Dual {
 
 impl Neg for Dual {
     type Output = Self;
+    #[inline]
     fn neg(self) -> Self {
         Self { value: -self.value, slope: -self.slope }
     }
@@ -37,6 +40,7 @@ impl Neg for Dual {
 
 impl Add for Dual {
     type Output = Self;
+    #[inline]
     fn add(self, other: Self) -> Self {
         Self { value: self.value + other.value, slope: self.slope + other.slope }
     }
@@ -44,6 +48,7 @@ impl Add for Dual {
 
 impl Sub for Dual {
     type Output = Self;
+    #[inline]
     fn sub(self, other: Self) -> Self {
         Self { value: self.value - other.value, slope: self.slope - other.slope }
     }
@@ -51,6 +56,7 @@ impl Sub for Dual {
 
 impl Mul for Dual {
     type Output = Self;
+    #[inline]
     fn mul(self, other: Self) -> Self {
         Self { value: self.value * other.value, slope: self.slope * other.value + self.value * other.slope }
     }
@@ -58,6 +64,7 @@ impl Mul for Dual {
 
 impl Div for Dual {
     type Output = Self;
+    #[inline]
     fn div(self, other: Self) -> Self {
         let value = self.value / other.value;
         Self { value, slope: (self.slope - value * other.slope) / other.value }
@@ -66,6 +73,7 @@ impl Div for Dual {
 
 impl Add<f64> for Dual {
     type Output = Self;
+    #[inline]
     fn add(self, other: f64) -> Self {
         Self { value: self.value + other, slope: self.slope }
     }
@@ -73,6 +81,7 @@ impl Add<f64> for Dual {
 
 impl Sub<f64> for Dual {
     type Output = Self;
+    #[inline]
     fn sub(self, other: f64) -> Self {
         Self { value: self.value - other, slope: self.slope }
     }
@@ -80,6 +89,7 @@ impl Sub<f64> for Dual {
 
 impl Mul<f64> for Dual {
     type Output = Self;
+    #[inline]
     fn mul(self, other: f64) -> Self {
         Self { value: self.value * other, slope: self.slope * other }
     }
@@ -87,18 +97,22 @@ impl Mul<f64> for Dual {
 
 impl Div<f64> for Dual {
     type Output = Self;
+    #[inline]
     fn div(self, other: f64) -> Self {
         Self { value: self.value / other, slope: self.slope / other }
     }
 }
 
 impl Real for Dual {
+    #[inline]
     fn of(value: f64) -> Self {
         Self { value, slope: 0.0 }
     }
+    #[inline]
     fn square(self) -> Self {
         self * self
     }
+    #[inline]
     fn sqrt(self) -> Self {
         if self.value > 0.0 {
             let root = self.value.sqrt();
@@ -131,15 +145,26 @@ impl Real for Dual {
         let value = libm::tanh(self.value);
         self.chain(value, 1.0 - value * value)
     }
+    #[inline]
+    fn kloss(self, factor: f64) -> Self {
+        let square = self.value * self.value;
+        let below = square + 1.0;
+        let rate = factor * (1.0 - square) / (below * below);
+        Self { value: self.value * factor / below, slope: rate * self.slope }
+    }
+    #[inline]
     fn abs(self) -> Self {
         self.by_sign(1.0, -1.0)
     }
+    #[inline]
     fn min(self, other: Self) -> Self {
         if other.value < self.value { other } else { self }
     }
+    #[inline]
     fn max(self, other: Self) -> Self {
         if other.value > self.value { other } else { self }
     }
+    #[inline]
     fn by_sign(self, above: f64, below: f64) -> Self {
         if self.value >= 0.0 { self * above } else { self * below }
     }

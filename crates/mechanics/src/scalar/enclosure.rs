@@ -21,12 +21,14 @@ pub struct Enclosure {
 impl Enclosure {
     /// The variable itself over a range.
     #[must_use]
+    #[inline]
     pub fn variable(lo: f64, hi: f64) -> Self {
         Self { value: Interval::new(lo, hi), slope: Interval::point(1.0) }
     }
 
     /// The smallest enclosure that holds both.
     #[must_use]
+    #[inline]
     pub fn hull(self, other: Self) -> Self {
         Self { value: self.value.hull(other.value), slope: self.slope.hull(other.slope) }
     }
@@ -113,6 +115,40 @@ impl Div<f64> for Enclosure {
         let divisor = Interval::point(other);
         Self { value: self.value / divisor, slope: self.slope / divisor }
     }
+}
+
+/// Beyond this the square of a number, or a fraction of it, leaves what can be computed.
+const VAST: f64 = 1e75;
+
+/// `x / (x² + 1)` over a range within [`VAST`]: it rises between -1 and 1 and falls outside.
+#[inline]
+fn hump(x: Interval) -> Interval {
+    let at = |x: f64| x / (x * x + 1.0);
+    let (first, last) = (at(x.lo), at(x.hi));
+    let (mut lo, mut hi) = if first <= last { (first, last) } else { (last, first) };
+    if x.lo < 1.0 && x.hi > 1.0 {
+        hi = 0.5;
+    }
+    if x.lo < -1.0 && x.hi > -1.0 {
+        lo = -0.5;
+    }
+    // At zero the value is exact; and numbers next to zero are slow.
+    let beside = |end: f64, other: f64| {
+        if end == 0.0 { Interval { lo: end, hi: end } } else { Interval { lo: end, hi: other }.widened(3) }
+    };
+    Interval { lo: beside(lo, lo).lo, hi: beside(hi, hi).hi }
+}
+
+/// The derivative of the same, `(1 - u) / (1 + u)²` with u = x²: it falls up to u = 3 and rises behind.
+#[inline]
+fn hump_slope(x: Interval) -> Interval {
+    // What the rounding of x² leaves of 1 - u, the denominator being 1 at least.
+    const SLACK: f64 = 1e-15;
+    let square = x.square();
+    let at = |u: f64| (1.0 - u) / ((1.0 + u) * (1.0 + u));
+    let (first, last) = (at(square.lo), at(square.hi));
+    let low = if square.lo < 3.0 && square.hi > 3.0 { -0.125 } else { f64::min(first, last) };
+    Interval { lo: low - SLACK, hi: f64::max(first, last) + SLACK }
 }
 
 /// Sine over an interval of angles.
@@ -206,6 +242,16 @@ impl Real for Enclosure {
         let value = Interval::new(libm::tanh(self.value.lo), libm::tanh(self.value.hi)).widened(3);
         let rate = (Interval::point(1.0) - value.square()).meet(Interval { lo: 0.0, hi: 1.0 });
         Self { value, slope: rate * self.slope }
+    }
+
+    #[inline]
+    fn kloss(self, factor: f64) -> Self {
+        // Not so for what is no number either.
+        if !(self.value.magnitude() < VAST && factor.is_finite()) {
+            return self * factor / (self.square() + 1.0);
+        }
+        let value = hump(self.value).times(factor);
+        Self { value, slope: hump_slope(self.value).times(factor) * self.slope }
     }
 
     fn abs(self) -> Self {

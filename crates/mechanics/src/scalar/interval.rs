@@ -17,16 +17,29 @@ const BEYOND: f64 = 1.2e-16;
 /// The same for results near zero.
 const TINY: f64 = f64::from_bits(1);
 
+/// The least magnitude at which a share of it is no smaller than what rounding can take.
+const PLAIN: f64 = 1e-280;
+
+/// Whether a result is neither near zero nor beyond all numbers: then a share of it is all there is to step over.
+#[inline]
+fn plain(size: f64) -> bool {
+    (PLAIN..=f64::MAX).contains(&size)
+}
+
 /// A lower bound just below a rounded result; open where the result is no number.
 #[inline]
 fn down(value: f64) -> f64 {
-    f64::max(value - (value.abs() * BEYOND + TINY), f64::NEG_INFINITY)
+    let size = value.abs();
+    let step = size * BEYOND;
+    if plain(size) { value - step } else { f64::max(value - (step + TINY), f64::NEG_INFINITY) }
 }
 
 /// An upper bound just above a rounded result; open where the result is no number.
 #[inline]
 fn up(value: f64) -> f64 {
-    f64::min(value + (value.abs() * BEYOND + TINY), f64::INFINITY)
+    let size = value.abs();
+    let step = size * BEYOND;
+    if plain(size) { value + step } else { f64::min(value + (step + TINY), f64::INFINITY) }
 }
 
 impl Interval {
@@ -37,6 +50,7 @@ impl Interval {
 
     /// From `lo` to `hi`; the ends are put in order, and an end that is not a number opens the interval.
     #[must_use]
+    #[inline]
     pub fn new(lo: f64, hi: f64) -> Self {
         if lo.is_nan() || hi.is_nan() {
             Self::ENTIRE
@@ -49,18 +63,21 @@ impl Interval {
 
     /// One number.
     #[must_use]
+    #[inline]
     pub fn point(value: f64) -> Self {
         Self::new(value, value)
     }
 
     /// The smallest interval that holds both.
     #[must_use]
+    #[inline]
     pub fn hull(self, other: Self) -> Self {
         Self { lo: f64::min(self.lo, other.lo), hi: f64::max(self.hi, other.hi) }
     }
 
     /// What both hold; `self` where they hold nothing in common.
     #[must_use]
+    #[inline]
     pub fn meet(self, other: Self) -> Self {
         let (lo, hi) = (f64::max(self.lo, other.lo), f64::min(self.hi, other.hi));
         if lo <= hi { Self { lo, hi } } else { self }
@@ -68,12 +85,14 @@ impl Interval {
 
     /// Whether a number is inside.
     #[must_use]
+    #[inline]
     pub fn holds(self, value: f64) -> bool {
         self.lo <= value && value <= self.hi
     }
 
     /// The middle, always inside.
     #[must_use]
+    #[inline]
     pub fn mid(self) -> f64 {
         let mid = 0.5 * self.lo + 0.5 * self.hi;
         if mid.is_finite() { mid.clamp(self.lo, self.hi) } else { 0.0 }
@@ -81,12 +100,14 @@ impl Interval {
 
     /// `hi - lo`.
     #[must_use]
+    #[inline]
     pub fn width(self) -> f64 {
         self.hi - self.lo
     }
 
     /// The greatest magnitude inside.
     #[must_use]
+    #[inline]
     pub fn magnitude(self) -> f64 {
         f64::max(self.lo.abs(), self.hi.abs())
     }
@@ -112,7 +133,9 @@ impl Interval {
         } else {
             (0.0, f64::max(-self.lo, self.hi))
         };
-        Self { lo: f64::max(down(least * least), 0.0), hi: up(most * most) }
+        let low = least * least;
+        // Numbers next to zero are slow.
+        Self { lo: if low == 0.0 { low } else { f64::max(down(low), 0.0) }, hi: up(most * most) }
     }
 }
 

@@ -32,76 +32,119 @@ pub fn sole_operating_point<S: Law, L: Law>(
         return Sole::Open;
     }
     match bracket(source, load, low, high) {
-        Found::One(lo, hi, falls) => {
-            let x = newton(source, load, (lo, hi), falls);
+        Found::One(bracket) => {
+            let x = newton(source, load, &bracket);
             let station = Station::of(x, source.eval(x));
-            if falls { Sole::Stable(station) } else { Sole::Unstable(station) }
+            if bracket.falls { Sole::Stable(station) } else { Sole::Unstable(station) }
         }
         Found::None => Sole::Nowhere,
         Found::Unsettled => Sole::Open,
     }
 }
 
+/// A stretch on which the net torque falls or rises throughout and changes its sign.
+struct Bracket {
+    ends: (f64, f64),
+    /// Net torque at the ends.
+    nets: (f64, f64),
+    falls: bool,
+}
+
 enum Found {
-    One(f64, f64, bool),
+    One(Bracket),
     None,
     Unsettled,
 }
 
-/// Boxes looked at, and kept waiting, before it is left open.
-const BOXES: usize = 400;
-const WAITING: usize = 48;
+/// Pieces looked at before it is left open.
+const PIECES: usize = 400;
+/// How often the range is halved before it is left open.
+const DEEPEST: u32 = 46;
+
+/// A piece: the range halved `level` times, the one of number `index` from below.
+#[derive(Clone, Copy)]
+struct Piece {
+    index: u64,
+    level: u32,
+}
+
+impl Piece {
+    /// Its ends; pieces that touch share theirs to the bit.
+    #[inline]
+    fn ends(self, low: f64, high: f64) -> (f64, f64) {
+        if self.level == 0 {
+            return (low, high);
+        }
+        let parts = (1_u64 << self.level) as f64;
+        let at = |index: u64| {
+            let share = index as f64 / parts;
+            low * (1.0 - share) + high * share
+        };
+        (at(self.index), at(self.index + 1))
+    }
+
+    #[inline]
+    fn lower_half(self) -> Self {
+        Self { index: 2 * self.index, level: self.level + 1 }
+    }
+
+    /// The piece behind it, the largest that begins there; none at the end of the range.
+    #[inline]
+    fn next(self) -> Option<Self> {
+        let (mut index, mut level) = (self.index + 1, self.level);
+        while level > 0 && index % 2 == 0 {
+            index /= 2;
+            level -= 1;
+        }
+        (level > 0).then_some(Self { index, level })
+    }
+}
 
 /// Looks for stretches on which the net torque falls or rises throughout and changes its sign.
 fn bracket<S: Law, L: Law>(source: &S, load: &L, low: f64, high: f64) -> Found {
     let net = |x: f64| source.eval(x) - load.eval(x);
-    let mut waiting = [(0.0, 0.0); WAITING];
-    waiting[0] = (low, high);
-    let mut count = 1;
     let mut one = Found::None;
-    for _ in 0..BOXES {
-        if count == 0 {
-            return one;
-        }
-        count -= 1;
-        let (lo, hi) = waiting[count];
+    let mut here = Piece { index: 0, level: 0 };
+    for _ in 0..PIECES {
+        let (lo, hi) = here.ends(low, high);
         let range = Enclosure::variable(lo, hi);
         let over = source.eval(range) - load.eval(range);
-        if !over.value.holds(0.0) {
-            continue;
-        }
-        if over.slope.hi < 0.0 || over.slope.lo > 0.0 {
-            // A zero on the border of two boxes belongs to the right one.
-            let (first, last) = (net(lo), net(hi));
+        let falls = over.slope.hi < 0.0;
+        if over.value.holds(0.0) {
+            if !(falls || over.slope.lo > 0.0) {
+                if here.level == DEEPEST || lo >= hi {
+                    return Found::Unsettled;
+                }
+                here = here.lower_half();
+                continue;
+            }
+            // A zero on the border of two pieces belongs to the right one.
+            let nets = (net(lo), net(hi));
+            let (first, last) = nets;
             let crosses =
                 first == 0.0 || (last != 0.0 && (first > 0.0) != (last > 0.0)) || (last == 0.0 && hi == high);
             if crosses {
                 if matches!(one, Found::One(..)) {
                     return Found::Unsettled;
                 }
-                one = Found::One(lo, hi, over.slope.hi < 0.0);
+                one = Found::One(Bracket { ends: (lo, hi), nets, falls });
             }
-            continue;
         }
-        let middle = 0.5 * lo + 0.5 * hi;
-        if count + 2 > WAITING || middle <= lo || middle >= hi {
-            return Found::Unsettled;
+        match here.next() {
+            Some(next) => here = next,
+            None => return one,
         }
-        waiting[count] = (middle, hi);
-        waiting[count + 1] = (lo, middle);
-        count += 2;
     }
     Found::Unsettled
 }
 
 /// Newton's method from the chord, held inside the bracket of a zero of one-signed slope.
-fn newton<S: Law, L: Law>(source: &S, load: &L, (mut lo, mut hi): (f64, f64), falls: bool) -> f64 {
-    let net = |x: f64| source.eval(x) - load.eval(x);
-    let (first, last) = (net(lo), net(hi));
+fn newton<S: Law, L: Law>(source: &S, load: &L, of: &Bracket) -> f64 {
+    let ((mut lo, mut hi), (first, last)) = (of.ends, of.nets);
     let mut x = (lo + (hi - lo) * (first / (first - last))).clamp(lo, hi);
     for _ in 0..100 {
         let here = source.eval(Dual::variable(x)) - load.eval(Dual::variable(x));
-        if (here.value > 0.0) == falls {
+        if (here.value > 0.0) == of.falls {
             lo = x;
         } else {
             hi = x;

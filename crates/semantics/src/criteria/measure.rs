@@ -17,12 +17,19 @@ pub(super) fn comparison(
     whole: &Expr,
     reading: Reading<'_>,
 ) -> Judged {
-    let Some(holds) = eval.flag(whole, reading) else { return Judged::default() };
+    eval.watch_comparisons();
+    let holds = eval.flag(whole, reading);
+    let compared = eval.watched_comparisons();
+    let Some(holds) = holds else { return Judged::default() };
+    let sides = |left: &Expr, right: &Expr| {
+        let known = compared.iter().find(|one| one.is(reading.at, left, right));
+        known.map(|one| one.sides.clone()).or_else(|| sides(eval, left, right, reading))
+    };
     let flagged = Judged { holds: Some(holds), measure: None };
     let mut limits = Vec::new();
     let found = match rest {
         [(op, _, second)] => {
-            let Some((a, b)) = sides(eval, first, second, reading) else { return flagged };
+            let Some((a, b)) = sides(first, second) else { return flagged };
             // What is asked for is the side that a result or a value gives; a literal is the limit.
             let limit_first = crate::eval::is_literal(first) || (has_result(second) && !has_result(first));
             let (found, limit, op) = if limit_first { (b, a, mirrored(*op)) } else { (a, b, *op) };
@@ -30,8 +37,8 @@ pub(super) fn comparison(
             found
         }
         [(op, _, second), (other, _, third)] => {
-            let Some((a, b)) = sides(eval, first, second, reading) else { return flagged };
-            let Some((_, c)) = sides(eval, second, third, reading) else { return flagged };
+            let Some((a, b)) = sides(first, second) else { return flagged };
+            let Some((_, c)) = sides(second, third) else { return flagged };
             limits.push((mirrored(*op), a));
             limits.push((*other, c));
             b

@@ -52,7 +52,7 @@ fn shown(
         && let Some(unit) = eval.unit(written, at, Some(&quantity.ty), None)
     {
         match layshaft_units::unify(&quantity.ty, &unit.ty) {
-            Ok(_) => quantity.unit = Some(unit.text.into()),
+            Ok(_) => quantity.unit = Some(std::sync::Arc::clone(&unit.spelling)),
             Err(refusal) => {
                 let place = eval.place(at, written.span);
                 let message = format!("this cannot be shown in {}: {}", unit.text, refusal.message());

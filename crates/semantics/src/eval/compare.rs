@@ -6,8 +6,33 @@ use layshaft_syntax::{CompareOp, Expr, ExprKind};
 use super::expr::{is_literal, what};
 use super::{Eval, Reading};
 use crate::quantity::{Datum, Quantity};
+use crate::world::ItemRef;
+
+/// Two sides that were compared, by their place.
+pub(crate) struct Compared {
+    at: ItemRef,
+    spans: (Span, Span),
+    pub sides: (Quantity, Quantity),
+}
+
+impl Compared {
+    /// Whether these are the sides meant.
+    pub fn is(&self, at: ItemRef, left: &Expr, right: &Expr) -> bool {
+        self.at == at && self.spans == (left.span, right.span)
+    }
+}
 
 impl Eval<'_> {
+    /// From now on the sides of every comparison are kept.
+    pub fn watch_comparisons(&self) {
+        *self.compared.borrow_mut() = Some(Vec::new());
+    }
+
+    /// The sides compared since.
+    pub fn watched_comparisons(&self) -> Vec<Compared> {
+        self.compared.borrow_mut().take().unwrap_or_default()
+    }
+
     pub(super) fn compare(
         &self,
         first: &Expr,
@@ -29,6 +54,10 @@ impl Eval<'_> {
             return self.equality(op, equal, left.span.cover(right.span), reading);
         }
         let (a, b) = self.operands(left, right, reading)?;
+        if let Some(compared) = &mut *self.compared.borrow_mut() {
+            let spans = (left.span, right.span);
+            compared.push(Compared { at: reading.at, spans, sides: (a.clone(), b.clone()) });
+        }
         if !(a.is_known() && b.is_known()) {
             return None;
         }

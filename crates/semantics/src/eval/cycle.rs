@@ -1,13 +1,34 @@
 //! A value that depends on itself, told with its path.
 
-use layshaft_diagnostics::{Code, Diagnostic, FileSpan};
+use layshaft_diagnostics::{Code, Diagnostic, FileSpan, Span};
 
-use super::Eval;
+use super::{Doing, Eval, Slot};
+use crate::world::ItemRef;
 
 impl Eval<'_> {
+    /// The name of what is computed, and its place.
+    fn named(&self, doing: &Doing) -> (Box<str>, FileSpan) {
+        let name = |at: ItemRef| self.shared.world.name(at);
+        let text = |at| name(at).map_or("", |name| &name.text);
+        match doing {
+            Doing::Item(at) => {
+                let span = name(*at).map_or_else(Span::default, |name| name.span);
+                (text(*at).into(), self.place(*at, span))
+            }
+            Doing::Field(slot, place) => {
+                let label = match &**slot {
+                    Slot::Let(at) => text(*at).to_owned(),
+                    Slot::Field(at, field) => format!("{}.{}", text(*at), crate::defs::slot_text(field)),
+                };
+                (label.into(), *place)
+            }
+        }
+    }
+
     /// Reports the ring that closes at a name met again; the same ring once, wherever it was entered.
-    pub(super) fn report_cycle(&self, (name, place): (Box<str>, FileSpan)) {
-        let stack = self.stack.borrow();
+    pub(super) fn report_cycle(&self, doing: &Doing) {
+        let (name, place) = self.named(doing);
+        let stack: Vec<_> = self.stack.borrow().iter().map(|doing| self.named(doing)).collect();
         let from = stack.iter().position(|(_, at)| *at == place).unwrap_or(0);
         let mut ring: Vec<&(Box<str>, FileSpan)> = stack[from..].iter().collect();
         // The same ring is told once, from its first place in the text, wherever it was entered.

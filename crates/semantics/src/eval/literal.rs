@@ -1,11 +1,15 @@
 //! Numbers with their units, and the messages for the ways they go wrong.
 
+use std::rc::Rc;
+use std::sync::{Arc, OnceLock};
+
 use layshaft_diagnostics::{Code, Diagnostic, FileSpan, Span};
 use layshaft_syntax::{Expr, Number, UnitText};
-use layshaft_units::{Kind, Refusal, Type, Unit, UnitError};
+use layshaft_units::{Kind, Refusal, Type, UnitError};
 
 use super::{Eval, Reading, article};
 use crate::quantity::Quantity;
+use crate::unit_memo::Read;
 use crate::world::{Declared, ItemRef};
 
 impl Eval<'_> {
@@ -42,7 +46,7 @@ impl Eval<'_> {
             limits: None,
             is_range: false,
             confidence: None,
-            unit: Some(unit.text.into()),
+            unit: Some(Arc::clone(&unit.spelling)),
         };
         self.finite(quantity, reading, number.span.cover(written.span))
     }
@@ -54,16 +58,8 @@ impl Eval<'_> {
         at: ItemRef,
         wanted: Option<&Type>,
         number: Option<&Number>,
-    ) -> Option<Unit> {
-        let unit = match layshaft_units::parse_unit(&written.text) {
-            Ok(unit) => unit,
-            Err(error) => {
-                self.report(self.bad_unit(written, &error, at, number));
-                return None;
-            }
-        };
-        let Some(wanted) = wanted else { return Some(unit) };
-        match layshaft_units::interpret_unit(&unit, wanted) {
+    ) -> Option<Rc<Read>> {
+        match self.shared.units.read(&written.text, wanted) {
             Ok(unit) => Some(unit),
             Err(error) => {
                 self.report(self.bad_unit(written, &error, at, number));
@@ -243,6 +239,19 @@ impl Eval<'_> {
 
 /// Whether a unit is one of those offered for some kind, or written with the sign that only units have.
 fn is_usual(unit: &str) -> bool {
-    let text = unit.replace('*', "·").replace("^2", "²").replace("^3", "³");
-    unit.contains('·') || layshaft_units::KINDS.iter().any(|kind| kind.units.contains(&text.as_str()))
+    static OFFERED: OnceLock<Vec<&'static str>> = OnceLock::new();
+    if unit.contains('·') {
+        return true;
+    }
+    let offered = OFFERED.get_or_init(|| {
+        let units = layshaft_units::KINDS.iter().flat_map(|kind| kind.units);
+        let mut units: Vec<&str> = units.copied().collect();
+        units.sort_unstable();
+        units
+    });
+    let is_offered = |unit: &str| offered.binary_search(&unit).is_ok();
+    if unit.contains(['*', '^']) {
+        return is_offered(&unit.replace('*', "·").replace("^2", "²").replace("^3", "³"));
+    }
+    is_offered(unit)
 }

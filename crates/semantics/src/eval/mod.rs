@@ -4,6 +4,7 @@ mod compare;
 mod cycle;
 mod expr;
 mod literal;
+mod memo;
 mod path;
 mod tolerance;
 
@@ -23,9 +24,12 @@ use crate::fields::{Built, FieldRead};
 use crate::quantity::{Datum, Quantity};
 use crate::sink::Sink;
 use crate::solver::Solver;
+use crate::unit_memo::Units;
 use crate::world::{ItemRef, World};
 
-pub(crate) use compare::compare_words;
+use memo::{ByItem, Fields, Memo, Once};
+
+pub(crate) use compare::{Compared, compare_words};
 pub(crate) use expr::is_literal;
 pub(crate) use path::{Station, is_constant, unknown};
 
@@ -48,6 +52,7 @@ pub(crate) struct Shared<'w> {
     pub files: &'w dyn crate::files::Files,
     pub tables: &'w crate::fields::Tables,
     pub solver: &'w Solver,
+    pub units: &'w Units,
     pub sink: &'w Sink,
 }
 
@@ -79,12 +84,12 @@ impl<'a> Reading<'a> {
     }
 }
 
-enum Memo<T> {
-    Busy,
-    Done(T),
+/// What is being computed: a declaration, or a field as given somewhere.
+#[derive(Clone)]
+enum Doing {
+    Item(ItemRef),
+    Field(Rc<Slot>, FileSpan),
 }
-
-type Memos<K, T> = RefCell<BTreeMap<K, Memo<T>>>;
 
 /// One state of the spec.
 pub(crate) struct Eval<'w> {
@@ -96,12 +101,14 @@ pub(crate) struct Eval<'w> {
     pub gear: Option<Box<str>>,
     /// Whether a drum whose layer the spec leaves open runs on its first layer instead of its top one.
     pub first_layer: bool,
-    lets: Memos<ItemRef, Option<Datum>>,
-    fields: Memos<Slot, Option<Rc<FieldRead>>>,
-    built: Memos<ItemRef, Option<Rc<Built>>>,
-    solved: Memos<ItemRef, Rc<Solved>>,
+    lets: RefCell<ByItem<Memo<Option<Datum>>>>,
+    fields: RefCell<Fields<Option<Rc<FieldRead>>>>,
+    built: RefCell<ByItem<Memo<Option<Rc<Built>>>>>,
+    solved: RefCell<ByItem<Memo<Rc<Solved>>>>,
     /// What is being computed right now, outermost first: a name met twice is a cycle.
-    stack: RefCell<Vec<(Box<str>, FileSpan)>>,
+    stack: RefCell<Vec<Doing>>,
+    /// The sides compared since this was asked for.
+    compared: RefCell<Option<Vec<Compared>>>,
     /// Why the last result asked for is not there, in words.
     remark: RefCell<Option<Remark>>,
 }
@@ -131,6 +138,7 @@ impl<'w> Eval<'w> {
             built: RefCell::default(),
             solved: RefCell::default(),
             stack: RefCell::default(),
+            compared: RefCell::default(),
             remark: RefCell::default(),
         }
     }
@@ -159,28 +167,28 @@ impl<'w> Eval<'w> {
     }
 
     /// Computes once; a value that asks for itself on the way is a cycle, reported with its path.
-    fn once<K: Ord + Clone, T: Clone>(
+    fn once<K, T: Clone, M: Once<K, T>>(
         &self,
-        memos: impl Fn(&Self) -> &Memos<K, T>,
-        key: K,
-        name: impl FnOnce() -> (Box<str>, FileSpan),
+        memos: impl Fn(&Self) -> &RefCell<M>,
+        key: &K,
+        doing: Doing,
         unknown: T,
         compute: impl FnOnce() -> T,
     ) -> T {
-        match memos(self).borrow().get(&key) {
+        match memos(self).borrow().get(key) {
             Some(Memo::Done(value)) => return value.clone(),
             Some(Memo::Busy) => {
-                self.report_cycle(name());
+                self.report_cycle(&doing);
                 return unknown;
             }
             None => {}
         }
-        memos(self).borrow_mut().insert(key.clone(), Memo::Busy);
-        self.stack.borrow_mut().push(name());
+        memos(self).borrow_mut().set(key, Memo::Busy);
+        self.stack.borrow_mut().push(doing);
         // A chain of ten thousand values is fair text; the stack grows with it.
         let value = stacker::maybe_grow(256 * 1024, 8 * 1024 * 1024, compute);
         self.stack.borrow_mut().pop();
-        memos(self).borrow_mut().insert(key, Memo::Done(value.clone()));
+        memos(self).borrow_mut().set(key, Memo::Done(value.clone()));
         value
     }
 
@@ -192,13 +200,12 @@ impl<'w> Eval<'w> {
     /// The same, of a known kind where the value is not to be had.
     pub(super) fn let_typed(&self, at: ItemRef) -> Option<Datum> {
         let world = self.shared.world;
-        let ItemKind::Let { name, kind, value } = &world.tree(at).kind else { return None };
+        let ItemKind::Let { kind, value, .. } = &world.tree(at).kind else { return None };
         let slot = Slot::Let(at);
-        let place = (name.text.clone(), world.place(at, name.span));
         self.once(
             |eval| &eval.lets,
-            at,
-            || place,
+            &at,
+            Doing::Item(at),
             None,
             || {
                 let wanted = kind.as_ref().map(|kind| self.kind_of(at, kind));
@@ -301,14 +308,12 @@ impl<'w> Eval<'w> {
     pub fn read(&self, at: ItemRef, name: &SlotName) -> Option<Rc<FieldRead>> {
         let given = self.given(at, name)?;
         let row = self.field_row(at, &name.0)?;
-        let slot = Slot::Field(at, name.clone());
-        let owner = self.shared.world.name(at).map_or("", |name| &name.text);
-        let label: Box<str> = format!("{owner}.{}", crate::defs::slot_text(name)).into();
+        let slot = Rc::new(Slot::Field(at, name.clone()));
         let place = self.place(given.at, given.entry.key.span);
         self.once(
             |eval| &eval.fields,
-            slot.clone(),
-            || (label, place),
+            &*slot,
+            Doing::Field(Rc::clone(&slot), place),
             None,
             || crate::fields::read(self, row, &given, &slot).map(Rc::new),
         )
@@ -323,7 +328,9 @@ impl<'w> Eval<'w> {
 
     /// What is given for a field in this state: the case's override, else the part's own entry.
     pub fn given(&self, at: ItemRef, name: &SlotName) -> Option<Given<'w>> {
-        if let Some(given) = self.overlay.get(&Slot::Field(at, name.clone())) {
+        if !self.overlay.is_empty()
+            && let Some(given) = self.overlay.get(&Slot::Field(at, name.clone()))
+        {
             return Some(*given);
         }
         if let Some(part) = self.shared.parts.get(&at) {
@@ -333,15 +340,16 @@ impl<'w> Eval<'w> {
     }
 
     /// Every field given for a part or drive in this state.
-    pub fn all_given(&self, at: ItemRef) -> BTreeMap<SlotName, Given<'w>> {
+    pub fn all_given(&self, at: ItemRef) -> BTreeMap<&SlotName, Given<'w>> {
         let own = self.shared.parts.get(&at).map(|part| &part.fields);
         let own = own.or_else(|| self.shared.drives.get(&at).map(|drive| &drive.settings));
-        let mut all = own.cloned().unwrap_or_default();
+        let mut all: BTreeMap<&SlotName, Given<'w>> =
+            own.into_iter().flatten().map(|(name, given)| (name, *given)).collect();
         for (slot, given) in &self.overlay {
             if let Slot::Field(item, name) = slot
                 && *item == at
             {
-                all.insert(name.clone(), *given);
+                all.insert(name, *given);
             }
         }
         all
@@ -349,21 +357,21 @@ impl<'w> Eval<'w> {
 
     /// A part's values in this state, and whether they make a model.
     pub fn built(&self, at: ItemRef) -> Option<Rc<Built>> {
-        let world = self.shared.world;
-        let name = world.name(at)?;
-        let place = (name.text.clone(), world.place(at, name.span));
-        self.once(|eval| &eval.built, at, || place, None, || crate::fields::build(self, at).map(Rc::new))
+        self.once(
+            |eval| &eval.built,
+            &at,
+            Doing::Item(at),
+            None,
+            || crate::fields::build(self, at).map(Rc::new),
+        )
     }
 
     /// A drive solved in this state.
     pub fn solved(&self, at: ItemRef) -> Rc<Solved> {
-        let world = self.shared.world;
-        let Some(name) = world.name(at) else { return Rc::default() };
-        let place = (name.text.clone(), world.place(at, name.span));
         self.once(
             |eval| &eval.solved,
-            at,
-            || place,
+            &at,
+            Doing::Item(at),
             Rc::default(),
             || Rc::new(crate::drives::solve(self, at)),
         )

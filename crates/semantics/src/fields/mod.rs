@@ -111,7 +111,7 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
     let mut of_gears = Vec::new();
     for (slot, given) in eval.all_given(at) {
         let Some(field) = part.field(&slot.0) else { continue };
-        let Some(read) = eval.read(at, &slot) else {
+        let Some(read) = eval.read(at, slot) else {
             whole = false;
             continue;
         };

@@ -218,7 +218,7 @@ impl Reader<'_, '_> {
             self.eval.report(Diagnostic::new(Code::KindMismatch, self.span(written.span), message));
             return None;
         }
-        Some(Some(unit))
+        Some(Some((**unit).clone()))
     }
 
     pub(super) fn empty(&self, heads: &Heads, conditions: &[Expr]) -> Option<Table> {
