@@ -241,8 +241,8 @@ pub(crate) fn sort_out(drive: &Assembly) -> Result<Vec<Hangs>, Vec<Fault>> {
                 }
             }
             None => {
-                let how = "different sources hang on a supply that limits its current, or one of them does not know \
-                           the current it takes: how they share it is not settled by their data; give each its own \
+                let how = "different sources hang on a supply that limits its current or flow, or one of them does not know \
+                           the current (or flow) it takes: how they share it is not settled by their data; give each its own \
                            supply, or declare this one stiff and without a limit";
                 faults.push(Fault {
                     part: Some(sources[hung[1]].part),

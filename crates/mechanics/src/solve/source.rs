@@ -7,7 +7,7 @@ use super::chain::Hung;
 use super::ratings::derating;
 use super::shared::{Coupled, Group, Hangs, sort_out};
 use crate::fault::{Fault, FaultKind, Note};
-use crate::model::{Braking, Characteristic, Draw, Feed, Model, Supply, SupplyData};
+use crate::model::{Braking, Characteristic, Draw, Feed, Model, Source, Supply, SupplyData};
 use crate::scalar::Real;
 use crate::values::FieldValue;
 
@@ -130,27 +130,8 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
         };
         let Model::Source(model) = drive.models[at.part].as_ref() else { continue };
         if drive.spec.parts[at.part].on {
-            if let Err(found) = derating(drive, &source) {
-                faults.extend(found.into_iter().map(|f| Fault { part: Some(at.part), ..f }));
-                placed.push(source);
-                continue;
-            }
-            match model.characteristic(&feed) {
+            match taken(drive, &source, model.as_ref()) {
                 Ok(mut character) => {
-                    if !character.reversible && drive.shafts[at.shaft].sense < 0.0 {
-                        let how = "this source runs one way only, and the drive asks for the other: put a reversing \
-                                   stage behind it";
-                        faults.push(Fault {
-                            part: Some(at.part),
-                            kind: FaultKind::Chain { how: Note::plain(how) },
-                        });
-                    }
-                    if let (Some(field), None) = (character.needs_set_speed, drive.set) {
-                        let why = "an inverter runs its motor at a speed or a frequency that is set: the drive's set_speed, or \
-                                   this";
-                        let kind = FaultKind::Missing { any_of: vec![vec![field]], why: Note::plain(why) };
-                        faults.push(Fault { part: Some(at.part), kind });
-                    }
                     if let Hangs::Coupled(group, index) = hangs {
                         character.drive = Box::new(Coupled { group: Arc::clone(&group), index });
                         source.coupled = Some((group, index));
@@ -174,6 +155,23 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
         faults.push(Fault { part: None, kind: FaultKind::Chain { how: Note::plain(how) } });
     }
     if faults.is_empty() { Ok(placed) } else { Err(faults) }
+}
+
+/// What a source gives in its place, or why it cannot stand there.
+fn taken(drive: &Assembly, at: &SourceAt, model: &dyn Source) -> Result<Characteristic, Vec<Fault>> {
+    derating(drive, at)?;
+    let character = model.characteristic(&at.feed)?;
+    let mut faults = Vec::new();
+    if !character.reversible && drive.shafts[at.at.shaft].sense < 0.0 {
+        let how = "this source runs one way only, and the drive asks for the other: put a reversing stage behind it";
+        faults.push(Fault { part: None, kind: FaultKind::Chain { how: Note::plain(how) } });
+    }
+    if let (Some(field), None) = (character.needs_set_speed, drive.set) {
+        let why = "an inverter runs its motor at a speed or a frequency that is set: the drive's set_speed, or this";
+        let kind = FaultKind::Missing { any_of: vec![vec![field]], why: Note::plain(why) };
+        faults.push(Fault { part: None, kind });
+    }
+    if faults.is_empty() { Ok(character) } else { Err(faults) }
 }
 
 /// The set speed at a source's shaft.
