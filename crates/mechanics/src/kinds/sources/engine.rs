@@ -112,12 +112,12 @@ static RESULTS: &[ResultRow] = &[
     ResultRow {
         name: "full_load_torque",
         shape: ResultShape::Quantity("torque"),
-        meaning: "torque at full load at this speed, derating counted",
+        meaning: "torque at full load at this speed, or at the governed speed above it, derating counted",
     },
     ResultRow {
         name: "load_factor",
         shape: ResultShape::Quantity("percentage"),
-        meaning: "torque over full-load torque at this speed",
+        meaning: "torque over full-load torque",
     },
 ];
 
@@ -261,7 +261,9 @@ impl Source for Engine {
 
     fn answer(&self, name: &str, state: &SourceState<'_>) -> Option<Answer> {
         let curve = self.curve(state.feed).ok()?;
-        let speed = f64::max(state.speed, self.idle);
+        // On the governor's line the load is judged by the torque at the governed speed.
+        let governed = self.governed.map_or(f64::INFINITY, |(speed, _)| speed);
+        let speed = f64::min(f64::max(state.speed, self.idle), governed);
         let full = EngineCurve { governor: None, ..curve }.at(speed);
         let (si, kind) = match name {
             "full_load_torque" => (full, "torque"),
