@@ -59,6 +59,8 @@ async function results(editor) {
 }
 
 async function highlighting(editor) {
+  await editor.goto(58, 1);
+  await until("a criterion on the screen", () => editor.line('require "H3-1'));
   const classes = await editor.active.locator(".view-line", { hasText: "require" }).first().locator("span span[class^=mtk]").evaluateAll((spans) =>
     spans.map((span) => [span.textContent.trim(), getComputedStyle(span).color]),
   );
@@ -384,6 +386,8 @@ export const all = [
   { name: "hover with numbers and chart", check: hoverWithChart },
   { name: "squiggle, one message at it", check: squiggle },
   { name: "page of a code", check: pageOfCode },
+  { name: "quick fix", check: quickFix },
+  { name: "completion", check: completion },
   { name: "format", check: format },
   { name: "rename", check: rename },
   { name: "panel opens with chart and numbers", check: panelOpens },
