@@ -24,6 +24,7 @@ export function prepare(workspace) {
   write("broken.shaft", hoist.replace("rated_power = 4 kW", "rated_power = 4 kg"));
   write("unit.shaft", hoist.replace("rated_power = 4 kW", "rated_power = 4 kw"));
   write("messy.shaft", hoist.replace("let block_mass = 60 kg", "let   block_mass=60   kg"));
+  write("typed.shaft", hoist.replace('title "Mill hoist H3"', 'title "To be typed in"'));
   write("named.shaft", hoist.replace('title "Mill hoist H3"', 'title "To be renamed"'));
 }
 
@@ -163,7 +164,7 @@ async function quickFix(editor) {
 }
 
 async function completion(editor) {
-  await editor.open("named.shaft");
+  await editor.open("typed.shaft");
   await until("the server answers", async () => /14\.90/.test((await editor.line("drive lift")) ?? ""));
   await editor.goto(17, 26);
   await editor.page.keyboard.press("End");
