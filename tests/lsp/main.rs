@@ -4,12 +4,17 @@
 mod support;
 
 mod abuse;
+mod actions;
 mod client;
+mod closed;
 mod complete;
+mod documents;
 mod edits;
 mod features;
 mod folder;
 mod life;
+mod long;
 mod places;
 mod pull;
+mod results;
 mod same;

@@ -48,6 +48,9 @@ pub struct Diagnostic {
     pub help: Option<String>,
     /// Changes that mend it, best first.
     pub fixes: Vec<Fix>,
+    /// Fields it is about: any one of these groups given mends a finding of missing fields; the fields of the one group
+    /// of a contradiction cannot all be true.
+    pub fields: Vec<Vec<&'static str>>,
 }
 
 impl Diagnostic {
@@ -63,6 +66,7 @@ impl Diagnostic {
             notes: Vec::new(),
             help: None,
             fixes: Vec::new(),
+            fields: Vec::new(),
         }
     }
 
@@ -91,6 +95,13 @@ impl Diagnostic {
     #[must_use]
     pub fn help(mut self, text: impl Into<String>) -> Self {
         self.help = Some(text.into());
+        self
+    }
+
+    /// The fields it is about, by groups.
+    #[must_use]
+    pub fn fields(mut self, groups: Vec<Vec<&'static str>>) -> Self {
+        self.fields = groups;
         self
     }
 

@@ -2,6 +2,7 @@
 //!
 //! One feature a file, each a function of a [`Snapshot`] and a place; a handler of the server converts, asks, converts.
 
+pub mod actions;
 pub mod base;
 pub mod call_hierarchy;
 pub mod completion;
@@ -18,10 +19,12 @@ pub mod implementations;
 pub mod lenses;
 pub mod links;
 mod markup;
+pub mod moves;
 mod names;
 mod numbers;
 pub mod on_type;
 pub mod references;
+pub mod results;
 pub mod sensitivity;
 pub mod signature;
 pub mod snapshot;

@@ -4,12 +4,13 @@
 use std::sync::Arc;
 
 use layshaft_diagnostics::{FileId, FileSpan};
+use layshaft_mechanics::registry::Shape;
 use layshaft_present::number::{decimals, percent};
 use layshaft_present::shown::joined;
-use layshaft_semantics::analysis::{CriterionRecord, Measure, Verdict};
+use layshaft_semantics::analysis::{Assumption, CriterionRecord, Measure, Verdict};
 use layshaft_semantics::quantity::Datum;
 use layshaft_semantics::{Analysis, Files, Memo, ReadError};
-use layshaft_syntax::ExprKind;
+use layshaft_syntax::{ExprKind, ItemKind};
 
 use crate::markup::{self, text};
 use crate::{Snapshot, tree};
@@ -44,22 +45,40 @@ impl Files for Trial<'_> {
     fn read(&self, path: &str) -> Result<Arc<str>, ReadError> {
         if path == self.path { Ok(Arc::clone(&self.text)) } else { self.files.read(path) }
     }
+
+    fn interrupted(&self) -> bool {
+        self.files.interrupted()
+    }
 }
+
+/// Analyzes the spec with a text in place of a file's; none where there is no time left, or newer text has come.
+pub type Trials<'a> = dyn FnMut(FileId, Arc<str>) -> Option<Analysis> + 'a;
 
 /// Analyzes the spec with one text in place of a file's, for actions that name their effect.
 #[must_use]
-pub fn trial(snapshot: &Snapshot, files: &dyn Files, file: FileId, text: Arc<str>) -> Option<Analysis> {
+pub fn trial(
+    snapshot: &Snapshot,
+    files: &dyn Files,
+    memo: &mut Memo,
+    file: FileId,
+    text: Arc<str>,
+) -> Option<Analysis> {
     let spec = snapshot.file(FileId(0))?;
     let changed = snapshot.file(file)?;
     let over = Trial { path: &changed.path, text: Arc::clone(&text), files };
     let first = if file == FileId(0) { text } else { Arc::clone(&spec.text) };
-    Some(layshaft_semantics::analyze_with(&spec.path, first, &over, &mut Memo::default()))
+    Some(layshaft_semantics::analyze_with(&spec.path, first, &over, memo))
 }
 
 /// How the tightest margin moves when the number at a place grows by one per cent; none where there is no such number,
 /// where it is zero, or where no criterion has a margin.
 #[must_use]
-pub fn sensitivity(snapshot: &Snapshot, files: &dyn Files, file: FileId, offset: u32) -> Option<Sensitivity> {
+pub fn sensitivity(
+    snapshot: &Snapshot,
+    file: FileId,
+    offset: u32,
+    trials: &mut Trials<'_>,
+) -> Option<Sensitivity> {
     let item = snapshot.item(file, offset)?;
     let here = offset.checked_sub(item.offset)?;
     let holding = tree::holding(&item.tree, here);
@@ -67,13 +86,52 @@ pub fn sensitivity(snapshot: &Snapshot, files: &dyn Files, file: FileId, offset:
         ExprKind::Quantity { number, .. } if number.value != 0.0 => Some(number),
         _ => None,
     })?;
-    let (index, tightest, measure) = tightest(&snapshot.analysis)?;
     let span = number.span.shifted(item.offset);
     let source = snapshot.file(file)?;
     let (head, tail) = (source.text.get(..span.start as usize)?, source.text.get(span.end as usize..)?);
     // Digits enough that the trial is one per cent and not a rounding of it; never an exponent.
     let more = format!("{head}{}{tail}", number.value * 1.01);
-    let after = trial(snapshot, files, file, more.into())?;
+    compared(snapshot, FileSpan { file, span }, more.into(), trials)
+}
+
+/// The same for something that is assumed: a number with its basis, or a default of the tool, which is written into
+/// its part for the trial.
+#[must_use]
+pub fn of_assumption(
+    snapshot: &Snapshot,
+    assumption: &Assumption,
+    trials: &mut Trials<'_>,
+) -> Option<Sensitivity> {
+    if let Some(place) = assumption.place {
+        return sensitivity(snapshot, place.file, place.span.start, trials);
+    }
+    let Some(Datum::Quantity(quantity)) = &assumption.value else { return None };
+    let (part, field) = assumption.subject.rsplit_once('.')?;
+    let record = snapshot.analysis.parts.iter().find(|one| one.name == part)?;
+    let row = record.row?.fields.iter().find(|row| row.name == field)?;
+    let Shape::Quantity(kind) = row.shape else { return None };
+    let item = snapshot.item(record.place.file, record.place.span.start)?;
+    let ItemKind::Part { block, .. } = &item.tree.kind else { return None };
+    let unit = layshaft_units::kind(kind)?.si;
+    if quantity.si == 0.0 || block.span.end < block.span.start + 2 {
+        return None;
+    }
+    let at = (item.offset + block.span.start + 1) as usize;
+    let source = snapshot.file(record.place.file)?;
+    let (head, tail) = (source.text.get(..at)?, source.text.get(at..)?);
+    let more = format!("{head} {field} = {} {unit}\n{tail}", quantity.si * 1.01);
+    compared(snapshot, record.place, more.into(), trials)
+}
+
+/// The tightest margin before, and in the trial.
+fn compared(
+    snapshot: &Snapshot,
+    place: FileSpan,
+    more: Arc<str>,
+    trials: &mut Trials<'_>,
+) -> Option<Sensitivity> {
+    let (index, tightest, measure) = tightest(&snapshot.analysis)?;
+    let after = trials(place.file, more)?;
     let same = after.criteria.get(index).filter(|criterion| criterion.clause == tightest.clause)?;
     let moved = governing(same).map(|measure| measure.margin);
     let newly_failing: Vec<String> = snapshot
@@ -86,7 +144,7 @@ pub fn sensitivity(snapshot: &Snapshot, files: &dyn Files, file: FileId, offset:
         .collect();
     let markdown = sentence(&tightest.clause, measure, moved, &newly_failing);
     Some(Sensitivity {
-        place: FileSpan { file, span },
+        place,
         clause: tightest.clause.clone(),
         before: measure.margin,
         after: moved,
@@ -137,9 +195,12 @@ fn sentence(clause: &str, measure: &Measure, after: Option<f64>, failing: &[Stri
 
 #[cfg(test)]
 mod tests {
-    use layshaft_semantics::NoFiles;
+    use std::sync::Arc;
 
-    use super::sensitivity;
+    use layshaft_diagnostics::FileId;
+    use layshaft_semantics::{Memo, NoFiles};
+
+    use super::{sensitivity, trial};
     use crate::fixture::Fixture;
 
     const SPEC: &str = "let limit = 10 N·m
@@ -151,7 +212,10 @@ require \"R2 far\" found <= 100 N·m
 
     fn told(drawn: &str) -> Option<(f64, Option<f64>, String)> {
         let fixture = Fixture::new(drawn);
-        let found = sensitivity(&fixture.snapshot, &NoFiles, fixture.file, fixture.offset)?;
+        let mut memo = Memo::default();
+        let mut trials =
+            |file: FileId, text: Arc<str>| trial(&fixture.snapshot, &NoFiles, &mut memo, file, text);
+        let found = sensitivity(&fixture.snapshot, fixture.file, fixture.offset, &mut trials)?;
         Some((found.before, found.after, found.markdown))
     }
 

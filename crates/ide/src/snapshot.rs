@@ -39,7 +39,17 @@ impl Snapshot {
     /// Analyzes a text; `path` is relative to the root that `files` reads from.
     #[must_use]
     pub fn new(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Self {
-        let analysis = Arc::new(layshaft_semantics::analyze_with(path, text, files, memo));
+        Self::of(layshaft_semantics::analyze_with(path, text, files, memo))
+    }
+
+    /// The names of a text alone: nothing is evaluated, and nothing is found wrong.
+    #[must_use]
+    pub fn read(path: &str, text: Arc<str>, files: &dyn Files) -> Self {
+        Self::of(layshaft_semantics::read(path, text, files, &mut Memo::default()))
+    }
+
+    fn of(analysis: Analysis) -> Self {
+        let analysis = Arc::new(analysis);
         let of = Arc::clone(&analysis);
         let index: MakeIndex = Box::new(move || Index::of(&of));
         Self {

@@ -31,6 +31,14 @@ pub struct Client {
     pub completion: Completion,
     /// Whether charts may stand in a hover.
     pub charts: bool,
+    /// Whether documents of the server's own scheme can be opened.
+    pub documents: bool,
+    /// Whether the client shows a document when asked to.
+    pub shows: bool,
+    /// Whether a code of a finding may link to its page.
+    pub code_links: bool,
+    /// Whether the client shows how long work goes on.
+    pub progress: bool,
     /// The process to end with.
     pub process: Option<u32>,
 }
@@ -82,6 +90,7 @@ impl Client {
         let of = &params.capabilities;
         let workspace = of.workspace.as_ref();
         let document = of.text_document.as_ref();
+        let window = of.window.as_ref();
         let options = params.initialization_options.as_ref();
         let on = |flag: Option<bool>| flag == Some(true);
         Self {
@@ -116,6 +125,13 @@ impl Client {
             completion: document
                 .and_then(|of| of.completion.as_ref())
                 .map_or_else(Completion::default, Completion::new),
+            documents: options.and_then(|of| of.get("documents")).and_then(serde_json::Value::as_bool)
+                == Some(true),
+            shows: window.and_then(|of| of.show_document.as_ref()).is_some_and(|of| of.support),
+            code_links: on(document
+                .and_then(|of| of.publish_diagnostics.as_ref())
+                .and_then(|of| of.code_description_support)),
+            progress: on(window.and_then(|of| of.work_done_progress)),
             process: params.process_id,
             charts: options.and_then(|of| of.get("charts")).and_then(serde_json::Value::as_bool)
                 == Some(true),

@@ -24,6 +24,7 @@ use crate::queue::{Event, Pending};
 use crate::reports::Reports;
 use crate::settings::Settings;
 use crate::specs::Specs;
+use crate::watch::Watch;
 
 /// Findings of one file are told at most so often, so that a burst of edits is not answered one by one.
 const PAUSE: Duration = Duration::from_millis(3);
@@ -61,15 +62,17 @@ pub struct Core {
     refreshed: Option<Instant>,
     watched: Instant,
     pending: Pending,
+    /// Over the analysis that runs.
+    pub watch: Watch,
 }
 
 impl Core {
     /// A core that knows nothing yet.
-    pub fn new(disk: Box<dyn Disk>, pending: Pending, out: Outbox) -> Self {
+    pub fn new(disk: Box<dyn Disk>, pending: Pending, out: Outbox, watch: Watch) -> Self {
         Self {
             client: Client::default(),
             settings: Settings::default(),
-            specs: Specs::new(disk),
+            specs: Specs::new(disk, watch.clone()),
             reports: Reports::default(),
             out,
             folders: Vec::new(),
@@ -77,6 +80,7 @@ impl Core {
             refreshed: None,
             watched: now(),
             pending,
+            watch,
         }
     }
 
@@ -165,7 +169,13 @@ impl Core {
         {
             return self.pending.answer(&key, Err(overtaken(&method)));
         }
+        self.watch.answering(Some(&key));
         let answer = self.guarded(&method, |core| handlers::request(core, &method, params));
+        self.watch.answering(None);
+        let stopped = matches!(&answer, Some(Err(error)) if error.code == ErrorCode::ContentModified);
+        if stopped {
+            return self.pending.answer(&key, Err(overtaken(&method)));
+        }
         let failed = || {
             Err(Error {
                 code: ErrorCode::InternalError,
@@ -181,6 +191,7 @@ impl Core {
         match catch_unwind(AssertUnwindSafe(|| work(self))) {
             Ok(done) => Some(done),
             Err(panic) => {
+                self.watch.end();
                 let why = words(&*panic);
                 self.out
                     .log(MessageType::ERROR, format!("internal error in {what}: {why}. Please report it."));

@@ -7,6 +7,7 @@
 //! ```
 
 mod client;
+mod closed;
 mod convert;
 mod core;
 pub mod disk;
@@ -19,6 +20,7 @@ mod reports;
 mod service;
 mod settings;
 mod specs;
+mod watch;
 mod wire;
 
 use std::io;
@@ -31,6 +33,7 @@ use crate::disk::Disk;
 use crate::outbox::Outbox;
 use crate::queue::{End, Pending};
 use crate::service::Adapter;
+use crate::watch::Watch;
 use crate::wire::{Input, Loop, Output};
 
 /// Room for expressions as deep as the language allows, in any build.
@@ -45,13 +48,13 @@ const MOST_ANSWERS: usize = 1 << 16;
 pub fn serve(disk: Box<dyn Disk>) -> io::Result<i32> {
     let (events, received) = mpsc::channel();
     let (messages, outgoing) = tokio::sync::mpsc::unbounded_channel();
-    let (pending, end) = (Pending::default(), End::default());
-    let core = Core::new(disk, pending.clone(), Outbox::new(messages));
+    let (pending, end, watch) = (Pending::default(), End::default(), Watch::default());
+    let core = Core::new(disk, pending.clone(), Outbox::new(messages), watch.clone());
     std::thread::Builder::new()
         .name(String::from("core"))
         .stack_size(STACK)
         .spawn(move || core.run(&received))?;
-    let adapter = Adapter::new(events.clone(), pending, end.clone());
+    let adapter = Adapter::new(events.clone(), pending, end.clone(), watch);
     let client = Loop { messages: outgoing, events };
     let (input, output) = (Input::start(end.clone())?, Output::new(end.clone()));
     let runtime = tokio::runtime::Builder::new_current_thread().build()?;

@@ -33,6 +33,11 @@ impl Outbox {
         Self { to, next: 1, asked: BTreeMap::new() }
     }
 
+    /// The channel, for what sends by itself.
+    pub fn channel(&self) -> UnboundedSender<Request> {
+        self.to.clone()
+    }
+
     /// Sends a notification.
     pub fn notify<N: Notification>(&self, params: &N::Params) {
         self.send(Request::build(N::METHOD).params(value(params)).finish());

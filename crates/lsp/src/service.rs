@@ -16,6 +16,7 @@ use tower_service::Service;
 
 use crate::frames::BAD_MESSAGE;
 use crate::queue::{End, Event, Pending};
+use crate::watch::Watch;
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 enum Life {
@@ -30,14 +31,15 @@ pub struct Adapter {
     events: mpsc::Sender<Event>,
     pending: Pending,
     end: End,
+    watch: Watch,
 }
 
 type Answer = Pin<Box<dyn Future<Output = Result<Option<Response>, Infallible>> + Send>>;
 
 impl Adapter {
     /// A service that fills the queue of a core.
-    pub const fn new(events: mpsc::Sender<Event>, pending: Pending, end: End) -> Self {
-        Self { life: Life::Born, events, pending, end }
+    pub const fn new(events: mpsc::Sender<Event>, pending: Pending, end: End, watch: Watch) -> Self {
+        Self { life: Life::Born, events, pending, end, watch }
     }
 
     fn notification(&mut self, method: &str, params: Value) {
@@ -45,10 +47,20 @@ impl Adapter {
             "exit" => self.end.exit(),
             "$/cancelRequest" => {
                 if let Some(Ok(id)) = params.get("id").map(|id| serde_json::from_value::<Id>(id.clone())) {
-                    self.pending.cancel(&id.to_string());
+                    let key = id.to_string();
+                    self.pending.cancel(&key);
+                    self.watch.cancelled(&key);
                 }
             }
-            _ if self.life == Life::Running => self.push(Event::Notification(method.to_owned(), params)),
+            _ if self.life == Life::Running => {
+                let newer = matches!(method, "textDocument/didChange" | "textDocument/didClose");
+                let uri = params.pointer("/textDocument/uri").and_then(Value::as_str);
+                // Before the change is in the queue: behind it, the analysis of the new text itself could be stopped.
+                if let Some(uri) = uri.filter(|_| newer) {
+                    self.watch.newer(uri);
+                }
+                self.push(Event::Notification(method.to_owned(), params));
+            }
             _ => {}
         }
     }

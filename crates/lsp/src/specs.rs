@@ -4,16 +4,18 @@ use std::cell::RefCell;
 use std::collections::{BTreeMap, BTreeSet};
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
-use std::time::Instant;
+use std::time::{Duration, Instant};
 
 use layshaft_ide::Snapshot;
-use layshaft_ide::base::{FileId, Files, Memo, NoFiles, ReadError};
+use layshaft_ide::base::{Analysis, FileId, Files, Memo, NoFiles, ReadError};
 use layshaft_ide::hints::Hint;
+use layshaft_ide::sensitivity::trial;
 use tower_lsp::lsp_types::Url;
 
 use crate::disk::{Disk, Place, Stamp, below};
 use crate::document::Document;
 use crate::handlers::paint;
+use crate::watch::Watch;
 
 /// An open spec.
 #[derive(Debug, Default)]
@@ -25,6 +27,10 @@ pub struct Spec {
     pub fresh: bool,
     /// Whether the spec's own text is all that changed.
     pub own_change: bool,
+    /// How often in a row newer text has stopped its analysis.
+    pub stopped: u32,
+    /// How long the last analysis took.
+    pub took: Duration,
     /// When its findings were last told.
     pub told: Option<Instant>,
     /// The last good hint of each declaration.
@@ -38,6 +44,7 @@ pub struct Spec {
 /// Documents and specs.
 pub struct Specs {
     disk: Box<dyn Disk>,
+    watch: Watch,
     /// Every open document.
     pub documents: BTreeMap<Url, Document>,
     /// Every open spec.
@@ -52,14 +59,18 @@ pub struct Specs {
     cache: RefCell<BTreeMap<PathBuf, Kept>>,
 }
 
+/// So often in a row an analysis may be stopped by newer text before one runs to its end.
+const MOST_STOPPED: u32 = 8;
+
 /// A text as it was read from the disk.
 type Kept = (Stamp, Result<Arc<str>, ReadError>);
 
 impl Specs {
     /// None open.
-    pub fn new(disk: Box<dyn Disk>) -> Self {
+    pub fn new(disk: Box<dyn Disk>, watch: Watch) -> Self {
         Self {
             disk,
+            watch,
             documents: BTreeMap::new(),
             specs: BTreeMap::new(),
             untold: BTreeSet::new(),
@@ -163,7 +174,7 @@ impl Specs {
         }
     }
 
-    /// The analysis of a spec as it is now; none where it is not open, or its analysis failed.
+    /// The analysis of a spec as it is now; none where it is not open, its analysis failed, or was stopped.
     pub fn snapshot(&mut self, uri: &Url) -> Option<Arc<Snapshot>> {
         let document = self.documents.get(uri)?;
         let spec = self.specs.get_mut(uri)?;
@@ -176,6 +187,9 @@ impl Specs {
         self.retired = spec.snapshot.take();
         let mut memo = std::mem::take(&mut spec.memo);
         let text = document.text();
+        let begun = crate::core::now();
+        // Who types without a pause sees results now and then all the same.
+        self.watch.begin(uri, spec.stopped < MOST_STOPPED);
         let (snapshot, reads) = match &document.place {
             Some(place) => {
                 let files = Overlay {
@@ -183,26 +197,97 @@ impl Specs {
                     disk: &*self.disk,
                     cache: &self.cache,
                     root: &place.root,
+                    watch: &self.watch,
                     reads: RefCell::default(),
                 };
                 let snapshot = Snapshot::new(&place.path, text, &files, &mut memo);
                 (snapshot, files.reads.into_inner())
             }
-            None => (Snapshot::new(&alone(uri), text, &NoFiles, &mut memo), BTreeSet::new()),
+            None => (Snapshot::new(&alone(uri), text, &Alone(&self.watch), &mut memo), BTreeSet::new()),
         };
         spec.memo = memo;
+        spec.reads.extend(reads.iter().cloned());
+        if self.watch.end() {
+            spec.stopped += 1;
+            spec.fresh = false;
+            return None;
+        }
+        spec.stopped = 0;
         spec.reads = reads;
+        spec.took = begun.elapsed();
         spec.snapshot = Some(Arc::new(snapshot));
         spec.snapshot.clone()
     }
 
+    /// Whether a file is open.
+    pub fn is_open(&self, whole: &Path) -> bool {
+        self.open_at.contains_key(whole)
+    }
+
+    /// The names of a spec that is not open; none where it cannot be read.
+    pub fn names(&self, place: &Place) -> Option<Snapshot> {
+        let files = Overlay {
+            specs: (&self.documents, &self.open_at),
+            disk: &*self.disk,
+            cache: &self.cache,
+            root: &place.root,
+            watch: &self.watch,
+            reads: RefCell::default(),
+        };
+        let text = files.read(&place.path).ok()?;
+        Some(Snapshot::read(&place.path, text, &files))
+    }
+
+    /// Trial analyses of an open spec with another text in place of one of its files; none is begun after `until`.
+    pub fn trials<'a>(
+        &'a mut self,
+        uri: &'a Url,
+        snapshot: &'a Snapshot,
+        until: Instant,
+    ) -> impl FnMut(FileId, Arc<str>) -> Option<Analysis> + 'a {
+        move |file, text| {
+            if crate::core::now() >= until {
+                return None;
+            }
+            let document = self.documents.get(uri)?;
+            let memo = &mut self.specs.get_mut(uri)?.memo;
+            self.watch.begin(uri, true);
+            let found = match &document.place {
+                Some(place) => {
+                    let files = Overlay {
+                        specs: (&self.documents, &self.open_at),
+                        disk: &*self.disk,
+                        cache: &self.cache,
+                        root: &place.root,
+                        watch: &self.watch,
+                        reads: RefCell::default(),
+                    };
+                    trial(snapshot, &files, memo, file, text)
+                }
+                None => trial(snapshot, &Alone(&self.watch), memo, file, text),
+            };
+            if self.watch.end() { None } else { found }
+        }
+    }
+
     /// The name of a file of an open spec in the client's words.
     pub fn uri_of(&self, spec: &Url, snapshot: &Snapshot, file: FileId) -> Option<Url> {
+        let root = self.documents.get(spec).and_then(|document| document.place.as_ref()).map(|of| &*of.root);
+        self.uri_below(spec, root, snapshot, file)
+    }
+
+    /// The name of a file of a spec below a root in the client's words.
+    pub fn uri_below(
+        &self,
+        spec: &Url,
+        root: Option<&Path>,
+        snapshot: &Snapshot,
+        file: FileId,
+    ) -> Option<Url> {
         if file == FileId(0) {
             return Some(spec.clone());
         }
-        let root = &self.documents.get(spec)?.place.as_ref()?.root;
-        self.uri_at(&below(root, &snapshot.file(file)?.path))
+        self.uri_at(&below(root?, &snapshot.file(file)?.path))
     }
 
     /// The name of a path in the client's words.
@@ -222,12 +307,26 @@ fn alone(uri: &Url) -> String {
     if name.is_empty() { String::from("-") } else { name.to_owned() }
 }
 
+/// A document that stands alone.
+struct Alone<'a>(&'a Watch);
+
+impl Files for Alone<'_> {
+    fn read(&self, path: &str) -> Result<Arc<str>, ReadError> {
+        NoFiles.read(path)
+    }
+
+    fn interrupted(&self) -> bool {
+        self.0.stopped()
+    }
+}
+
 /// The disk below a root, open documents laid over it.
 struct Overlay<'a> {
     specs: (&'a BTreeMap<Url, Document>, &'a BTreeMap<PathBuf, Url>),
     disk: &'a dyn Disk,
     cache: &'a RefCell<BTreeMap<PathBuf, Kept>>,
     root: &'a Path,
+    watch: &'a Watch,
     reads: RefCell<BTreeSet<PathBuf>>,
 }
 
@@ -252,5 +351,8 @@ impl Files for Overlay<'_> {
             None => cache.remove(&whole),
         };
         text
+    }
+    fn interrupted(&self) -> bool {
+        self.watch.stopped()
     }
 }

@@ -162,6 +162,9 @@ pub(crate) struct Solved {
 
 /// Lowers a drive in one state and solves it.
 pub(crate) fn solve(eval: &Eval<'_>, at: ItemRef) -> Solved {
+    if eval.shared.files.interrupted() {
+        return Solved::default();
+    }
     let Some(def) = eval.shared.drives.get(&at) else { return Solved::default() };
     let Some((spec, items)) = lowered(eval, at, def) else { return Solved::default() };
     let (drive, solution) = eval.shared.solver.solve(spec);

@@ -25,13 +25,16 @@ pub(crate) fn cook(eval: &Eval<'_>, at: ItemRef, fault: &Fault) -> Option<Diagno
                 .map(|group| group.iter().map(|field| format!("`{field}`")).collect::<Vec<_>>().join(" and "))
                 .collect();
             let message = format!("`{own}` needs {}", groups.join(", or "));
-            Diagnostic::new(Code::MissingField, whole, message).note(crate::say::note(why))
+            Diagnostic::new(Code::MissingField, whole, message)
+                .note(crate::say::note(why))
+                .fields(any_of.clone())
         }
         FaultKind::Contradiction { fields, how } => {
             let mut places =
                 fields.iter().filter_map(|field| field_place(eval, at, field).map(|at| (*field, at)));
             let (_, primary) = places.next().unwrap_or(("", whole));
-            let mut found = Diagnostic::new(Code::Contradiction, primary, crate::say::note(how));
+            let mut found = Diagnostic::new(Code::Contradiction, primary, crate::say::note(how))
+                .fields(vec![fields.clone()]);
             for (field, place) in places {
                 found = found.related(place, format!("`{field}` takes part"));
             }
@@ -46,6 +49,7 @@ pub(crate) fn cook(eval: &Eval<'_>, at: ItemRef, fault: &Fault) -> Option<Diagno
             Diagnostic::new(Code::BrakingUnknown, whole, message)
                 .note("how a drive brakes has no default: whether power can flow back decides what holds the load")
                 .help(format!("add `{field} = …` to `{own}`"))
+                .fields(vec![vec![field]])
         }
         FaultKind::Chain { how } => Diagnostic::new(Code::BadChain, whole, crate::say::note(how)),
         FaultKind::Unsettled { how } => Diagnostic::new(Code::NotJudged, whole, crate::say::note(how)),

@@ -26,6 +26,12 @@ pub trait Files {
     /// # Errors
     /// Says why there is none.
     fn read(&self, path: &str) -> Result<Arc<str>, ReadError>;
+
+    /// Whether nobody wants the analysis any more. It is asked between drives and cases; from then on nothing is solved,
+    /// and what comes out is good for nothing: whoever says so here must throw it away.
+    fn interrupted(&self) -> bool {
+        false
+    }
 }
 
 /// No files at all: a spec from standard input or an unsaved document.

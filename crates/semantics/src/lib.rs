@@ -109,3 +109,10 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     memo.forget_unused(&world);
     analysis
 }
+
+/// Reads a spec and the files it uses and evaluates nothing: the texts and trees alone, for what asks for names.
+#[must_use]
+pub fn read(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Memo) -> Analysis {
+    let world = load::load(path, text, files, memo, &sink::Sink::default());
+    Analysis { files: world.files, ..Analysis::default() }
+}

@@ -50,7 +50,7 @@ fn of_number(value: f64, unit: &str) -> Option<Quantity> {
 }
 
 /// What the analysis made of it where it is the whole value of a `let` or a field: there its kind is settled.
-fn recorded(snapshot: &Snapshot, file: FileId, item: &Item, span: Span) -> Option<Quantity> {
+pub(crate) fn recorded(snapshot: &Snapshot, file: FileId, item: &Item, span: Span) -> Option<Quantity> {
     let place = |span: Span| FileSpan { file, span: span.shifted(item.offset) };
     let datum = match &item.tree.kind {
         ItemKind::Let { name, value, .. } if value.span == span => {

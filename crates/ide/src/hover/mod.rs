@@ -27,6 +27,7 @@ pub(crate) use criterion::{page as criterion_page, verdict};
 pub(crate) use drive::{points as drive_points, rows as drive_rows};
 pub(crate) use field::{entries, key, wants};
 pub(crate) use kinds::{part_kind, quantity_kind};
+pub(crate) use literal::recorded;
 pub(crate) use result::result as result_page;
 pub(crate) use result::row_of;
 pub(crate) use words::{constant, function, role_of, unit};

@@ -3,21 +3,22 @@
 use std::collections::BTreeMap;
 
 use layshaft_ide::Snapshot;
-use layshaft_ide::base::{FileId, Severity};
+use layshaft_ide::base::{Code, FileId, Severity};
 use layshaft_ide::diagnostics::{Finding, findings};
 use tower_lsp::jsonrpc::Result;
 use tower_lsp::lsp_types::notification::PublishDiagnostics;
 use tower_lsp::lsp_types::{
-    Diagnostic, DiagnosticRelatedInformation, DiagnosticSeverity, DiagnosticTag, DocumentDiagnosticParams,
-    DocumentDiagnosticReport, DocumentDiagnosticReportKind, FullDocumentDiagnosticReport, Location,
-    NumberOrString, PublishDiagnosticsParams, RelatedFullDocumentDiagnosticReport,
-    RelatedUnchangedDocumentDiagnosticReport, UnchangedDocumentDiagnosticReport, Url,
-    WorkspaceDiagnosticParams, WorkspaceDiagnosticReport, WorkspaceDocumentDiagnosticReport,
-    WorkspaceFullDocumentDiagnosticReport, WorkspaceUnchangedDocumentDiagnosticReport,
+    CodeDescription, Diagnostic, DiagnosticRelatedInformation, DiagnosticSeverity, DiagnosticTag,
+    DocumentDiagnosticParams, DocumentDiagnosticReport, DocumentDiagnosticReportKind,
+    FullDocumentDiagnosticReport, Location, NumberOrString, PublishDiagnosticsParams,
+    RelatedFullDocumentDiagnosticReport, RelatedUnchangedDocumentDiagnosticReport,
+    UnchangedDocumentDiagnosticReport, Url, WorkspaceDiagnosticParams, WorkspaceDiagnosticReport,
+    WorkspaceDocumentDiagnosticReport, WorkspaceFullDocumentDiagnosticReport,
+    WorkspaceUnchangedDocumentDiagnosticReport,
 };
 
 use crate::core::Core;
-use crate::handlers::Asked;
+use crate::handlers::{Asked, documents};
 use crate::reports::Found;
 
 /// The name that stands beside each finding.
@@ -25,7 +26,13 @@ const SOURCE: &str = "layshaft";
 
 /// Tells what a spec comes to now, where the client does not ask.
 pub fn tell(core: &mut Core, uri: &Url) {
-    let Some(snapshot) = core.specs.snapshot(uri) else { return };
+    let Some(snapshot) = core.specs.snapshot(uri) else {
+        // Stopped by newer text, which waits in the queue or is about to.
+        if core.specs.specs.get(uri).is_some_and(|spec| spec.stopped > 0) {
+            core.specs.untold.insert(uri.clone());
+        }
+        return;
+    };
     let by_itself = core.specs.specs.get(uri).is_some_and(|spec| spec.own_change);
     let changed = take(core, uri, &snapshot);
     core.stale |= !by_itself || changed.iter().any(|other| other != uri);
@@ -105,13 +112,19 @@ fn diagnostic(
             Severity::Hint => DiagnosticSeverity::HINT,
         }),
         code: Some(NumberOrString::String(finding.code.row().word.to_owned())),
-        code_description: None,
+        code_description: code_page(core, finding.code),
         source: Some(SOURCE.to_owned()),
         message,
         related_information: others,
         tags: finding.unnecessary.then(|| vec![DiagnosticTag::UNNECESSARY]),
         data: None,
     })
+}
+
+/// The link to the page of a code, for clients that can open it.
+fn code_page(core: &Core, code: Code) -> Option<CodeDescription> {
+    let can = core.client.documents && (core.client.code_links || core.client.pulls);
+    can.then(|| documents::code_page(code.row().word)).flatten().map(|href| CodeDescription { href })
 }
 
 /// The findings of a document.

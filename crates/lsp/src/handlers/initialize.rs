@@ -3,21 +3,22 @@
 use tower_lsp::jsonrpc::Result;
 use tower_lsp::lsp_types::request::RegisterCapability;
 use tower_lsp::lsp_types::{
-    CallHierarchyServerCapability, CodeLensOptions, CompletionOptions, DiagnosticOptions,
-    DiagnosticServerCapabilities, DidChangeWatchedFilesRegistrationOptions, DocumentLinkOptions,
-    ExecuteCommandOptions, FileSystemWatcher, FoldingRangeProviderCapability, GlobPattern,
-    HoverProviderCapability, ImplementationProviderCapability, InitializeParams, InitializeResult,
-    InlayHintOptions, InlayHintServerCapabilities, OneOf, PositionEncodingKind, Registration,
-    RegistrationParams, RenameOptions, SaveOptions, SelectionRangeProviderCapability, ServerCapabilities,
-    ServerInfo, TextDocumentSyncCapability, TextDocumentSyncKind, TextDocumentSyncOptions,
-    TextDocumentSyncSaveOptions, WorkDoneProgressOptions, WorkspaceFoldersServerCapabilities,
-    WorkspaceServerCapabilities,
+    CallHierarchyServerCapability, CodeActionOptions, CodeActionProviderCapability, CodeLensOptions,
+    CompletionOptions, DiagnosticOptions, DiagnosticServerCapabilities,
+    DidChangeWatchedFilesRegistrationOptions, DocumentLinkOptions, ExecuteCommandOptions, FileSystemWatcher,
+    FoldingRangeProviderCapability, GlobPattern, HoverProviderCapability, ImplementationProviderCapability,
+    InitializeParams, InitializeResult, InlayHintOptions, InlayHintServerCapabilities, OneOf,
+    PositionEncodingKind, Registration, RegistrationParams, RenameOptions, SaveOptions,
+    SelectionRangeProviderCapability, ServerCapabilities, ServerInfo, TextDocumentSyncCapability,
+    TextDocumentSyncKind, TextDocumentSyncOptions, TextDocumentSyncSaveOptions,
+    TypeDefinitionProviderCapability, WorkDoneProgressOptions, WorkspaceFileOperationsServerCapabilities,
+    WorkspaceFoldersServerCapabilities, WorkspaceServerCapabilities,
 };
 
 use crate::client::Client;
 use crate::convert::Encoding;
 use crate::core::Core;
-use crate::handlers::{commands, complete, paint, settings, typing};
+use crate::handlers::{actions, commands, complete, files, paint, settings, typing};
 use crate::outbox::{Asked, value};
 
 /// What may change answers though it is not open.
@@ -34,6 +35,9 @@ pub fn refreshes_diagnostics(params: &serde_json::Value) -> bool {
 pub fn initialize(core: &mut Core, params: InitializeParams, refresh: bool) -> Result<InitializeResult> {
     core.client = Client::new(&params);
     core.client.refresh.diagnostics |= refresh;
+    if core.client.progress {
+        core.watch.tell(core.out.channel());
+    }
     core.folders = match params.workspace_folders {
         Some(folders) if !folders.is_empty() => folders.into_iter().map(|folder| folder.uri).collect(),
         _ => params.root_uri.into_iter().collect(),
@@ -72,6 +76,8 @@ fn capabilities(client: &Client) -> ServerCapabilities {
             })
         }),
         definition_provider: Some(OneOf::Left(true)),
+        // The page of a kind is no file: to a client that cannot open it nothing is promised.
+        type_definition_provider: client.documents.then_some(TypeDefinitionProviderCapability::Simple(true)),
         document_formatting_provider: Some(OneOf::Left(true)),
         document_range_formatting_provider: Some(OneOf::Left(true)),
         workspace: Some(WorkspaceServerCapabilities {
@@ -79,7 +85,10 @@ fn capabilities(client: &Client) -> ServerCapabilities {
                 supported: Some(true),
                 change_notifications: Some(OneOf::Left(true)),
             }),
-            file_operations: None,
+            file_operations: Some(WorkspaceFileOperationsServerCapabilities {
+                will_rename: Some(files::filters()),
+                ..WorkspaceFileOperationsServerCapabilities::default()
+            }),
         }),
         ..features()
     }
@@ -100,6 +109,11 @@ fn features() -> ServerCapabilities {
             resolve_provider: Some(true),
             work_done_progress_options: WorkDoneProgressOptions::default(),
         }))),
+        code_action_provider: Some(CodeActionProviderCapability::Options(CodeActionOptions {
+            code_action_kinds: Some(actions::KINDS.to_vec()),
+            resolve_provider: Some(false),
+            work_done_progress_options: WorkDoneProgressOptions::default(),
+        })),
         code_lens_provider: Some(CodeLensOptions { resolve_provider: Some(false) }),
         completion_provider: Some(CompletionOptions {
             resolve_provider: Some(true),

@@ -1,9 +1,12 @@
 //! What the protocol asks for, one file a group: convert, ask `ide`, convert.
 
+mod actions;
 mod calls;
 pub mod commands;
 mod complete;
 pub mod diagnostics;
+mod documents;
+mod files;
 mod format;
 mod initialize;
 mod names;
@@ -11,10 +14,12 @@ mod navigate;
 mod outline;
 pub mod paint;
 mod read;
+mod results;
 pub mod settings;
 mod sync;
 mod typing;
 
+use std::path::PathBuf;
 use std::sync::Arc;
 
 use layshaft_ide::Snapshot;
@@ -25,6 +30,7 @@ use serde_json::Value;
 use tower_lsp::jsonrpc::{Error, Result};
 use tower_lsp::lsp_types::{Location, Position, Range, TextDocumentPositionParams, Url};
 
+use crate::closed::Closed;
 use crate::core::Core;
 use crate::outbox::value;
 
@@ -64,6 +70,12 @@ pub fn request(core: &mut Core, method: &str, params: Value) -> Result<Value> {
         "callHierarchy/outgoingCalls" => typed(core, params, calls::outgoing),
         "callHierarchy/incomingCalls" => typed(core, params, calls::incoming),
         "workspace/executeCommand" => typed(core, params, commands::execute),
+        "textDocument/codeAction" => typed(core, params, actions::offered),
+        "textDocument/typeDefinition" => typed(core, params, documents::of_kind),
+        "workspace/willRenameFiles" => typed(core, params, files::will_rename),
+        "layshaft/document" => typed(core, params, documents::document),
+        "workspace/textDocumentContent" => typed(core, params, documents::content),
+        "layshaft/results" => typed(core, params, results::asked),
         "textDocument/diagnostic" => typed(core, params, diagnostics::document),
         "workspace/diagnostic" => typed(core, params, diagnostics::workspace),
         "textDocument/formatting" => typed(core, params, format::document),
@@ -108,13 +120,18 @@ fn typed<P: DeserializeOwned, R: Serialize>(
 struct Asked {
     uri: Url,
     snapshot: Arc<Snapshot>,
+    /// The root of a closed spec; that of an open one stands with its document.
+    root: Option<PathBuf>,
 }
 
 impl Asked {
     /// The spec a request is about.
     fn new(core: &mut Core, uri: &Url) -> Result<Self> {
         match core.specs.snapshot(uri) {
-            Some(snapshot) => Ok(Self { uri: uri.clone(), snapshot }),
+            Some(snapshot) => Ok(Self { uri: uri.clone(), snapshot, root: None }),
+            None if core.specs.specs.get(uri).is_some_and(|spec| spec.stopped > 0) => {
+                Err(Error::content_modified())
+            }
             None if core.specs.specs.contains_key(uri) => Err(Error {
                 message: "the analysis of this text failed; change it to try again".into(),
                 ..Error::internal_error()
@@ -130,6 +147,19 @@ impl Asked {
         Ok((asked, offset))
     }
 
+    /// A closed spec, its names read.
+    fn closed(of: &Closed) -> Self {
+        Self { uri: of.uri.clone(), snapshot: Arc::clone(&of.snapshot), root: Some(of.place.root.clone()) }
+    }
+
+    /// The name of one of its files in the client's words.
+    fn uri_of(&self, core: &Core, file: FileId) -> Option<Url> {
+        match &self.root {
+            Some(root) => core.specs.uri_below(&self.uri, Some(root), &self.snapshot, file),
+            None => core.specs.uri_of(&self.uri, &self.snapshot, file),
+        }
+    }
+
     fn file(&self) -> &SourceFile {
         // An analysis always holds its spec.
         &self.snapshot.analysis.files[0]
@@ -141,10 +171,7 @@ impl Asked {
 
     /// A place of the spec or a file that it uses.
     fn location(&self, core: &Core, place: FileSpan) -> Option<Location> {
-        Some(Location::new(
-            core.specs.uri_of(&self.uri, &self.snapshot, place.file)?,
-            self.range(core, place)?,
-        ))
+        Some(Location::new(self.uri_of(core, place.file)?, self.range(core, place)?))
     }
 
     fn range(&self, core: &Core, place: FileSpan) -> Option<Range> {

@@ -1,4 +1,5 @@
-//! Names: every place of one, and the rename of all of them, in every spec that is open.
+//! Names: every place of one, and the rename of all of them, in every spec that is open and every closed one of the
+//! open folders.
 
 use std::collections::BTreeMap;
 
@@ -15,7 +16,7 @@ use crate::core::Core;
 use crate::handlers::{Asked, SPEC};
 use crate::service::error;
 
-/// The same name as each open spec sees it that holds its declaration.
+/// The same name as each spec sees it that holds its declaration.
 fn seen_by_all(core: &mut Core, asked: Asked, offset: u32) -> Vec<(Asked, FileId, u32)> {
     let target = asked.snapshot.reference(SPEC, offset).map(|name| &name.target);
     let declared = target.and_then(|target| asked.snapshot.declaration(target));
@@ -23,12 +24,12 @@ fn seen_by_all(core: &mut Core, asked: Asked, offset: u32) -> Vec<(Asked, FileId
     let mut seen = Vec::new();
     if let Some((home, start)) = home {
         let others: Vec<Url> = core.specs.specs.keys().filter(|uri| **uri != asked.uri).cloned().collect();
-        for uri in others {
-            let Ok(other) = Asked::new(core, &uri) else { continue };
+        let mut all: Vec<Asked> = others.iter().filter_map(|uri| Asked::new(core, uri).ok()).collect();
+        all.extend(core.specs.closed(&core.folders).iter().map(Asked::closed));
+        for other in all {
             let files = 0..other.snapshot.analysis.files.len() as u32;
-            let file = files
-                .map(FileId)
-                .find(|file| core.specs.uri_of(&uri, &other.snapshot, *file).is_some_and(|uri| uri == home));
+            let same = |file: &FileId| other.uri_of(core, *file).is_some_and(|uri| uri == home);
+            let file = files.map(FileId).find(same);
             if let Some(file) = file {
                 seen.push((other, file, start));
             }
@@ -93,7 +94,7 @@ pub fn rename(core: &mut Core, params: RenameParams) -> Result<WorkspaceEdit> {
 }
 
 /// Changes in the form that the client takes.
-fn workspace_edit(core: &Core, edits: BTreeMap<Url, Vec<TextEdit>>) -> WorkspaceEdit {
+pub(super) fn workspace_edit(core: &Core, edits: BTreeMap<Url, Vec<TextEdit>>) -> WorkspaceEdit {
     if !core.client.versioned_edits {
         return WorkspaceEdit { changes: Some(edits.into_iter().collect()), ..WorkspaceEdit::default() };
     }

@@ -51,13 +51,14 @@ pub const fn kind(of: Kind) -> SymbolKind {
     }
 }
 
-/// The declarations of every open spec and the files it uses, by some letters of the name.
+/// The declarations of every spec, open or closed, and the files it uses, by some letters of the name.
 #[allow(deprecated, reason = "the type has the field, and wants a value for it")]
 pub fn workspace(core: &mut Core, params: WorkspaceSymbolParams) -> Result<Vec<SymbolInformation>> {
     let specs: Vec<Url> = core.specs.specs.keys().cloned().collect();
+    let mut all: Vec<Asked> = specs.iter().filter_map(|uri| Asked::new(core, uri).ok()).collect();
+    all.extend(core.specs.closed(&core.folders).iter().map(Asked::closed));
     let mut found: Vec<SymbolInformation> = Vec::new();
-    for uri in specs {
-        let Ok(asked) = Asked::new(core, &uri) else { continue };
+    for asked in all {
         for symbol in workspace_symbols(&asked.snapshot, &params.query) {
             let Some(location) = asked.location(core, symbol.place) else { continue };
             found.push(SymbolInformation {

@@ -1,9 +1,12 @@
 //! What is read beside the text: hovers, hints at line ends, lenses above drives.
 
+use std::time::Duration;
+
 use layshaft_ide::base::Span;
 use layshaft_ide::hints::{Categories, Hint, hints, merge_stale};
 use layshaft_ide::hover::{Options, hover};
 use layshaft_ide::lenses::{LensKind, lenses};
+use layshaft_ide::sensitivity::sensitivity;
 use serde_json::{Value, json};
 use tower_lsp::jsonrpc::Result;
 use tower_lsp::lsp_types::{
@@ -18,14 +21,32 @@ use crate::handlers::{Asked, SPEC};
 /// Last good values kept of one document.
 const MOST_KEPT: usize = 4096;
 
+/// The longest that an analysis may take for a hover to begin another.
+const PATIENCE: Duration = Duration::from_millis(150);
+
 /// What is told about a place.
 pub fn hovered(core: &mut Core, params: HoverParams) -> Result<Option<Hover>> {
     let (asked, offset) = Asked::at(core, &params.text_document_position_params)?;
     let options = Options { charts: core.client.charts || core.settings.charts };
-    Ok(hover(&asked.snapshot, SPEC, offset, options).map(|told| Hover {
-        contents: HoverContents::Markup(markdown(told.markdown)),
-        range: asked.range(core, told.place),
-    }))
+    let Some(mut told) = hover(&asked.snapshot, SPEC, offset, options) else { return Ok(None) };
+    if let Some(influence) = influence(core, &asked, offset) {
+        told.markdown.push_str("\n\n");
+        told.markdown.push_str(&influence);
+    }
+    let range = asked.range(core, told.place);
+    Ok(Some(Hover { contents: HoverContents::Markup(markdown(told.markdown)), range }))
+}
+
+/// How the tightest margin moves with the number under the cursor. Left out where the analysis takes so long that a
+/// hover would be late.
+fn influence(core: &mut Core, asked: &Asked, offset: u32) -> Option<String> {
+    let took = core.specs.specs.get(&asked.uri)?.took;
+    if took > PATIENCE {
+        return None;
+    }
+    let until = crate::core::now() + PATIENCE;
+    let mut trials = core.specs.trials(&asked.uri, &asked.snapshot, until);
+    sensitivity(&asked.snapshot, SPEC, offset, &mut trials).map(|found| found.markdown)
 }
 
 const fn markdown(value: String) -> MarkupContent {

@@ -4,8 +4,9 @@ use super::answers::Solution;
 use super::assembly::Assembly;
 use super::points::pieces;
 use super::ratings::ratings;
+use super::source::SourceAt;
 use crate::model::Motion;
-use crate::solution::Stability;
+use crate::solution::{Mode, Stability};
 
 /// Curves over the speed of one station.
 #[derive(Clone, Debug, PartialEq)]
@@ -16,7 +17,8 @@ pub struct Chart {
     pub curves: Vec<ChartCurve>,
     /// The operating points.
     pub points: Vec<ChartPoint>,
-    /// Range in which the source's data were measured.
+    /// Range in which the data of the source were measured, as speeds of this station; at a station that is not a
+    /// source's own, that of the only source.
     pub measured: Option<(f64, f64)>,
     /// What the source can give for long at the drive's duty.
     pub continuous: Option<f64>,
@@ -51,6 +53,8 @@ pub struct ChartPoint {
     pub effort: f64,
     /// Whether a small push comes back.
     pub stability: Stability,
+    /// How power flows there.
+    pub mode: Mode,
     /// Whether the drive comes to it from rest.
     pub reached: bool,
 }
@@ -89,6 +93,7 @@ impl Solution {
                 speed: state.x * station.speed,
                 effort: balance.required * scale,
                 stability: state.stability?,
+                mode: state.mode,
                 reached: self.here.as_ref().is_ok_and(|here| here.x == state.x),
             })
         });
@@ -101,9 +106,22 @@ impl Solution {
                 ChartCurve { role: CurveRole::Power, line: power },
             ],
             points: points.collect(),
-            measured: source.and_then(|s| s.character.as_ref()?.measured),
+            measured: self.measured_at(source, station.speed),
             continuous,
         })
+    }
+
+    /// The measured range of a source, or of the only one, turned to a station of this speed at unit speed of the root.
+    fn measured_at(&self, source: Option<&SourceAt>, station: f64) -> Option<(f64, f64)> {
+        let only = match self.drive.sources.as_slice() {
+            [only] => Some(only),
+            _ => None,
+        };
+        let source = source.or(only)?;
+        let (low, high) = source.character.as_ref()?.measured?;
+        let ratio = station / self.drive.shafts[source.at.shaft].speed;
+        let (low, high) = (low * ratio, high * ratio);
+        (low.is_finite() && high.is_finite()).then(|| (low.min(high), low.max(high)))
     }
 
     /// The greatest speed of the root that a chart shows.

@@ -48,6 +48,15 @@ pub(super) fn sheet_of(
     }
 }
 
+/// Every result of a drive in one case that has an answer.
+pub(super) fn results(case: &DriveCase, habits: &Habits) -> Vec<PartResults> {
+    let Some((spec, solution)) = case.spec.as_deref().zip(case.solution.as_deref()) else {
+        return Vec::new();
+    };
+    let units = DriveUnits::default();
+    Row { case, units: &units, habits, detail: Detail::Everything }.everything(spec, solution)
+}
+
 /// Clauses whose governing outcome is this case; the beginning up to the first blank is enough to know them.
 fn governs(criteria: &[CriterionLine], case: &DriveCase) -> Vec<String> {
     let here = |criterion: &&CriterionLine| {
@@ -58,7 +67,7 @@ fn governs(criteria: &[CriterionLine], case: &DriveCase) -> Vec<String> {
 }
 
 /// `2 * motor -> gear`, with brackets only where they are needed.
-fn chain_text(spec: &DriveSpec) -> String {
+pub(super) fn chain_text(spec: &DriveSpec) -> String {
     fn write(chain: &Chain, spec: &DriveSpec, inside: bool, out: &mut String) {
         match chain {
             Chain::Part { index, count } => {

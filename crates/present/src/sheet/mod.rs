@@ -73,6 +73,24 @@ pub fn drive(analysis: &Analysis, index: usize, habits: &Habits, most: usize) ->
     Some(drives::sheet_of(analysis, &few, &[], habits, Detail::Tables))
 }
 
+/// Every result of a drive in one case that has an answer, part by part, the drive itself first.
+#[must_use]
+pub fn results(case: &DriveCase, habits: &Habits) -> Vec<PartResults> {
+    drives::results(case, habits)
+}
+
+/// The operating points of a solved drive, slowest first; speeds in `unit`, the usual one where that is empty.
+#[must_use]
+pub fn operating_points(solution: &Solution, unit: &str) -> Vec<PointRow> {
+    outcome::points(solution, unit)
+}
+
+/// The parts of a drive as they are written: `2 * motor -> gear`.
+#[must_use]
+pub fn chain(case: &DriveCase) -> String {
+    case.spec.as_deref().map_or_else(String::new, drives::chain_text)
+}
+
 /// One criterion with its first `most` outcomes and the governing one; none where there is no such criterion.
 #[must_use]
 pub fn criterion(analysis: &Analysis, index: usize, habits: &Habits, most: usize) -> Option<CriterionLine> {

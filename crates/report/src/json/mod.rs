@@ -13,6 +13,9 @@ use layshaft_present::sheet::{
 use layshaft_semantics::Analysis;
 use layshaft_semantics::analysis::Verdict;
 
+pub use model::Value;
+pub use value::{entry, number, shown};
+
 use model::{
     Accepted, Assumption, Basis, Case, Criterion, Document, Drive, DriveCase, Edit, Finding, Fix, Label, Law,
     Margin, NamedResult, NamedValue, OperatingPoint, Outcome, Override, Part, Results, Show, ShowOutcome,

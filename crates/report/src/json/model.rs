@@ -102,27 +102,39 @@ pub struct Edit {
 /// A value: `type` says which of the other fields are there; `shown` always is.
 #[derive(Debug, Default, Serialize)]
 pub struct Value {
+    /// `number`, `flag`, `word`, `text`, `unbounded`, `absent`.
     #[serde(rename = "type")]
     pub kind_of: &'static str,
+    /// As a reader sees it.
     pub shown: String,
+    /// SI value.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub si: Option<f64>,
+    /// Kind of quantity.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub kind: Option<&'static str>,
+    /// The unit it is shown in; empty for a plain number.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub unit: Option<String>,
+    /// The value in that unit.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub value: Option<f64>,
+    /// Lower limit of a tolerance, SI.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub low_si: Option<f64>,
+    /// Upper limit of a tolerance, SI.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub high_si: Option<f64>,
+    /// Taken outside the range in which a curve was measured.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub outside_data: Option<bool>,
+    /// From data taken at other conditions and scaled.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub scaled_data: Option<bool>,
+    /// Yes or no.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub flag: Option<bool>,
+    /// Why there is none.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub reason: Option<String>,
 }

@@ -7,7 +7,9 @@ use layshaft_semantics::Analysis;
 
 use super::model::{Place, Value};
 
-pub(super) fn number(number: &Number) -> Value {
+/// A number.
+#[must_use]
+pub fn number(number: &Number) -> Value {
     Value {
         kind_of: "number",
         shown: number.text.clone(),
@@ -23,7 +25,9 @@ pub(super) fn number(number: &Number) -> Value {
     }
 }
 
-pub(super) fn shown(value: &Shown) -> Value {
+/// A value of the spec.
+#[must_use]
+pub fn shown(value: &Shown) -> Value {
     match value {
         Shown::Number(of) => number(of),
         Shown::Flag(flag) => {
@@ -35,7 +39,8 @@ pub(super) fn shown(value: &Shown) -> Value {
 }
 
 /// An answer; `None` where the part has no such result.
-pub(super) fn entry(entry: &Entry) -> Option<Value> {
+#[must_use]
+pub fn entry(entry: &Entry) -> Option<Value> {
     let of = |kind_of, reason: Option<&String>| {
         Some(Value { kind_of, shown: entry.text().into(), reason: reason.cloned(), ..Value::default() })
     };

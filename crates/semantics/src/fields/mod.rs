@@ -198,7 +198,8 @@ fn report_missing(eval: &Eval<'_>, part: &PartDef<'_>, values: &Values) -> bool 
         .collect();
     eval.report(
         Diagnostic::new(Code::MissingField, eval.place(part.at, part.name.span), message)
-            .help(format!("add {}", lines.join("\n"))),
+            .help(format!("add {}", lines.join("\n")))
+            .fields(vec![missing.iter().map(|field| field.name).collect()]),
     );
     false
 }
