@@ -1,6 +1,6 @@
 //! A solved drive and what it answers about itself.
 
-use std::sync::OnceLock;
+use std::sync::{Arc, OnceLock};
 
 use super::assembly::Assembly;
 use super::extreme::Greatest;
@@ -42,7 +42,7 @@ pub struct OperatingPoint {
 
 /// A solved drive.
 pub struct Solution {
-    pub(super) drive: Assembly,
+    pub(super) drive: Arc<Assembly>,
     pub(super) path: Option<Path>,
     pub(super) points: Vec<State>,
     pub(super) here: Result<State, Answer>,
@@ -67,7 +67,12 @@ pub(super) fn absent(why: &'static str) -> Answer {
 }
 
 impl Solution {
-    fn new(drive: Assembly, path: Option<Path>, points: Vec<State>, here: Result<State, Answer>) -> Self {
+    fn new(
+        drive: Arc<Assembly>,
+        path: Option<Path>,
+        points: Vec<State>,
+        here: Result<State, Answer>,
+    ) -> Self {
         let source_peaks = drive.sources.iter().map(|_| OnceLock::new()).collect();
         Self {
             drive,
@@ -83,7 +88,7 @@ impl Solution {
         }
     }
 
-    pub(super) fn from_rest(drive: Assembly) -> Result<Self, Vec<Fault>> {
+    pub(super) fn from_rest(drive: Arc<Assembly>) -> Result<Self, Vec<Fault>> {
         if let Some((holder, speed)) = held::holder(&drive) {
             let point = held::state(&drive, holder, speed);
             let here = sound(held::state(&drive, holder, speed));
@@ -95,7 +100,7 @@ impl Solution {
         Ok(Self::new(drive, Some(path), points, here))
     }
 
-    pub(super) fn at_speed(drive: Assembly, x: f64) -> Self {
+    pub(super) fn at_speed(drive: Arc<Assembly>, x: f64) -> Self {
         let here = match held::holder(&drive) {
             Some((holder, _)) => sound(held::at(&drive, holder, x)),
             None => stated::at(&drive, x).and_then(sound),

@@ -61,7 +61,7 @@ pub(crate) const BESIDE: f64 = 1e-13;
 /// Everything that keeps the drive from being solved at all: parts that cannot be built, a chain that does not fit,
 /// several gears and none engaged. What only one question needs is refused by that question alone.
 pub fn solve(spec: &DriveSpec) -> Result<Solution, Vec<Fault>> {
-    Solution::from_rest(assembly::Assembly::new(spec)?)
+    Solution::from_rest(Arc::new(assembly::Assembly::new(spec)?))
 }
 
 /// Takes a drive at a stated speed: the sources give what is required there, each the same share of what it can, if
@@ -71,7 +71,7 @@ pub fn solve(spec: &DriveSpec) -> Result<Solution, Vec<Fault>> {
 ///
 /// As [`solve`]; a speed stated at a part that does not stand in the drive, or not above zero.
 pub fn solve_at(spec: &DriveSpec, speed: StatedSpeed) -> Result<Solution, Vec<Fault>> {
-    let drive = assembly::Assembly::new(spec)?;
+    let drive = Arc::new(assembly::Assembly::new(spec)?);
     let x = drive.coordinate(&speed)?;
     Ok(Solution::at_speed(drive, x))
 }

@@ -1,13 +1,15 @@
 //! The least and the greatest value of an answer while the stated speed runs over a range: no extreme between the
 //! ends is missed.
 
+use std::sync::Arc;
+
+use super::answers::Solution;
 use super::assembly::Assembly;
 use super::extreme::greatest_of_dear;
 use super::flow::{Acting, Flow, flow};
 use super::held;
 use super::points::pieces;
 use super::share::{Shared, shared};
-use super::solve_at;
 use crate::curve::Law;
 use crate::drive::{DriveSpec, Port, StatedSpeed};
 use crate::fault::{Fault, FaultKind, Note};
@@ -41,14 +43,14 @@ pub struct Extremes {
 ///
 /// # Errors
 ///
-/// As [`solve_at`] at the ends of the range.
+/// As [`solve_at`](super::solve_at) at the ends of the range.
 pub fn worst_over(
     spec: &DriveSpec,
     station: (Option<usize>, Option<Port>),
     (low, high): (f64, f64),
     question: Question<'_>,
 ) -> Result<Extremes, Vec<Fault>> {
-    let drive = Assembly::new(spec)?;
+    let drive = Arc::new(Assembly::new(spec)?);
     let electrical = ["current", "voltage", "input_power", "efficiency"].contains(&question.name)
         || question
             .part
@@ -72,7 +74,8 @@ pub fn worst_over(
     let (from, to) = (drive.coordinate(&stated(low))?, drive.coordinate(&stated(high))?);
     let ratio = low / from;
     let ask = |speed: f64| -> Result<(f64, Answer), Vec<Fault>> {
-        let solution = solve_at(spec, stated(speed))?;
+        // The drive is put together once, not for each speed.
+        let solution = Solution::at_speed(Arc::clone(&drive), drive.coordinate(&stated(speed))?);
         Ok((speed, solution.answer(question.part, question.port, question.name)))
     };
     let mut tried = vec![ask(low)?, ask(high)?];
