@@ -105,11 +105,13 @@ fn every_example_of_a_kind_is_accepted() {
 
 #[test]
 fn the_reference_runs() {
-    let folder = "../grammar";
     let mut ran = 0;
     let mut report = String::new();
-    for name in support::names(folder, ".md") {
-        for (info, text) in blocks(&support::text(&format!("{folder}/{name}"))) {
+    let pages = ["../grammar", "../grammar/kinds"].into_iter().flat_map(|folder| {
+        support::names(folder, ".md").into_iter().map(move |name| format!("{folder}/{name}"))
+    });
+    for name in pages {
+        for (info, text) in blocks(&support::text(&name)) {
             let analysis = analyze(&text);
             let bad = match info.as_str() {
                 "" => !analysis.diagnostics.is_empty(),

@@ -131,3 +131,17 @@ fn every_spec_knows_the_known_values() {
         assert!(analysis.diagnostics.is_empty(), "{name}");
     }
 }
+
+#[test]
+fn every_unit_can_be_written() {
+    let mut wrong = Vec::new();
+    for row in layshaft_units::unit_rows() {
+        for symbol in std::iter::once(&row.symbol).chain(row.also) {
+            let text = format!("let a = 2 {symbol}\n");
+            let files = layshaft_semantics::MemoryFiles::default();
+            let analysis = layshaft_semantics::analyze("a.shaft", text.as_str().into(), &files);
+            wrong.extend(analysis.diagnostics.iter().map(|found| format!("{symbol}: {}", found.message)));
+        }
+    }
+    none(&wrong);
+}

@@ -1,11 +1,8 @@
 //! `layshaft kinds`: what a part can be, and what is asked of each.
 
-use layshaft_mechanics::registry::{
-    self, Bounds, Field, Formula, KindRow, Need, ResultRow, ResultShape, Role, Shape,
-};
-use layshaft_present::note::quantity;
+use layshaft_mechanics::registry::{self, Field, Formula, KindRow, ResultRow, Role};
+use layshaft_present::kind;
 use layshaft_present::sheet::role_word;
-use layshaft_present::unit::Habits;
 use layshaft_report::terminal::{Align, Cell, Column, Grid, Style, Tone, wrap};
 
 use crate::output::{Exit, Output};
@@ -93,9 +90,9 @@ fn lines(text: &str, width: usize) -> String {
 
 /// A field: what stands there, whether it is needed, its range; below it, what it means.
 fn field_text(field: &Field, width: usize, style: Style) -> String {
-    let facts = [shape(field), need(field).to_string(), range(field)];
+    let facts = [kind::shape(field), kind::need(field).to_string(), kind::range(field)];
     let facts: Vec<String> = facts.into_iter().filter(|fact| !fact.is_empty()).collect();
-    let meaning = match need_reason(field) {
+    let meaning = match kind::reason(field) {
         Some(reason) => format!("{}; {reason}", field.meaning),
         None => field.meaning.to_string(),
     };
@@ -106,86 +103,11 @@ fn field_text(field: &Field, width: usize, style: Style) -> String {
     text
 }
 
-fn shape(field: &Field) -> String {
-    match field.shape {
-        Shape::Quantity(kind) => kind.to_string(),
-        Shape::OfRated(kind) => format!("{kind}, or a multiple of `rated`"),
-        Shape::Interval(kind) => format!("{kind}, lo .. hi"),
-        Shape::Choice(words) => words.iter().map(|(word, _)| *word).collect::<Vec<_>>().join(" | "),
-        Shape::Flag => String::from("yes | no"),
-        Shape::Part(role) => format!("name of a {}", role_word(role)),
-        Shape::Points(columns) => {
-            let name = |column: &registry::ColumnRow| {
-                if column.optional {
-                    format!("{} (may be missing)", column.name)
-                } else {
-                    column.name.to_string()
-                }
-            };
-            format!("points of {}", columns.iter().map(name).collect::<Vec<_>>().join(", "))
-        }
-        Shape::Ratio { diameters: true } => String::from("length drives length"),
-        Shape::Ratio { diameters: false } => String::from("teeth drives teeth"),
-        Shape::Gears => String::from("named gears, each a reduction or an increase"),
-        Shape::Duty => String::from("duty type: S1, S3 40 %"),
-    }
-}
-
-const fn need(field: &Field) -> &'static str {
-    match field.need {
-        Need::Required => "required",
-        Need::Optional | Need::Default { .. } => "may be left out",
-        Need::Where(_) => "required where it is asked for",
-        Need::OneOf => "one of several",
-    }
-}
-
-fn need_reason(field: &Field) -> Option<String> {
-    match field.need {
-        Need::Default { si, why } => Some(format!("taken as {}: {why}", value(field, si))),
-        Need::Where(question) => Some(format!("needed for {question}")),
-        _ => None,
-    }
-}
-
-/// An SI value of a field in its usual unit.
-fn value(field: &Field, si: f64) -> String {
-    match field.shape {
-        Shape::Quantity(kind) | Shape::OfRated(kind) | Shape::Interval(kind) => {
-            quantity(si, kind, &Habits::default())
-        }
-        Shape::Flag => String::from(if si == 0.0 { "no" } else { "yes" }),
-        _ => layshaft_present::number::written(si),
-    }
-}
-
-fn range(field: &Field) -> String {
-    let Bounds { low, low_in, high, high_in } = field.hard;
-    let (below, above) = (low.is_finite(), high.is_finite());
-    match (below, above) {
-        (false, false) => String::new(),
-        (true, false) if low == 0.0 => String::from(if low_in { "0 or above" } else { "above 0" }),
-        (true, false) => format!("{} {}", if low_in { "from" } else { "above" }, value(field, low)),
-        (false, true) => format!("{} {}", if high_in { "up to" } else { "below" }, value(field, high)),
-        (true, true) => {
-            let word = if low_in { "" } else { "above " };
-            let end = if high_in { "" } else { " (not itself)" };
-            format!("{word}{} .. {}{end}", value(field, low), value(field, high))
-        }
-    }
-}
-
 fn result_table<'r>(results: impl Iterator<Item = &'r ResultRow>) -> Grid {
     let row = |result: &ResultRow| {
-        let shape = match result.shape {
-            ResultShape::Quantity(kind) => kind.to_string(),
-            ResultShape::Speed => String::from("speed, of its motion"),
-            ResultShape::Effort => String::from("torque or force, of its motion"),
-            ResultShape::Way => String::from("angle or length, of its motion"),
-            ResultShape::Flag => String::from("yes | no"),
-            ResultShape::Word(words) => words.join(" | "),
-        };
-        [result.name.to_string(), shape, result.meaning.to_string()].map(Cell::plain).to_vec()
+        [result.name.to_string(), kind::result_shape(result), result.meaning.to_string()]
+            .map(Cell::plain)
+            .to_vec()
     };
     Grid {
         columns: ["result", "what it is", "meaning"].into_iter().map(column).collect(),

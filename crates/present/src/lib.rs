@@ -5,6 +5,7 @@
 
 pub mod derivation;
 pub mod escape;
+pub mod kind;
 pub mod note;
 pub mod sheet;
 pub mod shown;

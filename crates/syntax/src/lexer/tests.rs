@@ -37,6 +37,11 @@ fn a_unit_stands_directly_after_a_number_and_nowhere_else() {
     assert_eq!(shown("0.39 %/K"), "0.39 ‹%/K›");
     assert_eq!(shown("42 drives 18"), "42 drives 18");
     assert_eq!(shown("3 in"), "3 ‹in›");
+    assert_eq!(
+        shown("3 gal_us/min + 20 mmH2O * 2 hp_electric"),
+        "3 ‹gal_us/min› + 20 ‹mmH2O› * 2 ‹hp_electric›"
+    );
+    assert_eq!(shown("3 g_n² + 3 g_nx"), "3 ‹g_n²› + 3 g_nx′");
     assert_eq!(shown("show 3 m as in"), "show 3 ‹m› as ‹in›");
     assert_eq!(shown("show x as 1/min"), "show x′ as ‹1/min›");
     assert_eq!(shown("use \"a\" as m"), "use \"a\" as m′");

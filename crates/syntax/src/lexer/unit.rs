@@ -5,6 +5,21 @@ use super::fold::{Role, continues_word, is_letter, is_superscript, role};
 use crate::token::TokenKind;
 use crate::words::word_kind;
 
+/// Units of more than letters, longer ones before those they begin with. A test of the whole asks the language for every
+/// unit of the table.
+const ODD_SYMBOLS: &[&str] = &[
+    "gal_us",
+    "gal_imp",
+    "g_n",
+    "short_ton",
+    "long_ton",
+    "hp_electric",
+    "hp_boiler",
+    "mmH2O",
+    "mH2O",
+    "inH2O",
+];
+
 /// Bounds the brackets inside one unit.
 const DEEPEST: u32 = 8;
 
@@ -79,6 +94,9 @@ fn symbol(text: &str, at: usize) -> Option<usize> {
         }
         _ => {}
     }
+    if let Some(odd) = odd_symbol(text, at) {
+        return Some(odd);
+    }
     let mut plain = true;
     loop {
         match bytes.get(end) {
@@ -100,6 +118,15 @@ fn symbol(text: &str, at: usize) -> Option<usize> {
     }
     let reserved = plain && word_kind(&text[at..end]).is_some_and(TokenKind::is_reserved);
     (end > at && !reserved).then_some(end)
+}
+
+/// A unit such as `gal_us` or `mmH2O`: the whole word is one, and no call.
+fn odd_symbol(text: &str, at: usize) -> Option<usize> {
+    let rest = &text[at..];
+    let odd = ODD_SYMBOLS.iter().find(|symbol| rest.starts_with(**symbol))?;
+    let behind = rest[odd.len()..].chars().next();
+    let ends = behind.is_none_or(|c| c != '(' && !continues_word(c));
+    ends.then_some(at + odd.len())
 }
 
 /// Behind a factor: `^2`, `^-1`, `²`, `⁻¹`.
