@@ -111,3 +111,18 @@ fn horsepower_is_a_power_and_a_rise_is_no_temperature() {
     assert!(demand(&unit("°F").ty, place("temperature_difference")).is_err());
     assert!(demand(&unit("%").ty, place("angle")).is_err());
 }
+
+#[test]
+fn every_unit_can_be_written_behind_a_number() {
+    let files = layshaft_semantics::NoFiles;
+    for row in layshaft_units::unit_rows() {
+        let spec = format!("let x = 3 {}\n", row.symbol);
+        let analysis = layshaft_semantics::analyze("units.shaft", spec.as_str().into(), &files);
+        let unread: Vec<_> = analysis
+            .diagnostics
+            .iter()
+            .filter(|found| found.code == layshaft_diagnostics::Code::Syntax)
+            .collect();
+        assert!(unread.is_empty(), "{}: {unread:?}", row.symbol);
+    }
+}

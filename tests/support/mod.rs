@@ -124,14 +124,19 @@ pub fn factor(unit: &str) -> f64 {
     let pi = std::f64::consts::PI;
     match unit {
         "" | "rad/s" | "N·m" | "N" | "W" | "A" | "V" | "s" | "m" | "m/s" | "m/s²" | "Hz" | "N·m/A"
-        | "V·s/rad" | "Ω" | "m³/s" | "Pa" | "kg" | "kg·m²" | "rad/s²" => 1.0,
+        | "V·s/rad" | "Ω" | "m³/s" | "Pa" | "kg" | "kg·m²" | "kg/m" | "kg/s" | "J" | "rad/s²" => 1.0,
         "rpm" => pi / 30.0,
         "°" => pi / 180.0,
         "lbf·in" => 0.453_592_37 * 9.806_65 * 0.0254,
-        "kW" | "kN·m" | "kN" => 1000.0,
+        "kW" | "kN·m" | "kN" | "kJ" | "kPa" => 1000.0,
         "hp" => 745.699_871_582_270_2,
         "km/h" => 1.0 / 3.6,
-        "m/min" => 1.0 / 60.0,
+        "m/min" | "1/min" => 1.0 / 60.0,
+        "m³/h" => 1.0 / 3600.0,
+        "t/h" => 1.0 / 3.6,
+        "cfm" => 0.3048 * 0.3048 * 0.3048 / 60.0,
+        "gal_us/min" => 231.0 * 0.0254 * 0.0254 * 0.0254 / 60.0,
+        "ft" => 0.3048,
         "mm" | "ms" => 1e-3,
         "%" => 0.01,
         other => panic!("the tests know no unit `{other}`"),

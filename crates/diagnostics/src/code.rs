@@ -107,6 +107,7 @@ codes! {
     HoistWithoutBrake = "hoist-without-brake", Warning, "a load that falls and no brake to hold it";
     SelfLockingTrusted = "self-locking-trusted", Warning, "a load that falls, held by nothing but a part that locks itself";
     PullUpDip = "pull-up-dip", Warning, "the source's dip on the way up leaves the drive hanging or nearly";
+    UnstablePoint = "unstable-point", Warning, "an operating point where the curves only touch, or that is left for good when pushed";
     PeakAsContinuous = "peak-as-continuous", Warning, "the drive runs on more than the source can give for long";
     Overspeed = "overspeed", Warning, "the drive can pass the highest speed a part allows";
     Runaway = "runaway", Warning, "nothing bounds the speed of the drive";

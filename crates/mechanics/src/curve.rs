@@ -52,6 +52,95 @@ impl<L: Law> Curve for L {
     }
 }
 
+/// A law of the size of the speed that opposes motion in either direction.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Against<L>(pub L);
+
+impl<L: Law> Law for Against<L> {
+    fn eval<R: Real>(&self, x: R) -> R {
+        x.piecewise(&[0.0], |piece, x| if piece == 0 { -self.0.eval(-x) } else { self.0.eval(x) })
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        let at_rest: f64 = self.0.eval(0.0);
+        let middle = if at_rest == 0.0 { None } else { Some(0.0) };
+        mirrored(self.0.jumps(), middle)
+    }
+
+    fn kinks(&self) -> Vec<f64> {
+        mirrored(self.0.kinks(), Some(0.0))
+    }
+}
+
+/// Places above zero on both sides of it, rising.
+fn mirrored(mut places: Vec<f64>, middle: Option<f64>) -> Vec<f64> {
+    places.retain(|x| *x > 0.0);
+    places.iter().rev().map(|x| -x).chain(middle).chain(places.iter().copied()).collect()
+}
+
+/// A single whole power of the variable: `coefficient * x^power`.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Monomial {
+    /// The factor.
+    pub coefficient: f64,
+    /// 0 to 3 and beyond.
+    pub power: u8,
+}
+
+impl Monomial {
+    /// The one that passes through a point away from zero.
+    #[must_use]
+    pub fn through(power: u8, x: f64, y: f64) -> Self {
+        Self { coefficient: y / libm::pow(x, f64::from(power)), power }
+    }
+}
+
+impl Law for Monomial {
+    fn eval<R: Real>(&self, x: R) -> R {
+        let mut out = R::of(self.coefficient);
+        for _ in 0..self.power / 2 {
+            out = out * x.square();
+        }
+        if self.power % 2 == 1 { out * x } else { out }
+    }
+}
+
+/// A law times a constant.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Scaled<L>(pub L, pub f64);
+
+impl<L: Law> Law for Scaled<L> {
+    fn eval<R: Real>(&self, x: R) -> R {
+        self.0.eval(x) * self.1
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        self.0.jumps()
+    }
+
+    fn kinks(&self) -> Vec<f64> {
+        self.0.kinks()
+    }
+}
+
+/// A law times its variable and a constant: the power of an effort over the speed.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct PowerOf<L>(pub L, pub f64);
+
+impl<L: Law> Law for PowerOf<L> {
+    fn eval<R: Real>(&self, x: R) -> R {
+        self.0.eval(x) * x * self.1
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        self.0.jumps()
+    }
+
+    fn kinks(&self) -> Vec<f64> {
+        self.0.kinks()
+    }
+}
+
 /// The same value everywhere.
 #[derive(Clone, Copy, Debug)]
 pub struct Constant(pub f64);

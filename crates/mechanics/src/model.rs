@@ -12,7 +12,7 @@ mod source;
 mod supply;
 mod transmission;
 
-pub use load::{Load, LoadState, Standstill};
+pub use load::{Load, LoadState, Own, Standstill};
 pub use source::{Braking, Characteristic, Draw, DrawLaw, Drawn, Ratings, Source, SourceState};
 pub use supply::{Feed, Supply, SupplyData};
 pub use transmission::{Brake, Coupling, Grip, Limit, LimitOn, Slip, Transmission, TransmissionState};

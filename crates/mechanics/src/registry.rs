@@ -5,7 +5,7 @@ mod common;
 use crate::fault::Fault;
 use crate::values::Values;
 
-pub use common::{DRIVE_FIELDS, DRIVE_RESULTS, LIMITS, common_fields, common_results};
+pub use common::{DRIVE_FIELDS, DRIVE_RESULTS, LIMITS, common_fields, common_results, said_otherwise};
 
 /// What a part is in a drive.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]

@@ -50,6 +50,20 @@ pub const LIFTING_FORCE: Formula = Formula {
     revision: 1,
 };
 
+/// Mass of a counterweight that balances the car and a share of the load.
+pub const COUNTERWEIGHT: Formula = Formula {
+    name: "counterweight_mass",
+    text: "m_0 + s * m_n",
+    symbols: &[
+        ("m_0", "mass", "mass of the empty car"),
+        ("s", "percentage", "balanced share of the rated load"),
+        ("m_n", "mass", "rated load"),
+    ],
+    validity: "ropes left aside",
+    source: "common practice, no source",
+    revision: 1,
+};
+
 /// The formulas with the kernels that must equal them.
 pub const CHECKED: &[Checked] = &[
     Checked { formula: &SLOPE, domain: &[(-2.0, 2.0)], kernel: |x| libm::atan(x[0]) },
@@ -57,6 +71,11 @@ pub const CHECKED: &[Checked] = &[
         formula: &UPHILL_FORCE,
         domain: &[(0.1, 1e5), (-1.5, 1.5), (0.0, 1.0)],
         kernel: |x| weight(x[0]) * (libm::sin(x[1]) + x[2] * libm::cos(x[1])),
+    },
+    Checked {
+        formula: &COUNTERWEIGHT,
+        domain: &[(0.0, 1e4), (0.0, 1.0), (0.0, 1e4)],
+        kernel: |x| balanced(x[0], x[1], x[2]),
     },
     Checked {
         formula: &LIFTING_FORCE,
@@ -84,6 +103,12 @@ impl Law for Pull {
     fn jumps(&self) -> Vec<f64> {
         if self.friction == 0.0 { Vec::new() } else { vec![0.0] }
     }
+}
+
+/// Mass (kg) of a counterweight that balances a car and a share of its rated load.
+#[must_use]
+pub fn balanced(car: f64, share: f64, load: f64) -> f64 {
+    car + share * load
 }
 
 /// Weight (N) of a mass (kg) under standard gravity.

@@ -4,18 +4,23 @@
 
 use crate::registry::Formula;
 
+pub mod affinity;
 pub mod air_motor;
 pub mod battery;
 pub mod belt;
+pub mod bounded_power;
 pub mod brake;
 pub mod capstan;
 pub mod clutch;
+pub mod conveyor;
 pub mod crank;
+pub mod cutting;
 pub mod dc_envelope;
 pub mod dc_machine;
 pub mod drag;
 pub mod engine;
 pub mod gear;
+pub mod generator;
 pub mod hydraulic_motor;
 pub mod incline;
 pub mod induction_circuit;
@@ -23,8 +28,10 @@ pub mod induction_curve;
 pub mod inertia;
 pub mod inverter_envelope;
 pub mod kloss;
+pub mod off_axis;
 pub mod person_power;
 pub mod planetary;
+pub mod power_law;
 pub mod rack;
 pub mod road;
 pub mod rope;
@@ -37,10 +44,13 @@ pub mod straight_line;
 pub mod synchronous;
 pub mod table;
 pub mod torque_polynomial;
+pub mod turbo;
 pub mod universal_joint;
 pub mod wheel;
 pub mod wind_rotor;
+pub mod winder;
 pub mod winding;
+pub mod work_stroke;
 pub mod worm;
 
 #[cfg(test)]
@@ -63,18 +73,23 @@ pub struct Checked {
 /// Every formula with its kernel.
 pub fn checked() -> impl Iterator<Item = &'static Checked> {
     let laws: &[&'static [Checked]] = &[
+        affinity::CHECKED,
         air_motor::CHECKED,
         battery::CHECKED,
         belt::CHECKED,
+        bounded_power::CHECKED,
         brake::CHECKED,
         capstan::CHECKED,
         clutch::CHECKED,
+        conveyor::CHECKED,
         crank::CHECKED,
+        cutting::CHECKED,
         dc_envelope::CHECKED,
         dc_machine::CHECKED,
         drag::CHECKED,
         engine::CHECKED,
         gear::CHECKED,
+        generator::CHECKED,
         hydraulic_motor::CHECKED,
         incline::CHECKED,
         induction_circuit::CHECKED,
@@ -82,24 +97,29 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         inertia::CHECKED,
         inverter_envelope::CHECKED,
         kloss::CHECKED,
+        off_axis::CHECKED,
         person_power::CHECKED,
         planetary::CHECKED,
+        power_law::CHECKED,
         rack::CHECKED,
         road::CHECKED,
         rope::CHECKED,
-        screw::CHECKED,
         scaled_table::CHECKED,
+        screw::CHECKED,
         series_machine::CHECKED,
         servo_envelope::CHECKED,
         shaft::CHECKED,
         straight_line::CHECKED,
         synchronous::CHECKED,
         table::CHECKED,
-        universal_joint::CHECKED,
         torque_polynomial::CHECKED,
+        turbo::CHECKED,
+        universal_joint::CHECKED,
         wheel::CHECKED,
         wind_rotor::CHECKED,
+        winder::CHECKED,
         winding::CHECKED,
+        work_stroke::CHECKED,
         worm::CHECKED,
     ];
     laws.iter().copied().flatten()

@@ -1,6 +1,7 @@
 //! What a load must answer: effort over speed, what it does at rest, inertia.
 
 use std::fmt::Debug;
+use std::sync::Arc;
 
 use super::{Known, Limit, Motion};
 use crate::curve::Curve;
@@ -24,6 +25,37 @@ pub struct LoadState {
     pub speed: f64,
     /// The effort it takes.
     pub effort: f64,
+}
+
+/// A result of a load's own.
+#[derive(Clone)]
+pub enum Own {
+    /// A law of its speed, in its own sense.
+    Law {
+        /// The kind of the result.
+        kind: &'static str,
+        /// Its value over the speed.
+        curve: Arc<dyn Curve>,
+    },
+    /// It cannot be said until this field is given.
+    Missing(&'static str),
+}
+
+impl Own {
+    /// A law of the speed.
+    #[must_use]
+    pub fn law(kind: &'static str, law: impl Curve + 'static) -> Self {
+        Self::Law { kind, curve: Arc::new(law) }
+    }
+}
+
+impl Debug for Own {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        match self {
+            Self::Law { kind, .. } => write!(f, "Law({kind})"),
+            Self::Missing(field) => write!(f, "Missing({field})"),
+        }
+    }
 }
 
 /// The driven machine.
@@ -66,7 +98,12 @@ pub trait Load: Debug + Send + Sync {
         Vec::new()
     }
 
-    /// Results of its own, `None` if it has no result of this name.
+    /// A result of its own that its speed settles; `None` if it has none of this name.
+    fn own(&self, _name: &str) -> Option<Own> {
+        None
+    }
+
+    /// Results of its own that rest on more than its speed, `None` if it has no result of this name.
     fn answer(&self, _name: &str, _state: &LoadState) -> Option<Answer> {
         None
     }

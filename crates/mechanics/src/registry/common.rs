@@ -65,6 +65,16 @@ pub static DRIVE_RESULTS: &[ResultRow] = &[
         "number",
         "least ratio of available to required torque on the way up, breakaway included",
     ),
+    quantity(
+        "reversal_time",
+        "time",
+        "time from the reached point to the share `run_up_to` of the speed the other way, the source switched over",
+    ),
+    quantity(
+        "reflected_inertia",
+        "moment_of_inertia",
+        "all inertias of the drive seen at its (first) source, its own included, losses left aside",
+    ),
     quantity("stop_time", "time", "time from switching off to rest"),
     ResultRow {
         name: "stop_distance",
@@ -167,6 +177,16 @@ pub fn common_fields(role: Role) -> &'static [Field] {
     match role {
         Role::Source => SOURCE_FIELDS,
         Role::Supply | Role::Transmission | Role::Load => &[],
+    }
+}
+
+/// Fields that say the same as a field with a default: where one of them is given, the default is not taken.
+#[must_use]
+pub fn said_otherwise(field: &str) -> &'static [&'static str] {
+    match field {
+        "breakaway_ratio" => &["breakaway_torque", "breakaway_force", "breakaway_pressure"],
+        "counterweight" => &["balanced_share"],
+        _ => &[],
     }
 }
 

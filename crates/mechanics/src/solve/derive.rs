@@ -207,8 +207,8 @@ impl Solution {
             "run_up_time" | "run_up_distance" | "stop_time" | "stop_distance" => {
                 let Some(source) = self.drive.sources.first() else { return Vec::new() };
                 let speed = self.drive.shafts[source.at.shaft].speed;
-                let inertia: f64 = self.drive.shafts.iter().map(|s| s.inertia * s.speed * s.speed).sum();
-                vec![("w", here.x * speed), ("J", inertia / (speed * speed))]
+                let inertia = self.reflected_inertia().map_or(f64::NAN, |(_, inertia)| inertia);
+                vec![("w", here.x * speed), ("J", inertia)]
             }
             _ => return Vec::new(),
         };

@@ -62,11 +62,33 @@ impl Solution {
                 let (motion, speed) = self.own_shaft()?;
                 self.quantity(self.stop()?.peak * speed, motion.speed_kind(), self.here()?.marks)
             }
+            "reversal_time" => {
+                let here = self.moving().and_then(|_| self.here())?;
+                self.quantity(super::reversal::reversal(&self.drive, here.x)?, "time", here.marks)
+            }
+            "reflected_inertia" => self.inertia_at_source()?,
             "highest_speed" => self.highest_speed(None, None)?,
             "holds_set_speed" => Answer::Flag(self.holds_set_speed()?),
             "limited_by" => Answer::Word(self.limited_by()?),
             _ => Answer::NoSuch,
         })
+    }
+
+    fn inertia_at_source(&self) -> Result<Answer, Answer> {
+        if !self.drive.missing_inertia.is_empty() {
+            return Err(Answer::Refused(self.drive.missing_inertia.clone()));
+        }
+        match self.reflected_inertia().ok_or(Answer::NoSuch)? {
+            (Motion::Rotary, inertia) => Ok(self.quantity(inertia, "moment_of_inertia", Marks::default())),
+            _ => Err(absent("its (first) source runs straight: what it moves is a mass")),
+        }
+    }
+
+    /// All inertias seen at the (first) source, losses left aside.
+    pub(super) fn reflected_inertia(&self) -> Option<(Motion, f64)> {
+        let source = &self.drive.shafts[self.drive.sources.first()?.at.shaft];
+        let all: f64 = self.drive.shafts.iter().map(|s| s.inertia * s.speed * s.speed).sum();
+        Some((source.motion, all / (source.speed * source.speed)))
     }
 
     /// Motion of the drive's own station, and its speed per speed of the root.

@@ -32,6 +32,7 @@ impl Solution {
         let mut found = Vec::new();
         self.without_brake(&mut found);
         self.dip(&mut found);
+        self.unstable(&mut found);
         self.too_fast(&mut found);
         self.runs_away(&mut found);
         self.without_derating(&mut found);
@@ -118,6 +119,39 @@ impl Solution {
             let quantities = vec![(worst.x * shaft.speed, kind), (1.0 / worst.value, "number")];
             found.push(Finding { code: "pull-up-dip", part, note: Note { template, quantities } });
         }
+    }
+
+    /// A point at which the curves only touch, or which a push leaves for good.
+    fn unstable(&self, found: &mut Vec<Finding>) {
+        let Some(path) = self.path.as_ref().filter(|p| !p.back && p.start == 0.0 && p.refused.is_empty())
+        else {
+            return;
+        };
+        let Ok((motion, speed)) = self.own_shaft() else { return };
+        let at = |state: &State| (state.x * speed, motion.speed_kind());
+        let part = self.drive.loads.first().map(|load| load.at.part);
+        let note = match path.reached {
+            Some(index) if self.points[index].stability == Some(Stability::Marginal) => Note {
+                template: "at {0} source and load only touch: a little more load, or a little less of the source, and \
+                           there is no operating point",
+                quantities: vec![at(&self.points[index])],
+            },
+            // A hoist that is lowered too fast runs away as any hoist does: its highest speed is another question.
+            Some(index) if self.here.as_ref().is_ok_and(|here| here.mode == Mode::Motoring) => {
+                let above = &self.points[index + 1..];
+                let Some(left) = above.iter().rfind(|s| s.stability != Some(Stability::Marginal)) else {
+                    return;
+                };
+                if left.stability != Some(Stability::Unstable) {
+                    return;
+                }
+                let template = "it runs at {0}, and pushed past {1} it runs away: from there on the source gives more \
+                                than the load takes";
+                Note { template, quantities: vec![at(&self.points[index]), at(left)] }
+            }
+            _ => return,
+        };
+        found.push(Finding { code: "unstable-point", part, note });
     }
 
     /// Speeds the drive can reach against the limits of its parts.

@@ -10,10 +10,10 @@ use super::flow::{Acting, Flow, flow};
 use super::held;
 use super::points::pieces;
 use super::share::{Shared, shared};
-use crate::curve::Law;
+use crate::curve::{Curve, Law};
 use crate::drive::{DriveSpec, Port, StatedSpeed};
 use crate::fault::{Fault, FaultKind, Note};
-use crate::model::Model;
+use crate::model::{Model, Own};
 use crate::scalar::Real;
 use crate::solution::Answer;
 
@@ -115,7 +115,7 @@ fn extremes(tried: Vec<(f64, Answer)>) -> Extremes {
 
 /// Something that is watched over the range.
 #[derive(Clone, Copy, Debug, PartialEq)]
-enum Watched {
+enum Watched<'a> {
     /// What is left of the sources' most, and of their holding back.
     Spare,
     Hold,
@@ -127,6 +127,8 @@ enum Watched {
     Stage(usize, Port, bool),
     /// Results of a load.
     Load(usize, bool),
+    /// A result of a load's own.
+    Own(usize, &'a str),
     /// Results of a supply.
     Supply(usize, OfSupply),
     /// Power of all sources.
@@ -154,7 +156,7 @@ enum OfSupply {
 }
 
 /// What has to be watched for a question.
-fn watched(drive: &Assembly, question: &Question<'_>) -> Vec<Watched> {
+fn watched<'a>(drive: &Assembly, question: &Question<'a>) -> Vec<Watched<'a>> {
     let mut out = vec![Watched::Spare, Watched::Hold, Watched::Required];
     let power = question.name == "power" || question.name == "power_share";
     let Some(part) = question.part else {
@@ -180,6 +182,9 @@ fn watched(drive: &Assembly, question: &Question<'_>) -> Vec<Watched> {
         out.push(Watched::Stage(index, question.port.unwrap_or(Port::Output), power));
     } else if let Some(index) = drive.loads.iter().position(|l| l.at.part == part) {
         out.push(Watched::Load(index, power));
+        if own(drive, index, question.name).is_some() {
+            out.push(Watched::Own(index, question.name));
+        }
     } else {
         let what = match question.name {
             "voltage" => OfSupply::Voltage,
@@ -191,10 +196,18 @@ fn watched(drive: &Assembly, question: &Question<'_>) -> Vec<Watched> {
     out
 }
 
+/// A result of a load's own, as a law of its speed.
+fn own(drive: &Assembly, index: usize, name: &str) -> Option<Arc<dyn Curve>> {
+    match drive.load(&drive.loads[index])?.own(name)? {
+        Own::Law { curve, .. } => Some(curve),
+        Own::Missing(_) => None,
+    }
+}
+
 /// Something watched, over the speed of the root; `sign` -1 to seek the least.
 struct Stated<'a> {
     drive: &'a Assembly,
-    law: Watched,
+    law: Watched<'a>,
     sign: f64,
 }
 
@@ -301,6 +314,11 @@ impl Law for Stated<'_> {
                 let load = &drive.loads[index];
                 let effort = load.effort(at(load.at.shaft));
                 if power { (effort * at(load.at.shaft)).abs() } else { effort.abs() }
+            }
+            Watched::Own(index, name) => {
+                let load = &drive.loads[index];
+                own(drive, index, name)
+                    .map_or(R::of(0.0), |law| (at(load.at.shaft) * load.sense).on(law.as_ref()))
             }
             Watched::Supply(part, what) => self.of_supply(part, what, x),
             Watched::Power => self.power(x).abs(),

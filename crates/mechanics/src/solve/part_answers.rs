@@ -364,11 +364,7 @@ impl Solution {
             _ if self.effort_word(shaft, name) => self.effort(shaft, effort, here.marks),
             _ => {
                 let state = LoadState { speed: load.sense * speed, effort: load.sense * effort };
-                Ok(self
-                    .drive
-                    .load(load)
-                    .and_then(|model| model.answer(name, &state))
-                    .unwrap_or(Answer::NoSuch))
+                Ok(self.own_of_load(load, name, &state, here.marks))
             }
         }
     }

@@ -171,6 +171,7 @@ fn put_defaults(part: &PartDef<'_>, built: &mut Built) {
     for field in row.fields.iter().chain(registry::common_fields(part.role)) {
         if let Need::Default { si, .. } = field.need
             && built.values.get(field.name).is_none()
+            && !registry::said_otherwise(field.name).iter().any(|other| built.values.get(other).is_some())
             && let Some(value) = default_value(field, si)
         {
             built.values.set(field.name, value);

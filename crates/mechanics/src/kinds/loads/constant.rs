@@ -1,12 +1,12 @@
 //! A load that takes the same torque or force at every speed.
 
-use super::fields::MASS;
-use super::resisting::{Resisting, mass_or_inertia};
+use super::fields::{BREAKAWAY_FORCE_INSTEAD, BREAKAWAY_TORQUE_INSTEAD, MASS};
+use super::resisting::{Resisting, breakaway};
 use crate::fault::Fault;
 use crate::kinds::fields::{BREAKAWAY_RATIO, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, not_negative, range};
-use crate::kinds::reading::{done, limits, only_one};
+use crate::kinds::reading::{done, only_one};
 use crate::laws::drag::{self, Powers};
-use crate::model::{LimitOn, Model, Motion};
+use crate::model::{Model, Motion};
 use crate::registry::{Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -30,6 +30,8 @@ static FIELDS: &[Field] = &[
     not_negative("torque", "torque", Need::OneOf, range(1e-4, 1e8), "torque it takes, turning"),
     not_negative("force", "force", Need::OneOf, range(1e-3, 1e8), "force it takes, running straight"),
     BREAKAWAY_RATIO,
+    BREAKAWAY_TORQUE_INSTEAD,
+    BREAKAWAY_FORCE_INSTEAD,
     INERTIA,
     FLYWHEEL_EFFECT,
     MASS,
@@ -42,15 +44,12 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let Some(way) = only_one(values, &["torque", "force"], why, &mut faults) else { return Err(faults) };
     let motion = if way == "torque" { Motion::Rotary } else { Motion::Linear };
     let effort = values.si(way).unwrap_or(0.0);
+    let powers = Powers { coefficients: [effort, 0.0, 0.0, 0.0] };
     let load = Resisting {
-        motion,
-        powers: Powers { coefficients: [effort, 0.0, 0.0, 0.0] },
-        breakaway: effort * values.si("breakaway_ratio").unwrap_or(1.0),
-        inertia: mass_or_inertia(motion, values, &mut faults),
-        usual_speed: None,
-        limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
+        breakaway: breakaway(values, motion, effort, &mut faults),
         symbols: vec![(if motion == Motion::Rotary { "T" } else { "F" }, effort)],
-        names_speed: false,
+        moving: Vec::new(),
+        ..Resisting::new(motion, powers, values, &mut faults)
     };
     done(Model::Load(Box::new(load)), faults)
 }

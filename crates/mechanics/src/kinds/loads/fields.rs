@@ -51,3 +51,21 @@ pub(super) const BREAKAWAY_FORCE: Field = not_negative(
     range(0.0, 1e7),
     "force to set it moving from rest, for a load that runs straight; none when not given",
 );
+
+/// The same instead of a ratio.
+pub(super) const BREAKAWAY_TORQUE_INSTEAD: Field = not_negative(
+    "breakaway_torque",
+    "torque",
+    Need::Optional,
+    range(0.0, 1e7),
+    "torque to set it moving from rest; instead of breakaway_ratio",
+);
+
+/// The same instead of a ratio.
+pub(super) const BREAKAWAY_FORCE_INSTEAD: Field = not_negative(
+    "breakaway_force",
+    "force",
+    Need::Optional,
+    range(0.0, 1e7),
+    "force to set it moving from rest, running straight; instead of breakaway_ratio",
+);

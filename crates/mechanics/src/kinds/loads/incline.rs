@@ -5,7 +5,7 @@ use crate::fault::Fault;
 use crate::kinds::fields::{not_negative, positive, quantity, range};
 use crate::kinds::reading::{contradiction, done, limits, only_one};
 use crate::laws::incline::{self as law, Pull, cosine_of_grade, sine_of_grade, weight};
-use crate::model::{Known, LimitOn, Model, Standstill};
+use crate::model::{Known, LimitOn, Model, Motion, Standstill};
 use crate::registry::{Bounds, Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -113,6 +113,7 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let coefficient = values.si("friction_coefficient").unwrap_or(0.0);
     let (pull, normal) = (weight(mass) * sine, weight(mass) * cosine);
     let load = Pulled {
+        motion: Motion::Linear,
         demand: Pull { pull, friction: coefficient * normal },
         standstill: Standstill {
             holding: pull,
@@ -123,6 +124,7 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         needs_holding: pull.abs() > coefficient * normal,
         limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
         symbols: vec![("m", mass), ("a", libm::atan2(sine, cosine)), ("mu", coefficient)],
+        own: Vec::new(),
     };
     done(Model::Load(Box::new(load)), faults)
 }

@@ -2,14 +2,13 @@
 
 use super::fields::MASS;
 use super::resisting::mass_or_inertia;
-use crate::curve::{Curve, Law};
+use crate::curve::{Against, Curve, Law};
 use crate::fault::Fault;
 use crate::kinds::fields::{FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, not_negative, plain, range};
 use crate::kinds::reading::{bad_value, contradiction, done, limits, only_one, table};
 use crate::laws::table::{self as law, Table};
 use crate::model::{Known, Limit, LimitOn, Load, LoadState, Model, Motion, Standstill};
 use crate::registry::{ColumnRow, Field, KindRow, Need, Role, Shape};
-use crate::scalar::Real;
 use crate::values::Values;
 
 /// The row.
@@ -77,26 +76,6 @@ struct Measured {
     limits: Vec<Limit>,
 }
 
-/// The table against motion in either direction.
-struct Resisting(Table);
-
-impl Law for Resisting {
-    fn eval<R: Real>(&self, speed: R) -> R {
-        speed.piecewise(&[0.0], |piece, x| if piece == 0 { -self.0.eval(-x) } else { self.0.eval(x) })
-    }
-
-    fn jumps(&self) -> Vec<f64> {
-        if self.0.eval(0.0) == 0.0 { Vec::new() } else { vec![0.0] }
-    }
-
-    fn kinks(&self) -> Vec<f64> {
-        let mut out: Vec<f64> = Law::kinks(&self.0).iter().rev().map(|x| -x).collect();
-        out.push(0.0);
-        out.extend(Law::kinks(&self.0));
-        out
-    }
-}
-
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let mut faults = Vec::new();
     let why = "the measured points: torques if it turns, forces if it runs straight";
@@ -134,7 +113,7 @@ impl Load for Measured {
     }
 
     fn demand(&self) -> Box<dyn Curve> {
-        Box::new(Resisting(self.table.clone()))
+        Box::new(Against(self.table.clone()))
     }
 
     fn standstill(&self) -> Standstill {

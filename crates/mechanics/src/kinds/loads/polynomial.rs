@@ -1,14 +1,14 @@
 //! A load that is a polynomial in speed.
 
-use super::fields::MASS;
-use super::resisting::{Resisting, mass_or_inertia};
+use super::fields::{BREAKAWAY_FORCE_INSTEAD, BREAKAWAY_TORQUE_INSTEAD, MASS};
+use super::resisting::{Resisting, breakaway};
 use crate::fault::Fault;
 use crate::kinds::fields::{
     BREAKAWAY_RATIO, FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, not_negative, quantity, range,
 };
-use crate::kinds::reading::{contradiction, done, limits, missing};
+use crate::kinds::reading::{contradiction, done, missing};
 use crate::laws::drag::{self, Powers};
-use crate::model::{LimitOn, Model, Motion};
+use crate::model::{Model, Motion};
 use crate::registry::{Bounds, Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -80,6 +80,8 @@ static FIELDS: &[Field] = &[
         "force per cube of the speed",
     ),
     BREAKAWAY_RATIO,
+    BREAKAWAY_TORQUE_INSTEAD,
+    BREAKAWAY_FORCE_INSTEAD,
     INERTIA,
     FLYWHEEL_EFFECT,
     MASS,
@@ -126,14 +128,9 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
         Motion::Linear => &["F_0", "F_1", "F_2", "F_3"],
     };
     let load = Resisting {
-        motion,
-        powers,
-        breakaway: powers.coefficients[0] * values.si("breakaway_ratio").unwrap_or(1.0),
-        inertia: mass_or_inertia(motion, values, &mut faults),
-        usual_speed: None,
-        limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
+        breakaway: breakaway(values, motion, powers.coefficients[0], &mut faults),
         symbols: symbols.iter().copied().zip(powers.coefficients).collect(),
-        names_speed: true,
+        ..Resisting::new(motion, powers, values, &mut faults)
     };
     done(Model::Load(Box::new(load)), faults)
 }

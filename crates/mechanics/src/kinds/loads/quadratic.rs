@@ -1,12 +1,10 @@
 //! A load whose torque grows with the square of speed: fan, pump without static head, agitator, propeller.
 
-use super::fields::{BREAKAWAY_FORCE, BREAKAWAY_TORQUE, MASS, RATED_POWER, RATED_SPEED, RATED_TORQUE};
-use super::resisting::{Resisting, mass_or_inertia, power_law};
+use super::power;
 use crate::fault::Fault;
-use crate::kinds::fields::{FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, positive, range};
-use crate::kinds::reading::{done, limits};
+use crate::kinds::fields::{positive, range};
 use crate::laws::drag;
-use crate::model::{LimitOn, Model, Motion};
+use crate::model::{Model, Motion};
 use crate::registry::{Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -15,8 +13,8 @@ pub static ROW: KindRow = KindRow {
     role: Role::Load,
     name: "quadratic",
     title: "load with quadratic torque",
-    summary: "Torque grows with the square of speed, power with the cube: fans, pumps without static head, agitators, \
-              propellers at a fixed advance. A fifth more speed asks 44 % more torque and 73 % more power.",
+    summary: "Torque grows with the square of speed, power with the cube: agitators, fans and pumps without static head \
+              whose flow is not asked for. A fifth more speed asks 44 % more torque and 73 % more power.",
     fields: FIELDS,
     results: &[],
     formulas: &[drag::QUADRATIC, drag::QUADRATIC_FORCE],
@@ -26,10 +24,7 @@ pub static ROW: KindRow = KindRow {
     given: |_| Vec::new(),
 };
 
-static FIELDS: &[Field] = &[
-    RATED_TORQUE,
-    RATED_POWER,
-    RATED_SPEED,
+static FIELDS: &[Field] = &power::fields(
     positive(
         "torque_coefficient",
         "quadratic_torque_coefficient",
@@ -44,35 +39,17 @@ static FIELDS: &[Field] = &[
         range(1e-6, 1e7),
         "force per square of the speed, for a load that runs straight",
     ),
-    BREAKAWAY_TORQUE,
-    BREAKAWAY_FORCE,
-    INERTIA,
-    FLYWHEEL_EFFECT,
-    MASS,
-    MAX_SPEED,
-];
+);
 
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
-    let mut faults = Vec::new();
-    let Some(law) = power_law(values, 2, &mut faults) else { return Err(faults) };
-    let breakaway = if law.motion == Motion::Rotary { "breakaway_torque" } else { "breakaway_force" };
-    // A coefficient is a rated point at unit speed.
-    let rated_speed = law.rated_speed.unwrap_or(1.0);
-    let rated_effort = law.powers.at(rated_speed);
-    let load = Resisting {
-        motion: law.motion,
-        powers: law.powers,
-        breakaway: values.si(breakaway).unwrap_or(0.0),
-        inertia: mass_or_inertia(law.motion, values, &mut faults),
-        usual_speed: law.rated_speed,
-        limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: match law.motion {
-            Motion::Rotary => vec![("T_r", rated_effort), ("w_r", rated_speed)],
-            Motion::Linear => vec![("c_v", law.powers.coefficients[2])],
-        },
-        names_speed: true,
-    };
-    done(Model::Load(Box::new(load)), faults)
+    power::build(values, 2, |law| match law.motion {
+        Motion::Rotary => {
+            // A coefficient is a rated point at unit speed.
+            let speed = law.rated_speed.unwrap_or(1.0);
+            vec![("T_r", law.powers.at(speed)), ("w_r", speed)]
+        }
+        Motion::Linear => vec![("c_v", law.powers.coefficients[2])],
+    })
 }
 
 #[cfg(test)]

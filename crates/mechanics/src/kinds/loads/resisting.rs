@@ -1,40 +1,71 @@
-//! What the loads share that resist motion with a power of the speed: constant, viscous, quadratic, polynomial.
+//! What the loads share that resist motion in either direction by a law of the speed.
 
-use crate::curve::Curve;
+use std::sync::Arc;
+
+use super::fields::{BREAKAWAY_FORCE, BREAKAWAY_TORQUE};
+use crate::curve::{Curve, Law, Line};
 use crate::fault::Fault;
-use crate::kinds::reading::{contradiction, differ, inertia, missing};
-use crate::laws::drag::Powers;
-use crate::model::{Known, Limit, Load, LoadState, Motion, Standstill};
+use crate::kinds::reading::{bad_value, contradiction, inertia, limits};
+use crate::model::{Known, Limit, LimitOn, Load, LoadState, Motion, Own, Standstill};
 use crate::values::Values;
 
 /// A load that resists motion in either direction.
-#[derive(Debug)]
-pub(super) struct Resisting {
+pub(super) struct Resisting<L> {
     /// How it moves.
     pub motion: Motion,
-    /// Effort over the size of the speed.
-    pub powers: Powers,
+    /// Effort over speed, for both signs of the speed.
+    pub law: L,
     /// Effort that sets it moving from rest.
     pub breakaway: f64,
     /// Inertia or mass.
     pub inertia: Known,
     /// A speed of the order of its usual one.
     pub usual_speed: Option<f64>,
+    /// The range of speeds its data were measured in.
+    pub measured: Option<(f64, f64)>,
     /// Limits.
     pub limits: Vec<Limit>,
-    /// Symbols of its formula, but for the speed.
+    /// Symbols of its formulas that its fields settle.
     pub symbols: Vec<(&'static str, f64)>,
-    /// Whether its formula names the speed.
-    pub names_speed: bool,
+    /// Symbols of its formulas that change with the speed.
+    pub moving: Vec<(&'static str, Arc<dyn Curve>)>,
+    /// Results of its own.
+    pub own: Vec<(&'static str, Own)>,
 }
 
-impl Load for Resisting {
+impl<L: Law> Resisting<L> {
+    /// A law with what the fields say beside it: inertia or mass, highest speed. Nothing holds it at rest, and its
+    /// formula names the speed.
+    pub fn new(motion: Motion, law: L, values: &Values, faults: &mut Vec<Fault>) -> Self {
+        let speed: Arc<dyn Curve> = Arc::new(Line { at_zero: 0.0, slope: 1.0 });
+        Self {
+            motion,
+            law,
+            breakaway: 0.0,
+            inertia: mass_or_inertia(motion, values, faults),
+            usual_speed: None,
+            measured: None,
+            limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
+            symbols: Vec::new(),
+            moving: vec![(if motion == Motion::Rotary { "w" } else { "v" }, speed)],
+            own: Vec::new(),
+        }
+    }
+}
+
+impl<L> std::fmt::Debug for Resisting<L> {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        f.debug_struct("Resisting").field("symbols", &self.symbols).finish_non_exhaustive()
+    }
+}
+
+impl<L: Law + Clone + 'static> Load for Resisting<L> {
     fn motion(&self) -> Motion {
         self.motion
     }
 
     fn demand(&self) -> Box<dyn Curve> {
-        Box::new(self.powers)
+        Box::new(self.law.clone())
     }
 
     fn standstill(&self) -> Standstill {
@@ -49,16 +80,21 @@ impl Load for Resisting {
         self.usual_speed
     }
 
+    fn measured(&self) -> Option<(f64, f64)> {
+        self.measured
+    }
+
     fn limits(&self) -> Vec<Limit> {
         self.limits.clone()
     }
 
+    fn own(&self, name: &str) -> Option<Own> {
+        self.own.iter().find(|(own, _)| *own == name).map(|(_, own)| own.clone())
+    }
+
     fn symbols(&self, state: &LoadState) -> Vec<(&'static str, f64)> {
-        let mut out = self.symbols.clone();
-        if self.names_speed {
-            out.push((if self.motion == Motion::Rotary { "w" } else { "v" }, state.speed));
-        }
-        out
+        let moving = self.moving.iter().map(|(name, curve)| (*name, curve.at(state.speed)));
+        self.symbols.iter().copied().chain(moving).collect()
     }
 }
 
@@ -78,69 +114,31 @@ pub(super) fn mass_or_inertia(motion: Motion, values: &Values, faults: &mut Vec<
     }
 }
 
-/// A single power of speed through a rated point or by its coefficient.
-pub(super) struct PowerLaw {
-    /// How it moves.
-    pub motion: Motion,
-    /// The law.
-    pub powers: Powers,
-    /// The rated speed, where one is given.
-    pub rated_speed: Option<f64>,
-}
-
-/// Reads `rated_torque` or `rated_power` with `rated_speed`, `torque_coefficient` or `force_coefficient`.
-pub(super) fn power_law(values: &Values, power: usize, faults: &mut Vec<Fault>) -> Option<PowerLaw> {
-    let speed = values.si("rated_speed");
-    let torque = match (values.si("rated_torque"), values.si("rated_power"), speed) {
-        (Some(torque), Some(given), Some(speed)) if differ(torque * speed, given, 0.02) => {
-            faults.push(contradiction(
-                &["rated_torque", "rated_power", "rated_speed"],
-                "{0} at {1} is {2}, not {3}: which two of torque, power and speed are true?",
-                &[
-                    (torque, "torque"),
-                    (speed, "rotational_speed"),
-                    (torque * speed, "mechanical_power"),
-                    (given, "mechanical_power"),
-                ],
-            ));
-            return None;
-        }
-        (Some(torque), _, _) => Some(torque),
-        (None, Some(power), Some(speed)) => Some(power / speed),
-        _ => None,
+/// Effort that sets a load moving, by whichever field says it: a torque or force, or its ratio to the effort just
+/// after. One that is below the effort just after is no breakaway.
+pub(super) fn breakaway(values: &Values, motion: Motion, running: f64, faults: &mut Vec<Fault>) -> f64 {
+    let (own, foreign) = match motion {
+        Motion::Rotary => (BREAKAWAY_TORQUE.name, BREAKAWAY_FORCE.name),
+        Motion::Linear => (BREAKAWAY_FORCE.name, BREAKAWAY_TORQUE.name),
     };
-    let coefficient = |motion, value| {
-        let mut powers = Powers::default();
-        powers.coefficients[power] = value;
-        Some(PowerLaw { motion, powers, rated_speed: speed })
-    };
-    match (torque, speed, values.si("torque_coefficient"), values.si("force_coefficient")) {
-        (Some(torque), Some(speed), None, None) => {
-            let powers = Powers::through(power, speed, torque);
-            Some(PowerLaw { motion: Motion::Rotary, powers, rated_speed: Some(speed) })
-        }
-        (None, None, Some(value), None) => coefficient(Motion::Rotary, value),
-        (None, None, None, Some(value)) => coefficient(Motion::Linear, value),
-        (_, _, None, None) => {
-            let choices: [&[&'static str]; 4] = [
-                &["rated_torque", "rated_speed"],
-                &["rated_power", "rated_speed"],
-                &["torque_coefficient"],
-                &["force_coefficient"],
-            ];
-            faults.push(missing(&choices, "one rated point, or one coefficient, settles the curve"));
-            None
-        }
-        _ => {
-            let ways =
-                ["rated_torque", "rated_power", "rated_speed", "torque_coefficient", "force_coefficient"];
-            let given: Vec<&'static str> = ways.into_iter().filter(|way| values.get(way).is_some()).collect();
-            faults.push(contradiction(
-                &given,
-                "a rated point or one coefficient settles the curve; keep one",
-                &[],
-            ));
-            None
-        }
+    if values.si(foreign).is_some() {
+        let template = "a load that turns breaks away with a torque, one that runs straight with a force";
+        faults.push(contradiction(&[foreign], template, &[]));
     }
+    let ratio = values.si("breakaway_ratio");
+    let Some(effort) = values.si(own) else { return running * ratio.unwrap_or(1.0) };
+    let kind = motion.effort_kind();
+    if let Some(ratio) = ratio {
+        let template = "both say the same thing: the ratio makes {0}, the other field says {1}; keep one";
+        faults.push(contradiction(
+            &["breakaway_ratio", own],
+            template,
+            &[(running * ratio, kind), (effort, kind)],
+        ));
+    }
+    if effort < running * (1.0 - 1e-9) {
+        let template = "just after it moves it takes {0}, so less than that does not set it moving";
+        faults.push(bad_value(own, template, &[(running, kind)]));
+    }
+    effort
 }

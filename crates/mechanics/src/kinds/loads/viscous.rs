@@ -1,12 +1,10 @@
 //! A load whose torque grows evenly with speed.
 
-use super::fields::{BREAKAWAY_FORCE, BREAKAWAY_TORQUE, MASS, RATED_POWER, RATED_SPEED, RATED_TORQUE};
-use super::resisting::{Resisting, mass_or_inertia, power_law};
+use super::power;
 use crate::fault::Fault;
-use crate::kinds::fields::{FLYWHEEL_EFFECT, INERTIA, MAX_SPEED, positive, range};
-use crate::kinds::reading::{done, limits};
+use crate::kinds::fields::{positive, range};
 use crate::laws::drag;
-use crate::model::{LimitOn, Model, Motion};
+use crate::model::{Model, Motion};
 use crate::registry::{Field, KindRow, Need, Role};
 use crate::values::Values;
 
@@ -26,10 +24,7 @@ pub static ROW: KindRow = KindRow {
     given: |_| Vec::new(),
 };
 
-static FIELDS: &[Field] = &[
-    RATED_TORQUE,
-    RATED_POWER,
-    RATED_SPEED,
+static FIELDS: &[Field] = &power::fields(
     positive(
         "torque_coefficient",
         "viscous_torque_coefficient",
@@ -44,29 +39,12 @@ static FIELDS: &[Field] = &[
         range(1e-6, 1e7),
         "force per speed, for a load that runs straight",
     ),
-    BREAKAWAY_TORQUE,
-    BREAKAWAY_FORCE,
-    INERTIA,
-    FLYWHEEL_EFFECT,
-    MASS,
-    MAX_SPEED,
-];
+);
 
 fn build(values: &Values) -> Result<Model, Vec<Fault>> {
-    let mut faults = Vec::new();
-    let Some(law) = power_law(values, 1, &mut faults) else { return Err(faults) };
-    let breakaway = if law.motion == Motion::Rotary { "breakaway_torque" } else { "breakaway_force" };
-    let load = Resisting {
-        motion: law.motion,
-        powers: law.powers,
-        breakaway: values.si(breakaway).unwrap_or(0.0),
-        inertia: mass_or_inertia(law.motion, values, &mut faults),
-        usual_speed: law.rated_speed,
-        limits: limits(values, &[("max_speed", LimitOn::InputSpeed)]),
-        symbols: vec![(if law.motion == Motion::Rotary { "b" } else { "b_v" }, law.powers.coefficients[1])],
-        names_speed: true,
-    };
-    done(Model::Load(Box::new(load)), faults)
+    power::build(values, 1, |law| {
+        vec![(if law.motion == Motion::Rotary { "b" } else { "b_v" }, law.powers.coefficients[1])]
+    })
 }
 
 #[cfg(test)]

@@ -169,6 +169,15 @@ fn what_can_hurt_says_so() {
         "rack",
         "crank",
         "person",
+        "conveyor",
+        "work_stroke",
+        "generator",
+        "winder",
+        "off_axis_mass",
+        "fan",
+        "pump",
+        "propeller",
+        "cutting",
     ] {
         let row = ROWS.iter().find(|row| row.name == name);
         assert!(row.is_some_and(|row| !row.cautions.is_empty()), "{name}");

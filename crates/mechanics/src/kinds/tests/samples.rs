@@ -138,10 +138,67 @@ fn transmission(name: &str) -> Option<Values> {
     })
 }
 
+fn pump() -> Values {
+    let columns: [(&'static str, &[f64]); 3] =
+        [("flow", &[0.0, 0.01, 0.03]), ("head", &[40.0, 38.0, 22.0]), ("power", &[4e3, 5e3, 7e3])];
+    si(&[("rated_speed", 110.0), ("static_head", 12.0), ("friction_head", 15.0), ("system_flow", 0.02)])
+        .with("curve", table(&columns))
+}
+
+/// Loads of conveying and working machines.
+fn machine(name: &str) -> Option<Values> {
+    Some(match name {
+        "conveyor" => si(&[
+            ("length", 120.0),
+            ("lift", 9.0),
+            ("friction_coefficient", 0.022),
+            ("secondary_factor", 1.78),
+            ("carrying_idlers", 12.0),
+            ("return_idlers", 4.5),
+            ("belt_mass", 9.5),
+            ("material", 43.0),
+            ("drum_friction", 0.3),
+            ("wrap", 3.3),
+        ]),
+        "cutting" => {
+            si(&[("specific_cutting_force", 2e9), ("depth_of_cut", 3e-3), ("feed", 5e-5), ("diameter", 0.12)])
+        }
+        "work_stroke" => si(&[("work", 3200.0), ("rate", 0.5), ("stroke_time", 0.12), ("inertia", 18.0)]),
+        "generator" => {
+            si(&[("torque_constant", 0.6), ("winding_resistance", 0.4), ("charging_voltage", 29.0)])
+        }
+        "winder" => si(&[
+            ("web_tension", 260.0),
+            ("core_diameter", 0.09),
+            ("diameter", 0.8),
+            ("taper", 0.3),
+            ("web_width", 1.2),
+            ("web_density", 820.0),
+        ]),
+        "off_axis_mass" => si(&[("mass", 38.0), ("radius", 0.55), ("angle", 0.4), ("friction_torque", 2.0)]),
+        _ => return None,
+    })
+}
+
 fn load(name: &str) -> Option<Values> {
     Some(match name {
         "constant" => si(&[("torque", 30.0)]),
         "viscous" | "quadratic" => si(&[("rated_torque", 30.0), ("rated_speed", 100.0)]),
+        "constant_power" => si(&[("power", 900.0), ("max_torque", 20.0)]),
+        "power_law" => si(&[("rated_torque", 30.0), ("rated_speed", 100.0), ("exponent", 1.6)]),
+        "fan" => si(&[
+            ("rated_power", 3e3),
+            ("rated_speed", 100.0),
+            ("rated_flow", 1.5),
+            ("rated_pressure", 900.0),
+        ]),
+        "pump" => pump(),
+        "propeller" => si(&[
+            ("torque_coefficient", 0.03),
+            ("thrust_coefficient", 0.2),
+            ("diameter", 0.5),
+            ("density", 1025.0),
+        ]),
         "polynomial" => si(&[("constant_torque", 3.0), ("viscous_torque", 0.1), ("quadratic_torque", 0.002)]),
         "measured_curve" => {
             Values::default().with("curve", table(&[("speed", &[0.0, 300.0]), ("torque", &[5.0, 9.0])]))
@@ -157,7 +214,7 @@ fn load(name: &str) -> Option<Values> {
             ("headwind", -3.0),
         ]),
         "flywheel" => si(&[("inertia", 3.5)]),
-        _ => return None,
+        _ => return machine(name),
     })
 }
 
@@ -165,6 +222,7 @@ fn load(name: &str) -> Option<Values> {
 pub(super) fn straight_loads() -> Vec<(&'static str, Values)> {
     vec![
         ("constant", si(&[("force", 30.0)])),
+        ("constant_power", si(&[("power", 900.0), ("max_force", 500.0)])),
         ("viscous", si(&[("force_coefficient", 3.0)])),
         ("quadratic", si(&[("force_coefficient", 0.3)])),
         ("polynomial", si(&[("constant_force", 12.0), ("quadratic_force", 0.25), ("cubic_force", 0.01)])),

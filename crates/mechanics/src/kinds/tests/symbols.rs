@@ -42,8 +42,7 @@ fn built(row: &KindRow) -> Model {
 
 /// The value of a row's formula; `None` when a symbol of it is not given.
 fn value(row: &KindRow, name: &str, symbols: &Symbols) -> Option<f64> {
-    let formula = row.formulas.iter().find(|formula| formula.name == name)?;
-    evaluate(formula, symbols)
+    row.formulas.iter().filter(|formula| formula.name == name).find_map(|formula| evaluate(formula, symbols))
 }
 
 fn evaluate(formula: &Formula, symbols: &Symbols) -> Option<f64> {
