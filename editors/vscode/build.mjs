@@ -1,6 +1,7 @@
 // Builds the extension into a folder of its own, ready to be packed: nothing that is built stands beside the sources.
 //
 //   node build.mjs         bundles, and puts beside the bundle what the repository has once: grammar, licence, first spec
+//   node build.mjs vsix    the same, and packs it; the packer is fetched, or named by VSCE
 //   node build.mjs test    bundles the tests and runs them
 //
 // LAYSHAFT_SERVER=path/to/layshaft puts that program into the package; it is then good for this platform alone.
@@ -69,7 +70,21 @@ async function buildPackage() {
     fs.copyFileSync(process.env.LAYSHAFT_SERVER, path.join(folder, "server", name));
     fs.chmodSync(path.join(folder, "server", name), 0o755);
   }
-  console.log(folder);
+  return folder;
+}
+
+/** Packs what was built. */
+async function buildVsix() {
+  const folder = await buildPackage();
+  const file = path.join(out, "layshaft.vsix");
+  const [program, ...first] = process.env.VSCE ? [process.execPath, process.env.VSCE] : ["npx", "--yes", "@vscode/vsce@4.1.0"];
+  // Bundled, so there are no dependencies to look for; links of the page lead inside the package.
+  const flags = ["--no-dependencies", "--allow-missing-repository", "--no-rewrite-relative-links", "-o", file];
+  const done = spawnSync(program, [...first, "package", ...flags], { cwd: folder, encoding: "utf8" });
+  if (done.status !== 0) {
+    throw new Error(`the package was not made: ${done.error ?? ""}\n${done.stdout}${done.stderr}`);
+  }
+  console.log(file);
 }
 
 /** The licences of what is in the bundles. */
@@ -106,4 +121,5 @@ async function runTests() {
   process.exitCode = done.status ?? 1;
 }
 
-await (process.argv[2] === "test" ? runTests() : buildPackage());
+const tasks = { vsix: buildVsix, test: runTests, undefined: async () => console.log(await buildPackage()) };
+await tasks[process.argv[2]]();

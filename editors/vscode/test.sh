@@ -85,12 +85,7 @@ fi
 npm run --silent check
 npm run --silent test
 node e2e/snippets.mjs
-npm run --silent build >/dev/null
-(
-    cd "$work/package"
-    node "$tools/node_modules/@vscode/vsce/vsce" package --no-dependencies --allow-missing-repository \
-        --no-rewrite-relative-links -o "$work/layshaft.vsix" >"$work/vsce.log" 2>&1 || { cat "$work/vsce.log"; exit 1; }
-)
+VSCE="$tools/node_modules/@vscode/vsce/vsce" npm run --silent vsix >/dev/null
 step "check, unit tests, package $(du -h "$work/layshaft.vsix" | cut -f1)"
 
 node e2e/run.mjs "$work" "$root"

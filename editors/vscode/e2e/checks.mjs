@@ -33,7 +33,11 @@ async function solved(editor) {
   return /14\.90 m\/min, runs up/.test((await editor.line("drive lift")) ?? "");
 }
 
+/** The server as the extension finds it. */
+let program = "";
+
 async function serverMissing(editor, { bin, server }) {
+  program = path.join(bin, "layshaft");
   await editor.open(HOIST);
   const told = await until("a message that the server is missing", async () =>
     (await editor.notifications()).find((text) => text.includes("was not found")),
@@ -178,6 +182,30 @@ async function completion(editor) {
   await editor.picture("completion");
   await editor.page.keyboard.press("Escape");
   return offered;
+}
+
+async function restart(editor) {
+  const before = serverProcesses();
+  must(before.length === 1, `${before.length} servers run`);
+  await editor.command("Layshaft: Restart Server");
+  const after = await until("one other server", () => {
+    const now = serverProcesses();
+    return now.length === 1 && now[0] !== before[0] ? now : undefined;
+  });
+  await editor.open("typed.shaft");
+  await until("results from the new server", () => solved(editor));
+  return `process ${before[0]} became ${after[0]}`;
+}
+
+/** The servers that run from the folder of this test. */
+function serverProcesses() {
+  return fs.readdirSync("/proc").filter((pid) => {
+    try {
+      return /^\d+$/.test(pid) && fs.readFileSync(`/proc/${pid}/cmdline`, "utf8").startsWith(`${program}\0lsp`);
+    } catch {
+      return false;
+    }
+  });
 }
 
 /** What the panel shows now, as texts. */
@@ -387,6 +415,7 @@ export const all = [
   { name: "hover with numbers and chart", check: hoverWithChart },
   { name: "squiggle, one message at it", check: squiggle },
   { name: "page of a code", check: pageOfCode },
+  { name: "restart", check: restart },
   { name: "quick fix", check: quickFix },
   { name: "completion", check: completion },
   { name: "format", check: format },

@@ -274,7 +274,8 @@ function names(pane: Pane, index: number, extra: Extra): Node[] {
   const { box } = pane;
   const room = { left: box.left + 2, top: box.top + 1, right: box.right - 1, bottom: box.bottom - 2 };
   const boxes: Box[] = pane.marks.map(({ x, y }) => ({ left: x - 9, top: y - 9, right: x + 9, bottom: y + 9 }));
-  const around: Surroundings = { inside: room, curves: [...pane.lines.map((line) => line.way), ...extra.curves], boxes };
+  const zero: Way = [[box.left, pane.y.at(0)], [box.right, pane.y.at(0)]];
+  const around: Surroundings = { inside: room, curves: [...pane.lines.map((line) => line.way), ...extra.curves, zero], boxes };
   const wanted: { of: string; places: readonly Label[] }[] = [];
   if (index === 0) {
     const many = pane.marks.length;
