@@ -13,6 +13,7 @@ pub mod index;
 pub mod number;
 pub mod quantity;
 pub mod say;
+pub mod unit;
 
 mod allow;
 mod cases;

@@ -3,6 +3,7 @@
 use layshaft_mechanics::fault::Note;
 
 use crate::number::{DIGITS, digits, shortened};
+use crate::unit::usual_unit;
 
 /// A number with four significant digits, zeros at the end of its fraction cut.
 pub(crate) fn plain(value: f64) -> String {
@@ -11,8 +12,7 @@ pub(crate) fn plain(value: f64) -> String {
 
 /// An SI value of a kind in its usual unit: `1450 rpm`.
 fn in_usual_unit(si: f64, kind: &str) -> String {
-    let Some(kind) = layshaft_units::kind(kind) else { return plain(si) };
-    in_unit(si, kind.unit)
+    in_unit(si, &usual_unit(kind, [si]))
 }
 
 /// An SI value in a unit.
