@@ -1,7 +1,5 @@
 //! The names that the files of a snapshot declare, found once for a snapshot.
 
-use std::collections::BTreeMap;
-
 use layshaft_diagnostics::{FileId, FileSpan};
 use layshaft_mechanics::registry::{self, Field, ResultRow, Role};
 use layshaft_semantics::analysis::ValueRecord;
@@ -42,7 +40,8 @@ pub(crate) struct Named {
 /// The names of each file.
 #[derive(Clone, Debug, Default)]
 pub(crate) struct Names {
-    files: Vec<BTreeMap<Box<str>, Named>>,
+    /// Sorted by name.
+    files: Vec<Vec<(Box<str>, Named)>>,
 }
 
 impl Names {
@@ -53,13 +52,16 @@ impl Names {
     }
 
     /// Every name of a file, sorted.
-    pub fn all(&self, file: FileId) -> impl Iterator<Item = (&str, Named)> {
-        self.files.get(file.0 as usize).into_iter().flatten().map(|(name, named)| (&**name, *named))
+    pub fn all(&self, file: FileId) -> impl ExactSizeIterator<Item = (&str, Named)> {
+        let names = self.files.get(file.0 as usize).map_or(&[][..], Vec::as_slice);
+        names.iter().map(|(name, named)| (&**name, *named))
     }
 
     /// What a name of a file stands for.
     pub fn find(&self, file: FileId, name: &str) -> Option<Named> {
-        self.files.get(file.0 as usize)?.get(name).copied()
+        let names = self.files.get(file.0 as usize)?;
+        let at = names.binary_search_by(|(known, _)| (**known).cmp(name)).ok()?;
+        names.get(at).map(|(_, named)| *named)
     }
 
     /// Resolves the head of a path; how many names it took.
@@ -72,9 +74,11 @@ impl Names {
     }
 }
 
-fn of_file(snapshot: &Snapshot, file: FileId) -> BTreeMap<Box<str>, Named> {
-    let mut names = BTreeMap::new();
-    let Some(source) = snapshot.file(file) else { return names };
+fn of_file(snapshot: &Snapshot, file: FileId) -> Vec<(Box<str>, Named)> {
+    let Some(source) = snapshot.file(file) else { return Vec::new() };
+    let mut names = Vec::with_capacity(source.tree.items.len());
+    // Items and records stand in the order of the text.
+    let mut records = snapshot.analysis.values.iter().zip(0..).peekable();
     for (index, item) in source.tree.items.iter().enumerate() {
         let (name, span, what) = match &item.tree.kind {
             ItemKind::Let { name, .. } => (name.text.clone(), name.span, Declared::Value),
@@ -97,16 +101,13 @@ fn of_file(snapshot: &Snapshot, file: FileId) -> BTreeMap<Box<str>, Named> {
         };
         if !name.is_empty() {
             let place = FileSpan { file, span: span.shifted(item.offset) };
-            let record = match what {
-                Declared::Value => {
-                    snapshot.analysis.values.binary_search_by(|value| value.place.cmp(&place)).ok()
-                }
-                _ => None,
-            };
-            let record = record.map(|at| at as u32);
-            names.entry(name).or_insert(Named { what, place, item: index as u32, record });
+            while records.next_if(|(record, _)| record.place < place).is_some() {}
+            let record = records.next_if(|(record, _)| record.place == place).map(|(_, at)| at);
+            names.push((name, Named { what, place, item: index as u32, record }));
         }
     }
+    names.sort_by(|(one, _), (other, _)| one.cmp(other));
+    names.dedup_by(|(other, _), (first, _)| other == first);
     names
 }
 

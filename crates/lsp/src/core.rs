@@ -288,3 +288,6 @@ fn words(panic: &(dyn Any + Send)) -> &str {
 pub(crate) fn now() -> Instant {
     Instant::now()
 }
+
+#[cfg(test)]
+mod tests;

@@ -2,6 +2,7 @@
 
 use layshaft_mechanics::registry::{self, ResultRow, ResultShape, Role};
 use layshaft_present::sheet::role_word;
+use layshaft_semantics::analysis::PartRecord;
 
 use super::Asked;
 use super::fields::key;
@@ -27,8 +28,10 @@ pub(super) fn members(asked: Asked<'_, '_>, path: &[&str], wanted: &Wanted, menu
 fn of_part(asked: Asked<'_, '_>, part: Named, wanted: &Wanted, menu: &mut Menu<'_>) {
     let Some(row) = row_of_part(asked.snapshot, part) else { return };
     let record = asked.snapshot.part(part.place);
+    let known = |name: &str| record.is_some_and(|part| part.given.iter().any(|(given, _)| *given == name));
     for field in fields_of(row) {
-        let given = record.is_some_and(|part| part.fields.iter().any(|given| given.name == field.name));
+        let written = |part: &PartRecord| part.fields.iter().any(|given| given.name == field.name);
+        let given = record.is_some_and(written) || known(field.name);
         let own = Wanted::of_field(field);
         let rank = fit(&own.kinds, wanted) + if given { 0 } else { 3 };
         let subject = format!("field:{}:{}:{}", role_word(row.role), row.name, field.name);
@@ -36,8 +39,7 @@ fn of_part(asked: Asked<'_, '_>, part: Named, wanted: &Wanted, menu: &mut Menu<'
         menu.add(rank, CompletionKind::Field, field.name).note(note).about(subject);
     }
     for result in row.results {
-        let known = record.is_some_and(|part| part.given.iter().any(|(name, _)| *name == result.name));
-        if known {
+        if known(result.name) && fields_of(row).all(|field| field.name != result.name) {
             let kinds = kinds_of(result.shape);
             let entry = menu.add(fit(&kinds, wanted), CompletionKind::Result, result.name);
             entry.note(kinds_note(&kinds)).about(super::names::about(asked, part));
@@ -47,8 +49,9 @@ fn of_part(asked: Asked<'_, '_>, part: Named, wanted: &Wanted, menu: &mut Menu<'
 
 /// Parts and results of a drive.
 fn of_drive(asked: Asked<'_, '_>, drive: Named, wanted: &Wanted, menu: &mut Menu<'_>) {
+    let station = Station::new(asked, drive, None);
     for row in registry::DRIVE_RESULTS {
-        result(asked, drive, None, row, wanted, menu);
+        result(asked, station, row, wanted, menu);
     }
     for (text, part) in parts_of_drive(asked.snapshot, drive) {
         name(asked, &text, part, 1, menu);
@@ -73,8 +76,9 @@ fn of_station(asked: Asked<'_, '_>, drive: Named, rest: &[&str], wanted: &Wanted
         return file_in_chain(asked, names, menu);
     };
     let Some(row) = row_of_part(asked.snapshot, part) else { return };
+    let station = Station::new(asked, drive, Some(part));
     for row in results_of(row) {
-        result(asked, drive, Some(part), row, wanted, menu);
+        result(asked, station, row, wanted, menu);
     }
     if part.what == Declared::Part(Role::Transmission) && !port {
         for (side, note) in
@@ -95,23 +99,37 @@ fn file_in_chain(asked: Asked<'_, '_>, names: &[&str], menu: &mut Menu<'_>) {
     }
 }
 
-/// A result, if the station has it: of torque and force it has the one of its motion.
-fn result(
-    asked: Asked<'_, '_>,
+/// A drive, or a part in it, with the kind of its speed where it was solved.
+#[derive(Clone, Copy)]
+struct Station {
     drive: Named,
     part: Option<Named>,
-    row: &'static ResultRow,
-    wanted: &Wanted,
-    menu: &mut Menu<'_>,
-) {
-    let moves = matches!(row.shape, ResultShape::Speed | ResultShape::Effort | ResultShape::Way);
-    // What takes the solver longer is not asked for a list.
-    let quick = matches!(row.name, "speed" | "torque" | "force");
-    let kind = if moves && quick { answered(asked.snapshot, drive, part, None, row.name) } else { None };
-    if row.shape == ResultShape::Effort && kind.is_none() && moving(asked, drive, part) {
-        return;
+    speed: Option<&'static str>,
+}
+
+impl Station {
+    fn new(asked: Asked<'_, '_>, drive: Named, part: Option<Named>) -> Self {
+        Self { drive, part, speed: answered(asked.snapshot, drive, part, None, "speed") }
     }
-    let kinds = kind.map_or_else(|| kinds_of(row.shape), |kind| vec![kind]);
+
+    /// The kinds that a result has here; none where it has not this one: of torque and force a station has the one
+    /// of its motion.
+    fn kinds(self, row: &ResultRow) -> Option<Vec<&'static str>> {
+        let all = kinds_of(row.shape);
+        let Some(speed) = self.speed else { return Some(all) };
+        let turning = usize::from(speed != "rotational_speed");
+        match row.shape {
+            ResultShape::Speed | ResultShape::Way => Some(all.get(turning).copied().into_iter().collect()),
+            ResultShape::Effort if all.get(turning) != Some(&row.name) => None,
+            ResultShape::Effort => Some(vec![row.name]),
+            _ => Some(all),
+        }
+    }
+}
+
+/// A result, if the station has it.
+fn result(asked: Asked<'_, '_>, at: Station, row: &'static ResultRow, wanted: &Wanted, menu: &mut Menu<'_>) {
+    let Some(kinds) = at.kinds(row) else { return };
     let rank = match row.shape {
         ResultShape::Flag | ResultShape::Word(_) => u8::from(!wanted.kinds.is_empty()) * 2,
         _ => fit(&kinds, wanted),
@@ -121,14 +139,9 @@ fn result(
         ResultShape::Word(words) => words.join(", "),
         _ => kinds_note(&kinds),
     };
-    let part = part.map_or(String::new(), |part| super::names::about(asked, part));
-    let subject = format!("result:{}:{}:{}", row.name, super::names::about(asked, drive), part);
+    let part = at.part.map_or(String::new(), |part| super::names::about(asked, part));
+    let subject = format!("result:{}:{}:{}", row.name, super::names::about(asked, at.drive), part);
     menu.add(rank, CompletionKind::Result, row.name).note(note).about(subject);
-}
-
-/// Whether a station was solved, so that what it does not answer it does not have.
-fn moving(asked: Asked<'_, '_>, drive: Named, part: Option<Named>) -> bool {
-    answered(asked.snapshot, drive, part, None, "speed").is_some()
 }
 
 /// 0 where a kind fits, 2 where another is wanted, 1 where nothing is known.

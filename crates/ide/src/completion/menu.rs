@@ -1,9 +1,14 @@
 //! The entries of a list, ranked, and cut where there are very many.
 
+use std::borrow::Cow;
+
 use crate::names::Named;
 
 /// Most entries of a list; more are cut by what is typed, and the list is asked for again with the next letter.
-const MOST: usize = 200;
+const MOST: usize = 100;
+
+/// Names have ranks below this.
+const RANKS: usize = 6;
 
 /// What an entry is.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -36,9 +41,9 @@ pub struct Completion {
     /// What it is.
     pub kind: CompletionKind,
     /// A few words beside it: kind, unit, meaning.
-    pub note: String,
-    /// What is written.
-    pub insert: String,
+    pub note: Cow<'static, str>,
+    /// What is written where it is not the label.
+    pub insert: Option<String>,
     /// Whether `insert` holds places to be filled in.
     pub snippet: bool,
     /// What the typed letters are compared with; the label where it is none.
@@ -74,8 +79,8 @@ impl<'t> Menu<'t> {
         self.items.push(Completion {
             label: label.to_owned(),
             kind,
-            note: String::new(),
-            insert: label.to_owned(),
+            note: Cow::Borrowed(""),
+            insert: None,
             snippet: false,
             filter: None,
             rank,
@@ -85,15 +90,27 @@ impl<'t> Menu<'t> {
         &mut self.items[last]
     }
 
-    /// The best of many names by their ranks: where there are more than a list holds, the typed letters choose first.
-    pub fn best<'n>(&mut self, mut names: Vec<(u8, &'n str, Named)>) -> Vec<(u8, &'n str, Named)> {
-        if names.len() > MOST {
-            names.retain(|(_, label, _)| holds(label, self.typed));
-            self.cut = true;
+    /// The best of many names by their ranks, in their order: where there are more than a list holds, the typed
+    /// letters choose first. Nothing is made of the others.
+    pub fn best<'n>(
+        &mut self,
+        names: impl ExactSizeIterator<Item = (&'n str, Named)>,
+        rank: impl Fn(&str, Named) -> Option<u8>,
+    ) -> Vec<(u8, &'n str, Named)> {
+        // A client chooses among few by rules of its own.
+        let many = names.len() > MOST;
+        self.cut |= many;
+        let mut ranks: Vec<Vec<(u8, &'n str, Named)>> = vec![Vec::new(); RANKS];
+        for (name, named) in names {
+            if many && !holds(name, self.typed) {
+                continue;
+            }
+            let Some(rank) = rank(name, named) else { continue };
+            if let Some(found) = ranks.get_mut(usize::from(rank)).filter(|found| found.len() < MOST) {
+                found.push((rank, name, named));
+            }
         }
-        names.sort_by_key(|(rank, ..)| *rank);
-        names.truncate(MOST);
-        names
+        ranks.into_iter().flatten().take(MOST).collect()
     }
 
     /// The entries, ranked; whether some were left out.
@@ -111,20 +128,30 @@ impl<'t> Menu<'t> {
 
 /// Whether a label holds the typed letters in their order, case aside.
 fn holds(label: &str, typed: &str) -> bool {
+    if label.is_ascii() && typed.is_ascii() {
+        let mut letters = label.bytes();
+        return typed.bytes().all(|byte| letters.any(|other| other.eq_ignore_ascii_case(&byte)));
+    }
     let mut letters = label.chars().flat_map(char::to_lowercase);
     typed.chars().flat_map(char::to_lowercase).all(|c| letters.any(|other| other == c))
 }
 
 impl Completion {
+    /// What is written.
+    #[must_use]
+    pub fn text(&self) -> &str {
+        self.insert.as_deref().unwrap_or(&self.label)
+    }
+
     /// A few words beside the label.
-    pub fn note(&mut self, words: impl Into<String>) -> &mut Self {
+    pub fn note(&mut self, words: impl Into<Cow<'static, str>>) -> &mut Self {
         self.note = words.into();
         self
     }
 
     /// What is written instead of the label.
     pub fn insert(&mut self, text: impl Into<String>) -> &mut Self {
-        self.insert = text.into();
+        self.insert = Some(text.into());
         self
     }
 

@@ -1,7 +1,7 @@
 //! What can be written at a place, in a half-typed text too.
 //!
-//! The place is told from the tokens before it ([`place`]), what it wants from the registry and the last analysis
-//! ([`wanted`]). Documentation is made for the one entry that a reader looks at ([`documentation`]).
+//! The place is told from the tokens before it (`place.rs`), what it wants from the registry and the last analysis
+//! (`wanted.rs`). Documentation is made for the one entry that a reader looks at ([`documentation`]).
 
 mod fields;
 mod files;

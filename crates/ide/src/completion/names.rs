@@ -18,15 +18,15 @@ pub(super) fn about(asked: Asked<'_, '_>, named: Named) -> String {
 
 /// An entry for a name, with what it is.
 pub(super) fn name(asked: Asked<'_, '_>, name: &str, named: Named, rank: u8, menu: &mut Menu<'_>) {
-    let (kind, note) = match named.what {
-        Declared::Value => (CompletionKind::Value, String::new()),
+    let (kind, note): (_, &'static str) = match named.what {
+        Declared::Value => (CompletionKind::Value, ""),
         Declared::Part(role) => {
             let row = row_of_part(asked.snapshot, named);
-            (CompletionKind::Part, row.map_or(role_word(role), |row| row.name).to_owned())
+            (CompletionKind::Part, row.map_or(role_word(role), |row| row.name))
         }
-        Declared::Drive => (CompletionKind::Drive, "drive".to_owned()),
-        Declared::Case => (CompletionKind::Case, "case".to_owned()),
-        Declared::File(_) => (CompletionKind::File, "used file".to_owned()),
+        Declared::Drive => (CompletionKind::Drive, "drive"),
+        Declared::Case => (CompletionKind::Case, "case"),
+        Declared::File(_) => (CompletionKind::File, "used file"),
     };
     menu.add(rank, kind, name).note(note).about(about(asked, named));
 }
@@ -37,17 +37,11 @@ pub(super) fn of_own_item(asked: Asked<'_, '_>, named: Named) -> bool {
     named.place.file == asked.file && item.is_some() && item == asked.cursor.item.map(|item| item.offset)
 }
 
-/// Entries for the best of many names.
-pub(super) fn all(asked: Asked<'_, '_>, found: Vec<(u8, &str, Named)>, menu: &mut Menu<'_>) {
-    for (rank, text, named) in menu.best(found) {
+/// Entries for the best of the names of a file, by their ranks.
+fn all(asked: Asked<'_, '_>, file: FileId, rank: impl Fn(&str, Named) -> Option<u8>, menu: &mut Menu<'_>) {
+    for (rank, text, named) in menu.best(asked.snapshot.names().all(file), rank) {
         name(asked, text, named, rank, menu);
     }
-}
-
-/// The names of the file at hand with their ranks, as far as `rank` gives one.
-fn ranked<'s>(asked: Asked<'s, '_>, rank: impl Fn(&str, Named) -> Option<u8>) -> Vec<(u8, &'s str, Named)> {
-    let all = asked.snapshot.names().all(asked.file);
-    all.filter_map(|(text, named)| Some((rank(text, named)?, text, named))).collect()
 }
 
 /// Parts, of a role where one is wanted, and the files that may hold some.
@@ -58,7 +52,7 @@ pub(super) fn parts(asked: Asked<'_, '_>, role: Option<Role>, menu: &mut Menu<'_
         Declared::File(_) => Some(1),
         _ => None,
     };
-    all(asked, ranked(asked, rank), menu);
+    all(asked, asked.file, rank, menu);
 }
 
 /// Parts of a chain: sources where it begins, what they drive behind an arrow; those that stand in it already last.
@@ -74,7 +68,7 @@ pub(super) fn chain(asked: Asked<'_, '_>, first: bool, menu: &mut Menu<'_>) {
         };
         Some(if used.contains(&text) { 4 } else { rank })
     };
-    all(asked, ranked(asked, rank), menu);
+    all(asked, asked.file, rank, menu);
 }
 
 /// Cases, `plain` among them.
@@ -85,7 +79,7 @@ pub(super) fn cases(asked: Asked<'_, '_>, menu: &mut Menu<'_>) {
     }
     let rank =
         |_: &str, named: Named| (named.what == Declared::Case && !of_own_item(asked, named)).then_some(0);
-    for (rank, text, named) in menu.best(ranked(asked, rank)) {
+    for (rank, text, named) in menu.best(asked.snapshot.names().all(asked.file), rank) {
         let note = match states.get(&named.place) {
             Some((at, 1)) => {
                 let one = asked.snapshot.analysis.cases.get(*at);
@@ -107,7 +101,7 @@ pub(super) fn members_of_case(asked: Asked<'_, '_>, case: &str, menu: &mut Menu<
     for (_, state) in asked.snapshot.states(named.place) {
         let inner = state.label.split_once('[').and_then(|(_, inner)| inner.strip_suffix(']'));
         if let Some(inner) = inner {
-            menu.add(0, CompletionKind::Word, inner).note(&state.label);
+            menu.add(0, CompletionKind::Word, inner).note(state.label.clone());
         }
     }
 }
@@ -120,14 +114,11 @@ pub(super) fn overridable(asked: Asked<'_, '_>, menu: &mut Menu<'_>) {
         Declared::File(_) => Some(2),
         Declared::Case => None,
     };
-    all(asked, ranked(asked, rank), menu);
+    all(asked, asked.file, rank, menu);
 }
 
 /// The values and parts of a used file.
 pub(super) fn of_file(asked: Asked<'_, '_>, file: FileId, menu: &mut Menu<'_>) {
-    let names = asked.snapshot.names().all(file);
-    let found = names
-        .filter(|(_, named)| matches!(named.what, Declared::Value | Declared::Part(_)))
-        .map(|(text, named)| (0, text, named));
-    all(asked, found.collect(), menu);
+    let rank = |_: &str, named: Named| matches!(named.what, Declared::Value | Declared::Part(_)).then_some(0);
+    all(asked, file, rank, menu);
 }

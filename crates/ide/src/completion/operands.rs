@@ -4,7 +4,7 @@ use layshaft_mechanics::registry::Shape;
 use layshaft_present::unit::kind_of;
 use layshaft_semantics::analysis::ValueRecord;
 use layshaft_semantics::quantity::Datum;
-use layshaft_units::Function;
+use layshaft_units::{Function, Type, demand};
 
 use super::Asked;
 use super::menu::{CompletionKind, Menu};
@@ -22,7 +22,7 @@ pub(super) fn operands(
     first: bool,
     menu: &mut Menu<'_>,
 ) {
-    let closed = of_shape(asked, wanted, first, menu);
+    let closed = of_shape(asked, wanted, first, menu) || !wanted.words.is_empty();
     for word in wanted.words {
         menu.add(0, CompletionKind::Word, word);
     }
@@ -55,7 +55,7 @@ pub(super) fn operands(
             .note("constant")
             .about(format!("constant:{constant}"));
     }
-    logic(flavor, first, menu);
+    logic(flavor, first && wanted.kinds.is_empty(), menu);
 }
 
 /// The words that a condition, a choice between two values and a table begin with.
@@ -72,7 +72,7 @@ fn logic(flavor: Flavor, first: bool, menu: &mut Menu<'_>) {
         words(&["not"], 7, menu);
     }
     if flavor == Flavor::Let && first {
-        tables(menu);
+        tables(6, menu);
     }
 }
 
@@ -110,7 +110,7 @@ fn of_shape(asked: Asked<'_, '_>, wanted: &Wanted, first: bool, menu: &mut Menu<
             false
         }
         Shape::Points(_) if first => {
-            tables(menu);
+            tables(1, menu);
             false
         }
         _ => false,
@@ -122,15 +122,15 @@ fn yes_and_no(menu: &mut Menu<'_>) {
     menu.add(0, CompletionKind::Word, "no").note("the flag is not set");
 }
 
-fn tables(menu: &mut Menu<'_>) {
+fn tables(rank: u8, menu: &mut Menu<'_>) {
     let form = menu.snippets;
-    let points = menu.add(1, CompletionKind::Keyword, "points");
+    let points = menu.add(rank, CompletionKind::Keyword, "points");
     points.note("a table in the text").about("word:points");
-    points.insert = if form { "points ($1) {\n    $0\n}" } else { "points (" }.to_owned();
+    points.insert(if form { "points ($1) {\n    $0\n}" } else { "points (" });
     points.snippet = form;
-    let csv = menu.add(1, CompletionKind::Keyword, "csv");
+    let csv = menu.add(rank, CompletionKind::Keyword, "csv");
     csv.note("a table in a file").about("word:csv");
-    csv.insert = if form { "csv \"$1\"" } else { "csv \"" }.to_owned();
+    csv.insert(if form { "csv \"$1\"" } else { "csv \"" });
     csv.snippet = form;
 }
 
@@ -165,12 +165,14 @@ fn gears(asked: Asked<'_, '_>, menu: &mut Menu<'_>) {
 /// Names of values, parts, drives and files, those of a fitting kind first.
 fn names(asked: Asked<'_, '_>, wanted: &Wanted, flavor: Flavor, menu: &mut Menu<'_>) {
     let asks = matches!(flavor, Flavor::Require | Flavor::Show | Flavor::Asked);
+    let rows: Vec<_> = wanted.rows().collect();
     let own = |named: Named| flavor == Flavor::Let && of_own_item(asked, named);
-    let rank = |named: Named| match named.what {
+    let rank = |_: &str, named: Named| match named.what {
         Declared::Value if own(named) => None,
+        Declared::Value if wanted.kinds.is_empty() => Some(2),
         Declared::Value => {
             let ty = named.value(asked.snapshot).and_then(kind_known);
-            Some(match ty.and_then(|ty| wanted.fits(&ty)) {
+            Some(match ty.map(|ty| rows.iter().any(|row| demand(ty, row).is_ok())) {
                 Some(true) => 1,
                 None => 2,
                 Some(false) => 5,
@@ -181,12 +183,10 @@ fn names(asked: Asked<'_, '_>, wanted: &Wanted, flavor: Flavor, menu: &mut Menu<
         Declared::File(_) => Some(5),
         Declared::Case => None,
     };
-    let all = asked.snapshot.names().all(asked.file);
-    let found = all.filter_map(|(text, named)| Some((rank(named)?, text, named))).collect();
-    for (rank, text, named) in menu.best(found) {
+    for (rank, text, named) in menu.best(asked.snapshot.names().all(asked.file), rank) {
         if named.what == Declared::Value {
             let ty = named.value(asked.snapshot).and_then(kind_known);
-            let note = ty.as_ref().and_then(kind_of).map_or("value", |kind| kind.title);
+            let note = ty.and_then(kind_of).map_or("value", |kind| kind.title);
             menu.add(rank, CompletionKind::Value, text).note(note).about(about(asked, named));
         } else {
             super::names::name(asked, text, named, rank, menu);
@@ -194,9 +194,9 @@ fn names(asked: Asked<'_, '_>, wanted: &Wanted, flavor: Flavor, menu: &mut Menu<
     }
 }
 
-fn kind_known(record: &ValueRecord) -> Option<layshaft_units::Type> {
+fn kind_known(record: &ValueRecord) -> Option<&Type> {
     match record.value.as_ref()? {
-        Datum::Quantity(quantity) => Some(quantity.ty),
+        Datum::Quantity(quantity) => Some(&quantity.ty),
         _ => None,
     }
 }

@@ -7,6 +7,9 @@ use super::Asked;
 use super::menu::{CompletionKind, Menu};
 use crate::names::Declared;
 
+/// Among more names than this none is proposed for a drive.
+const MOST: usize = 500;
+
 /// Every word that declares something in this version of the language.
 pub(super) fn declarations(asked: Asked<'_, '_>, menu: &mut Menu<'_>) {
     let said = &asked.snapshot.analysis;
@@ -55,6 +58,9 @@ fn form(asked: Asked<'_, '_>, word: &str) -> String {
 /// The first part of a role that the spec declares, by name.
 fn first_of<'s>(asked: Asked<'s, '_>, role: Role) -> Option<&'s str> {
     let all = asked.snapshot.names().all(asked.file);
+    if all.len() > MOST {
+        return None;
+    }
     all.filter(|(_, named)| named.what == Declared::Part(role))
         .min_by_key(|(_, named)| named.item)
         .map(|(name, _)| name)

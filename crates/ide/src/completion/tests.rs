@@ -70,7 +70,7 @@ fn kinds_of_the_role_alone() {
     holds("let x: $0", &["torque", "rotational_speed"]);
     let forms = list("source m: $0", FORMS).expect("kinds");
     let whole = forms.items.iter().find(|item| item.label == "straight_line { … }").expect("a form");
-    assert!(whole.snippet && whole.insert.starts_with("straight_line {"), "{whole:?}");
+    assert!(whole.snippet && whole.text().starts_with("straight_line {"), "{whole:?}");
     let plain = list("source m: $0 { inertia = 1 kg·m² }", FORMS).expect("kinds");
     assert!(plain.items.iter().all(|item| !item.label.contains('{')));
 }
@@ -82,14 +82,11 @@ fn fields_still_missing_with_their_unit() {
     lacks(drawn, &["rated_speed"]);
     let found = list(drawn, PLAIN).expect("fields");
     assert_eq!(found.items[0].note, "N·m · one of several");
-    assert_eq!(found.items[0].insert, "rated_torque = ");
+    assert_eq!(found.items[0].text(), "rated_torque = ");
     let forms = list(drawn, FORMS).expect("fields");
-    assert_eq!(forms.items[0].insert, "rated_torque = ${1} N·m");
+    assert_eq!(forms.items[0].text(), "rated_torque = ${1} N·m");
     let bare = list("load fan: quadratic { rat$0 = 5 N·m; rated_speed = 900 rpm }", PLAIN).expect("fields");
-    assert_eq!(
-        (bare.items[0].label.as_str(), bare.items[0].insert.as_str()),
-        ("rated_torque", "rated_torque")
-    );
+    assert_eq!((bare.items[0].label.as_str(), bare.items[0].text()), ("rated_torque", "rated_torque"));
 }
 
 #[test]
@@ -129,6 +126,27 @@ fn units_that_fit_right_behind_a_number() {
     holds("let x = 2 * 5 $0", &["N·m", "kW", "mm"]);
     assert_eq!(labels("load fan: quadratic { rated_torque = 5$0 }"), Vec::<String>::new());
     assert_eq!(labels("load fan: quadratic { rated_torque = 5.$0 }"), Vec::<String>::new());
+}
+
+#[test]
+fn units_of_a_point_by_their_place() {
+    first("source m: dc_motor { point = (1.2 $0", &["N·m"]);
+    lacks("source m: dc_motor { point = (1.2 $0", &["rpm"]);
+    first("source m: dc_motor { point = (1.2 N·m at 2850 $0", &["rpm"]);
+    first("source m: dc_motor { point = (1.2 N·m at 2850 rpm, 13 $0), (", &["N·m", "A"]);
+    first("source m: straight_line { point = 5.6 kW at 980 $0", &["rpm"]);
+}
+
+#[test]
+fn thousands_of_names() {
+    let many: String = (0..3000).map(|n| format!("let x_{n} = {n} m\nlet t_{n} = {n} N·m\n")).collect();
+    let all = list(&format!("{many}let a = $0"), PLAIN).expect("a list");
+    assert!(all.items.len() == 100 && all.incomplete);
+    let torques = list(&format!("{many}let a: torque = $0"), PLAIN).expect("a list");
+    assert!(torques.items[..95].iter().all(|item| item.label.starts_with("t_")));
+    let one = list(&format!("{many}let a = X_2999$0"), PLAIN).expect("a list");
+    assert_eq!(one.items[0].label, "x_2999");
+    assert!(one.incomplete, "other letters ask anew");
 }
 
 #[test]

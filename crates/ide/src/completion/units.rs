@@ -39,7 +39,7 @@ pub(super) fn units(asked: Asked<'_, '_>, wanted: &Wanted, menu: &mut Menu<'_>) 
     }
 }
 
-fn add(unit: &str, kind: &str, rank: u8, seen: &mut BTreeSet<String>, menu: &mut Menu<'_>) {
+fn add(unit: &str, kind: &'static str, rank: u8, seen: &mut BTreeSet<String>, menu: &mut Menu<'_>) {
     if unit.is_empty() || !seen.insert(unit.to_owned()) {
         return;
     }

@@ -96,7 +96,10 @@ fn narrowed(at: Asking<'_, '_, '_>, tokens: &[Token], wanted: Wanted, flavor: Fl
         Some(index) if asks || own.is_some() => (&tokens[index + 1..], at.beside(&tokens[..index])),
         _ => (tokens, wanted),
     };
-    let in_call = operand.iter().any(|token| token.kind == K::LeftParen) && wanted.columns.is_empty();
+    if !wanted.columns.is_empty() {
+        return of_point(tokens, wanted);
+    }
+    let in_call = operand.iter().any(|token| token.kind == K::LeftParen);
     let last = operand.last().map(|token| token.kind);
     if in_call || matches!(last, Some(K::Star | K::Slash | K::Caret)) {
         wanted = wanted.any_quantity();
@@ -105,6 +108,20 @@ fn narrowed(at: Asking<'_, '_, '_>, tokens: &[Token], wanted: Wanted, flavor: Fl
         wanted.kinds.push("percentage");
     }
     wanted
+}
+
+/// What stands at a place of a point: behind `at` the speed, elsewhere what belongs to it. Behind a table its
+/// conditions, of any kind.
+fn of_point(tokens: &[Token], wanted: Wanted) -> Wanted {
+    if tokens.iter().any(|token| matches!(token.kind, K::Points | K::Csv)) {
+        return Wanted { columns: &[], ..wanted.any_quantity() };
+    }
+    let open = tokens.iter().rposition(|token| matches!(token.kind, K::LeftParen | K::PairParen));
+    let point = &tokens[open.map_or(0, |at| at + 1)..];
+    let border = point.iter().rposition(|token| matches!(token.kind, K::At | K::Comma));
+    let speed = border.is_some_and(|at| point[at].kind == K::At);
+    let fitting = wanted.columns.iter().filter(|column| (column.name == "speed") == speed);
+    Wanted { kinds: fitting.map(|column| column.kind).collect(), ..wanted }
 }
 
 /// Words that may follow a finished operand.

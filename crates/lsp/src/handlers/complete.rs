@@ -53,9 +53,9 @@ fn list(core: &Core, asked: &Asked, found: &Completions) -> Value {
     let defaults = core.client.completion.default_range;
     let item = |(at, item): (usize, &Completion)| {
         let mut entry = entry(core, asked, at, item);
-        let text = json!(item.insert);
+        let text = json!(item.text());
         if defaults {
-            if item.insert != item.label {
+            if item.insert.is_some() {
                 entry.insert("textEditText".into(), text);
             }
         } else {
