@@ -100,7 +100,7 @@ fn units(open: &str, bar: &str, close: &str) -> String {
             Prefixes::All => ["T", "G", "M", "k", "h", "da", "d", "c", "m", "μ", "µ", "u", "n", "p"]
                 .map(String::from)
                 .to_vec(),
-            Prefixes::Only(list) => list.iter().flat_map(|prefix| spellings(prefix)).collect(),
+            Prefixes::Only(list) => list.iter().flat_map(spellings).collect(),
         };
         // A sign of its own in some regular expressions.
         let written = |symbol: &'static str| if symbol == "%" { "[%]" } else { symbol };
