@@ -12,6 +12,7 @@ use super::Core;
 use crate::disk::{Disk, Place, Stamp};
 use crate::outbox::Outbox;
 use crate::queue::{Event, Pending};
+use crate::watch::Watch;
 
 /// A disk that cannot be relied on.
 struct Shaky;
@@ -56,7 +57,7 @@ fn a_panic_takes_only_its_own_message_along() {
     let (events, received) = mpsc::channel();
     let (messages, mut outgoing) = tokio::sync::mpsc::unbounded_channel::<Request>();
     let pending = Pending::default();
-    let core = Core::new(Box::new(Shaky), pending.clone(), Outbox::new(messages));
+    let core = Core::new(Box::new(Shaky), pending.clone(), Outbox::new(messages), Watch::default());
     let send = |event| events.send(event).expect("the core listens");
     let ask = |id: i64, method: &str, params: Value| {
         let (key, answer) = pending.open(&Id::Number(id)).expect("a new id");
