@@ -29,6 +29,8 @@ function render(): void {
   if (state === undefined) {
     return;
   }
+  // Taking the old page away takes the keys from its chart for a moment: that is no leaving.
+  const at = speed;
   const before = widthOfPicture();
   const made = page(state, before);
   replace(place, made.nodes);
@@ -39,8 +41,8 @@ function render(): void {
     replace(place, again.nodes);
     ({ frame, chart } = again);
   }
-  if (speed !== undefined) {
-    read(speed);
+  if (at !== undefined) {
+    read(at);
   }
 }
 
