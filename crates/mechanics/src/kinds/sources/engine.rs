@@ -239,12 +239,8 @@ impl Source for Engine {
         };
         let mut character = Characteristic::new(Box::new(curve), braking, top);
         // On the governor's line the full-load curve is not asked.
-        let last = if self.governed.is_some_and(|(speed, _)| speed <= last * (1.0 + 1e-9)) {
-            f64::INFINITY
-        } else {
-            last
-        };
-        character.measured = Some((first, last));
+        let covered = self.governed.is_some_and(|(speed, _)| speed <= last * (1.0 + 1e-9));
+        character.measured = Some((first, if covered { f64::max(top, last) } else { last }));
         character.idle = Some(self.idle);
         character.droop = self.governed.map(|(_, droop)| droop);
         character.reversible = false;
