@@ -259,17 +259,19 @@ impl Solution {
     fn outside(&self, here: &State, found: &mut Vec<Finding>) {
         let sources = self.drive.sources.iter().filter(|s| !here.behind[s.at.shaft]);
         let of_sources = sources.map(|s| {
-            let measured = s.character.as_ref().and_then(|c| c.measured);
-            (s.at, measured, 1.0)
+            let character = s.character.as_ref();
+            let idle = character.and_then(|c| c.idle).unwrap_or(f64::NEG_INFINITY);
+            (s.at, character.and_then(|c| c.measured), 1.0, idle)
         });
         let of_loads = self.drive.loads.iter().map(|l| {
             let measured = self.drive.load(l).and_then(|model| model.measured());
-            (l.at, measured, l.sense)
+            (l.at, measured, l.sense, f64::NEG_INFINITY)
         });
-        for (at, measured, sense) in of_sources.chain(of_loads) {
+        for (at, measured, sense, idle) in of_sources.chain(of_loads) {
             let Some((lo, hi)) = measured else { continue };
             let shaft = &self.drive.shafts[at.shaft];
-            let (speed, kind) = (sense * here.x * shaft.speed, shaft.motion.speed_kind());
+            let speed = f64::max(sense * here.x * shaft.speed, idle);
+            let kind = shaft.motion.speed_kind();
             let slack = 1e-9 * f64::max(lo.abs(), hi.abs());
             if speed < lo - slack || speed > hi + slack {
                 let template = "it runs at {0}, and its curve was measured from {1} to {2}: the result is no more \

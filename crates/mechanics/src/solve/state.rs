@@ -150,7 +150,10 @@ fn marks(drive: &Assembly, x: f64, flow: &Flow<f64>) -> Marks {
         let Some(character) = &source.character else { continue };
         // What gives nothing rests on no data.
         marks.outside |= *effort != 0.0 && outside(character.measured_effort, *effort);
-        marks.outside |= outside(character.measured, x * drive.shafts[source.at.shaft].speed);
+        // An engine below its idle speed idles on behind its clutch.
+        let speed =
+            f64::max(x * drive.shafts[source.at.shaft].speed, character.idle.unwrap_or(f64::NEG_INFINITY));
+        marks.outside |= outside(character.measured, speed);
         marks.scaled |= character.scaled;
     }
     for load in &drive.loads {
