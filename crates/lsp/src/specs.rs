@@ -21,6 +21,8 @@ use crate::watch::Watch;
 #[derive(Debug, Default)]
 pub struct Spec {
     memo: Memo,
+    /// The memo of trials, apart, so that a trial does not drop what the text itself still needs.
+    trials: Memo,
     /// The analysis of the texts as they were; none before the first, and where the last one failed.
     pub snapshot: Option<Arc<Snapshot>>,
     /// Whether the analysis is that of the texts as they are.
@@ -250,7 +252,7 @@ impl Specs {
                 return None;
             }
             let document = self.documents.get(uri)?;
-            let memo = &mut self.specs.get_mut(uri)?.memo;
+            let memo = &mut self.specs.get_mut(uri)?.trials;
             self.watch.begin(uri, true);
             let found = match &document.place {
                 Some(place) => {

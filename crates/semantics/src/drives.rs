@@ -302,6 +302,9 @@ impl Solved {
         station: &crate::eval::Station,
         ask: Option<&Ask>,
     ) -> Option<Answer> {
+        if eval.shared.files.interrupted() {
+            return None;
+        }
         let part = match station.part {
             Some(part) => Some(self.items.iter().position(|item| *item == part)?),
             None => None,

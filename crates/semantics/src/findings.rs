@@ -12,6 +12,9 @@ use crate::world::ItemRef;
 pub(crate) fn report(shared: Shared<'_>, states: &[&State<'_>]) {
     let mut found: BTreeMap<(ItemRef, ItemRef, Code), (String, Vec<String>)> = BTreeMap::new();
     for state in states {
+        if shared.files.interrupted() {
+            return;
+        }
         for drive in shared.drives.keys() {
             let solved = state.eval.solved(*drive);
             let Some(solution) = &solved.solution else { continue };

@@ -107,7 +107,10 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     let found = sink.finish();
     allow::accept(shared, found, &mut analysis);
     analysis.files.clone_from(&world.files);
-    memo.forget_unused(&world);
+    // What was stopped half-way has not come to ask for everything that is still good.
+    if !files.interrupted() {
+        memo.forget_unused(&world);
+    }
     analysis
 }
 
