@@ -97,6 +97,7 @@ const FAILING: &[(&str, &[&str])] = &[
     ("barge-winch", &["S1-2"]),
     ("canal-ferry", &[]),
     ("glaze-mixer", &["P4-2"]),
+    ("gravel-conveyor", &[]),
     ("indexing-drum", &["F7-1"]),
     ("irrigation-pump", &[]),
     ("kiln-fan", &["K2-4"]),
@@ -104,6 +105,7 @@ const FAILING: &[(&str, &[&str])] = &[
     ("lift-table", &[]),
     ("mill-hoist", &[]),
     ("mill-turbine", &[]),
+    ("stamping-press", &["P7-2"]),
     ("tunnel-trolley", &[]),
     ("wind-charger", &["H8-3"]),
 ];

@@ -119,7 +119,7 @@ impl Strokes {
     /// The mean torque for this work of a stroke.
     #[must_use]
     pub fn mean_torque(self, work: f64) -> MeanTorque {
-        MeanTorque { work, strokes: self }
+        MeanTorque { work, strokes: self, from: 0.0 }
     }
 
     /// Share of the cycle that is taken by a stroke of this time (s) at a speed.
@@ -148,16 +148,38 @@ pub enum Stroke {
 pub struct MeanTorque {
     work: f64,
     strokes: Strokes,
+    from: f64,
 }
 
-impl Law for MeanTorque {
-    fn eval<R: Real>(&self, speed: R) -> R {
+impl MeanTorque {
+    /// The same with strokes from a speed on, and none below it.
+    #[must_use]
+    pub fn from(self, speed: f64) -> Self {
+        Self { from: speed, ..self }
+    }
+
+    /// While strokes are made.
+    fn working<R: Real>(&self, speed: R) -> R {
         match self.strokes {
             Strokes::EveryTurns(turns) => R::of(self.work / (TAU * turns)),
             Strokes::PerTime(rate) => speed.piecewise(&[TAU * rate], |piece, speed| {
                 if piece == 0 { R::of(self.work / TAU) } else { R::of(self.work * rate) / speed }
             }),
         }
+    }
+}
+
+impl Law for MeanTorque {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        if self.from == 0.0 {
+            return self.working(speed);
+        }
+        speed
+            .piecewise(&[self.from], |piece, speed| if piece == 0 { R::of(0.0) } else { self.working(speed) })
+    }
+
+    fn jumps(&self) -> Vec<f64> {
+        if self.from == 0.0 { Vec::new() } else { vec![self.from] }
     }
 
     fn kinks(&self) -> Vec<f64> {
@@ -206,6 +228,9 @@ mod tests {
         close(every, 0.125, 1e-14);
         assert_eq!(Strokes::PerTime(1.0).share(Stroke::Time(2.0), 5.0), 1.0);
         assert_eq!(drop(1.0, 1e6, 1.0), 1.0);
+        let clutched = Strokes::PerTime(0.5).mean_torque(1e3).from(20.0);
+        assert_eq!((clutched.eval(19.0), clutched.eval(25.0)), (0.0, 20.0));
+        assert_eq!(Law::jumps(&clutched), [20.0]);
     }
 
     proptest! {

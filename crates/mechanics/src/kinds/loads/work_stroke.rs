@@ -22,7 +22,8 @@ pub static ROW: KindRow = KindRow {
     title: "work in strokes",
     summary: "A press, punch, shear or riveter: work of a stroke, so often, with a flywheel that gives what the source does \
               not give in time. The source sees the mean torque; the drop of the speed is told beside it, counted from \
-              the speed at the operating point down. It is run up without strokes: say working = no in that case.",
+              the speed at the operating point down. A press with a clutch is run up without strokes: give from_speed, \
+              or say working = no in a case of its own.",
     fields: FIELDS,
     results: RESULTS,
     formulas: &[
@@ -62,6 +63,13 @@ static FIELDS: &[Field] = &[
         Need::OneOf,
         range(0.1, 1e4),
         "turns of this shaft for each stroke: 1 where the crank sits on it and works every turn",
+    ),
+    positive(
+        "from_speed",
+        "rotational_speed",
+        Need::Optional,
+        range(0.1, 1e4),
+        "speed from which the clutch is put in and strokes are made; at every speed when not given",
     ),
     positive(
         "stroke_time",
@@ -223,7 +231,7 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
     let given = given(values, stated, strokes, &mut faults);
     let working = values.flag("working") != Some(false);
     let work = if working { stated } else { 0.0 };
-    let mean = Against(strokes.mean_torque(work));
+    let mean = Against(strokes.mean_torque(work).from(values.si("from_speed").unwrap_or(0.0)));
     let mut load = Resisting {
         breakaway: mean.eval(0.0),
         symbols: vec![("W", work), if way == "rate" { ("n", often) } else { ("N", often) }],
