@@ -25,9 +25,11 @@ failed=0
 tmux() { command tmux -L "$screen" "$@"; }
 shown() { tmux capture-pane -p "$@"; }
 keys() { tmux send-keys "$@"; }
-# `:kill!` ends the session and kak-lsp with it; without it the server would stay.
+# kak-lsp is told to end before the session: with the terminal alone gone, it and the server would stay.
 finish() {
-    keys Escape ':kill!' Enter 2>/dev/null || true
+    keys Escape Escape ':lsp-exit' Enter 2>/dev/null || true
+    sleep 2
+    keys ':kill!' Enter 2>/dev/null || true
     sleep 1
     tmux kill-server 2>/dev/null || true
 }
