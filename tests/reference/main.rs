@@ -1,5 +1,7 @@
 //! The reference pages of the kinds: each is what its registry row gives. `LAYSHAFT_BLESS=1` writes them anew.
 
+#![allow(clippy::disallowed_methods, reason = "this test reads and writes the pages")]
+
 #[path = "../support/mod.rs"]
 mod support;
 

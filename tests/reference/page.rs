@@ -24,15 +24,15 @@ pub fn page(row: &KindRow, name: &str, drawing: Option<&Drawing>) -> String {
     if let Some(drawing) = drawing {
         let (up, across) = (drawing.up.1, drawing.across.1);
         let names: Vec<&str> = drawing.lines.iter().map(|line| line.name).collect();
-        let _ = write!(out, "\n![{up} over {across} of the example: {}]({name}.svg)\n", names.join(", "));
+        let _ = writeln!(out, "\n![{up} over {across} of the example: {}]({name}.svg)", names.join(", "));
     }
     out.push_str("\n## Fields\n\n");
     fields(row.fields.iter().chain(common_fields(row.role)), &mut out);
     out.push_str("\n## Results\n\n");
     results(row.results.iter(), &mut out);
-    let _ = write!(
+    let _ = writeln!(
         out,
-        "{}What every {role} answers, such as {}, stands on [the page of all kinds](README.md#{role}).\n",
+        "{}What every {role} answers, such as {}, stands on [the page of all kinds](README.md#{role}).",
         if row.results.is_empty() { "" } else { "\n" },
         common_results(row.role)
             .iter()
