@@ -107,6 +107,7 @@ const FAILING: &[(&str, &[&str])] = &[
     ("mill-turbine", &[]),
     ("stamping-press", &["P7-2"]),
     ("tunnel-trolley", &[]),
+    ("twin-tumbler", &[]),
     ("wind-charger", &["H8-3"]),
 ];
 
