@@ -55,6 +55,7 @@ pub static ROWS: &[&KindRow] = &[
     &transmissions::freewheel::ROW,
     &transmissions::coupling::ROW,
     &transmissions::clutch::ROW,
+    &transmissions::fluid_coupling::ROW,
     &loads::constant::ROW,
     &loads::viscous::ROW,
     &loads::quadratic::ROW,

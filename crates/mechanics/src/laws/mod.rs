@@ -19,6 +19,7 @@ pub mod dc_envelope;
 pub mod dc_machine;
 pub mod drag;
 pub mod engine;
+pub mod fluid_coupling;
 pub mod gear;
 pub mod generator;
 pub mod hydraulic_motor;
@@ -88,6 +89,7 @@ pub fn checked() -> impl Iterator<Item = &'static Checked> {
         dc_machine::CHECKED,
         drag::CHECKED,
         engine::CHECKED,
+        fluid_coupling::CHECKED,
         gear::CHECKED,
         generator::CHECKED,
         hydraulic_motor::CHECKED,

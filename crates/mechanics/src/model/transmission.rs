@@ -5,6 +5,7 @@ use std::fmt::Debug;
 use super::{Known, Motion};
 use crate::curve::Curve;
 use crate::drive::Direction;
+use crate::laws::fluid_coupling::Fluid;
 use crate::solution::Answer;
 
 /// How a transmission couples its two ports, in one gear.
@@ -166,6 +167,12 @@ pub trait Transmission: Debug + Send + Sync {
     /// Whether it passes nothing in this gear: neutral, or a clutch that is out.
     fn open(&self, _gear: usize) -> bool {
         false
+    }
+
+    /// Its law, where its ports have no fixed ratio of speeds but pass one torque: a fluid coupling. Its
+    /// [`coupling`](Self::coupling) is then ideal and one to one, and the source before it has a speed of its own.
+    fn fluid(&self) -> Option<Fluid> {
+        None
     }
 
     /// The gear it takes by the direction the drive is asked for, for a reversing gear; `None` for all others.

@@ -176,6 +176,12 @@ impl Assembly {
         if let Some(fault) = held::more_than_one(&drive) {
             return Err(vec![fault]);
         }
+        for source in &drive.sources {
+            if source.behind.is_some() {
+                // It runs up by itself, nearly unloaded; the load comes after.
+                drive.shafts[source.at.shaft].inertia = 0.0;
+            }
+        }
         drive.scale = drive.natural_scale();
         drive.program = Program::new(&drive);
         Ok(drive)
@@ -220,6 +226,13 @@ impl Assembly {
         } else {
             Err(wrong("a stated speed must be above zero: it is counted in the direction of motion"))
         }
+    }
+
+    /// The speed of a shaft while the root runs at `x`: of a source behind a fluid coupling its own.
+    pub fn speed_at(&self, shaft: usize, x: f64) -> f64 {
+        let speed = x * self.shafts[shaft].speed;
+        let behind = self.sources.iter().find(|s| s.at.shaft == shaft).and_then(|s| s.behind.as_ref());
+        behind.map_or(speed, |behind| behind.input(speed))
     }
 
     fn natural_scale(&self) -> f64 {

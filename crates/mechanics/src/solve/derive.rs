@@ -223,7 +223,12 @@ impl Solution {
     fn source_power_step(&self, here: &State, index: usize) -> Vec<Step> {
         let source = &self.drive.sources[index];
         let shaft = &self.drive.shafts[source.at.shaft];
-        power_step(Some(source.at.part), shaft.motion, here.flow.sources[index], here.x * shaft.speed)
+        power_step(
+            Some(source.at.part),
+            shaft.motion,
+            here.flow.sources[index],
+            self.drive.speed_at(source.at.shaft, here.x),
+        )
     }
 
     fn steps_of_part(&self, here: &State, part: usize, port: Option<Port>, name: &str) -> Vec<Step> {
@@ -268,7 +273,7 @@ impl Solution {
         let drive = &self.drive;
         if let Some(index) = drive.sources.iter().position(|s| s.at.part == part) {
             let source = &drive.sources[index];
-            let speed = here.x * drive.shafts[source.at.shaft].speed;
+            let speed = drive.speed_at(source.at.shaft, here.x);
             let effort = here.flow.sources[index];
             let Model::Source(model) = drive.models[part].as_ref() else { return None };
             let symbols = model.symbols(&SourceState { speed, effort, feed: &source.feed });

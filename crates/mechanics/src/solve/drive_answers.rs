@@ -7,6 +7,7 @@ use super::held;
 use super::points::pieces;
 use super::rest::Path;
 use super::run_up::{RunUp, reserve, run_up};
+use super::source_peak::search_peak;
 use super::state::State;
 use super::stop::{Stop, load_drives_on, stop};
 use crate::curve::Law;
@@ -113,7 +114,7 @@ impl Solution {
                 "a freewheel, a neutral gear or an open clutch parts it from the load: its speed is its own",
             ));
         }
-        Ok(self.quantity(here.x * shaft.speed, shaft.motion.speed_kind(), here.marks))
+        Ok(self.quantity(self.drive.speed_at(index, here.x), shaft.motion.speed_kind(), here.marks))
     }
 
     fn flag(&self, name: &str) -> Result<Answer, Answer> {
@@ -193,6 +194,14 @@ impl Solution {
     pub(super) fn peak(&self) -> Result<Greatest, Answer> {
         let peak = *self.peak.get_or_init(|| {
             let drive = &self.drive;
+            if let [only] = &drive.sources[..]
+                && let Some(behind) = &only.behind
+            {
+                let (speed, power) = search_peak(only).ok()?;
+                let x = behind.output(speed) / drive.shafts[only.at.shaft].speed;
+                let value = power * only.at.count;
+                return Some(Greatest { x, value, bound: value });
+            }
             // Along measured curves: what lies beyond their last points is no more than an extrapolation.
             let measured = drive.sources.iter().filter_map(|s| {
                 let (_, last) = s.character.as_ref()?.measured?;
@@ -266,7 +275,7 @@ impl Solution {
                 }
             };
         }
-        Ok(self.quantity(peak * shaft.speed, shaft.motion.speed_kind(), here.marks))
+        Ok(self.quantity(self.drive.speed_at(index, peak), shaft.motion.speed_kind(), here.marks))
     }
 
     pub(super) fn holds_set_speed(&self) -> Result<bool, Answer> {
@@ -297,7 +306,7 @@ impl Solution {
         let source = &self.drive.sources[index];
         match self.drive.models[source.at.part].as_ref() {
             Model::Source(model) => {
-                Ok(model.limited_by(&source.feed, here.x * self.drive.shafts[source.at.shaft].speed))
+                Ok(model.limited_by(&source.feed, self.drive.speed_at(source.at.shaft, here.x)))
             }
             _ => Err(Answer::NoSuch),
         }

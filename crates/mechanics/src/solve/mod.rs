@@ -15,6 +15,7 @@ mod drive_answers;
 mod extreme;
 mod findings;
 mod flow;
+mod fluid;
 mod held;
 mod motion;
 mod over;

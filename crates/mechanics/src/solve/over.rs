@@ -70,6 +70,15 @@ pub fn worst_over(
             kind: FaultKind::Unsettled { how: Note::plain(how) },
         }]);
     }
+    let of_source = question.part.is_none_or(|part| drive.sources.iter().any(|s| s.at.part == part));
+    if (of_source || electrical) && drive.sources.iter().any(|s| s.behind.is_some()) {
+        let how = "over a range of speeds what a source does before a fluid coupling is not covered: ask at single \
+                   speeds, or of the parts behind it";
+        return Err(vec![Fault {
+            part: question.part,
+            kind: FaultKind::Unsettled { how: Note::plain(how) },
+        }]);
+    }
     let stated = |speed| StatedSpeed { part: station.0, port: station.1, speed };
     let (from, to) = (drive.coordinate(&stated(low))?, drive.coordinate(&stated(high))?);
     let ratio = low / from;

@@ -79,7 +79,7 @@ impl Solution {
         let here = self.here()?;
         let behind = here.behind[shaft];
         let effort = if behind { 0.0 } else { here.flow.sources[index] };
-        let speed = here.x * self.drive.shafts[shaft].speed;
+        let speed = self.drive.speed_at(shaft, here.x);
         match name {
             "power" => Ok(self.quantity((effort * speed).abs(), "mechanical_power", here.marks)),
             "power_share" if here.mode == Mode::DrivenBack => Err(absent(TURNED_BACK)),
@@ -89,7 +89,9 @@ impl Solution {
             }
             "mode" => Ok(Answer::Word(source_mode(here, source, effort, behind))),
             "load_share" => self.load_share(here, effort * speed * source.at.count),
-            "torque_reserve" | "force_reserve" => self.reserve(here, source, effort, speed),
+            "torque_reserve" | "force_reserve" => {
+                self.reserve(here, source, effort, here.x * self.drive.shafts[shaft].speed)
+            }
             "current" | "voltage" | "input_power" | "efficiency" => {
                 if behind {
                     return Err(absent(
@@ -207,7 +209,7 @@ impl Solution {
                 continue;
             }
             let behind = here.behind[source.at.shaft];
-            let speed = here.x * self.drive.shafts[source.at.shaft].speed;
+            let speed = self.drive.speed_at(source.at.shaft, here.x);
             let drawn = self.drawn(here, source, if behind { 0.0 } else { *effort }, speed);
             let Some(each) = drawn.supply_current else {
                 return Err(absent("a source on this supply does not know its current or flow"));
@@ -233,7 +235,7 @@ impl Solution {
         let behind = here.behind[stage.at.input];
         let count = stage.at.count;
         TransmissionState {
-            input_speed: here.x * self.drive.shafts[stage.at.input].speed,
+            input_speed: self.drive.speed_at(stage.at.input, here.x),
             input_effort: if behind { 0.0 } else { (through.input + through.hold) / count },
             output_speed: here.x * self.drive.shafts[stage.at.output].speed,
             output_effort: if behind { 0.0 } else { through.output / count },

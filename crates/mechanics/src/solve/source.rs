@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use super::assembly::Assembly;
 use super::chain::Hung;
+use super::fluid::{Behind, misplaced, put_behind};
 use super::ratings::derating;
 use super::shared::{Coupled, Group, Hangs, sort_out};
 use crate::fault::{Fault, FaultKind, Note};
@@ -25,6 +26,8 @@ pub(crate) struct SourceAt {
     pub draw: Option<Box<dyn Draw>>,
     /// The sources it shares a sagging supply with, and its place among them.
     pub coupled: Option<(Arc<Group>, usize)>,
+    /// The fluid coupling behind it: it has a speed of its own.
+    pub behind: Option<Arc<Behind>>,
     /// How a set speed bounds it.
     pub governor: Option<Governor>,
 }
@@ -115,6 +118,7 @@ fn natural<R: Real>(character: &Characteristic, speed: R) -> R {
 pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
     let mut placed = Vec::new();
     let mut faults = Vec::new();
+    faults.extend(misplaced(drive));
     let mut followed = drive.set.is_none();
     for (at, hangs) in drive.tree.sources.iter().zip(sort_out(drive)?) {
         let supply = supply_of(drive, at.part);
@@ -126,6 +130,7 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
             character: None,
             draw: None,
             coupled: None,
+            behind: None,
             governor: None,
         };
         let Model::Source(model) = drive.models[at.part].as_ref() else { continue };
@@ -138,6 +143,14 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
                     } else {
                         source.draw = model.draw(&feed);
                     }
+                    let (character, behind) = match put_behind(drive, at, character) {
+                        Ok(found) => found,
+                        Err(fault) => {
+                            faults.push(fault);
+                            continue;
+                        }
+                    };
+                    source.behind = behind;
                     source.governor = governor(drive, at, &character);
                     followed |= character.follows_set_speed;
                     source.character = Some(character);

@@ -5,16 +5,16 @@ use super::extreme::greatest;
 use super::held;
 use super::points::pieces;
 use super::source::SourceAt;
-use crate::curve::Law;
+use crate::curve::{Curve, Law};
 use crate::scalar::Real;
 use crate::solution::Answer;
 
 /// The most power of one source over its speed.
-struct SourcePeak<'a>(&'a SourceAt);
+struct SourcePeak<'a>(&'a dyn Curve);
 
 impl Law for SourcePeak<'_> {
     fn eval<R: Real>(&self, speed: R) -> R {
-        self.0.most(speed) * speed
+        speed.on(self.0).max(R::of(0.0)) * speed
     }
 }
 
@@ -24,12 +24,15 @@ pub(super) fn search_peak(source: &SourceAt) -> Result<(f64, f64), Answer> {
     if character.holds.is_some() {
         return Err(held::without_limits());
     }
-    let mut jumps = character.drive.jumps();
-    jumps.extend(character.drive.kinks());
+    // Before a fluid coupling it runs along its own curve.
+    let drive = source.behind.as_ref().map_or(character.drive.as_ref(), |behind| behind.source());
+    let mut jumps = drive.jumps();
+    jumps.extend(drive.kinks());
     jumps.sort_by(f64::total_cmp);
     // Along a measured curve: what lies beyond its last point is no more than an extrapolation.
-    let top = character.measured.map_or(4.0 * character.top_speed, |(_, last)| last);
-    match greatest(&SourcePeak(source), &pieces(&jumps, 0.0, top)) {
+    let measured = character.measured.filter(|_| source.behind.is_none());
+    let top = measured.map_or(4.0 * character.top_speed, |(_, last)| last);
+    match greatest(&SourcePeak(drive), &pieces(&jumps, 0.0, top)) {
         Some(peak) if peak.value > 0.0 => Ok((peak.x, peak.value)),
         _ => Err(absent("this source gives no power at any speed")),
     }

@@ -107,7 +107,7 @@ fn left_behind(drive: &Assembly, flow: &Flow<f64>) -> Vec<bool> {
 /// Mechanical power of all sources.
 fn power(drive: &Assembly, x: f64, flow: &Flow<f64>) -> f64 {
     let each = drive.sources.iter().zip(&flow.sources);
-    each.map(|(s, effort)| effort * s.at.count * x * drive.shafts[s.at.shaft].speed).sum()
+    each.map(|(s, effort)| effort * s.at.count * drive.speed_at(s.at.shaft, x)).sum()
 }
 
 fn mode(drive: &Assembly, x: f64, flow: &Flow<f64>) -> Mode {

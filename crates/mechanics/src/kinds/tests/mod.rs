@@ -165,6 +165,7 @@ fn what_can_hurt_says_so() {
         "screw",
         "planetary",
         "clutch",
+        "fluid_coupling",
         "friction_pulley",
         "rack",
         "crank",

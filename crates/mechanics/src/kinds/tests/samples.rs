@@ -128,6 +128,12 @@ fn transmission(name: &str) -> Option<Values> {
         "rack" => losses(si(&[("module", 0.004), ("pinion_teeth", 20.0)])),
         "crank" => losses(si(&[("stroke", 0.12), ("rod_length", 0.3)])),
         "shaft" => si(&[("drag_torque", 1.2), ("viscous_drag", 0.01), ("torsional_stiffness", 5e3)]),
+        "fluid_coupling" => si(&[
+            ("rated_torque", 98.0),
+            ("rated_speed", 154.0),
+            ("rated_slip", 0.03),
+            ("stall_torque_ratio", 2.0),
+        ]),
         "universal_joint" => si(&[("angle", 0.3)]),
         "variable" => {
             losses(si(&[("reduction", 1.4)])).with("reduction_range", FieldValue::Interval(0.5, 2.2))

@@ -3,6 +3,7 @@
 use crate::curve::Curve;
 use crate::fault::Note;
 use crate::kinds::reading::limits;
+use crate::laws::fluid_coupling::Fluid;
 use crate::laws::shaft::Drag;
 use crate::model::{
     Brake, Coupling, Grip, Known, Limit, LimitOn, Model, Motion, Slip, Transmission, TransmissionState,
@@ -31,7 +32,7 @@ pub(super) struct Fixed {
     pub ports: (Motion, Motion),
     /// How they are coupled.
     pub coupling: Coupling,
-    /// Inertia at the input.
+    /// Its inertia.
     pub inertia: f64,
     /// Limits.
     pub limits: Vec<Limit>,
@@ -45,6 +46,10 @@ pub(super) struct Fixed {
     pub drag: Option<Drag>,
     /// Whether it passes nothing.
     pub open: bool,
+    /// Its law, where its ports have no fixed ratio of speeds.
+    pub fluid: Option<Fluid>,
+    /// Whether its inertia sits at its output.
+    pub at_output: bool,
     /// How far it is from slipping.
     pub slip: Option<fn(&Fixed, &TransmissionState) -> Slip>,
     /// Symbols that stay as they are.
@@ -70,6 +75,8 @@ impl Fixed {
             grip: None,
             drag: None,
             open: false,
+            fluid: None,
+            at_output: false,
             slip: None,
             constants: Vec::new(),
             hidden: Vec::new(),
@@ -129,7 +136,11 @@ impl Transmission for Fixed {
     }
 
     fn input_inertia(&self) -> Known {
-        Known::Value(self.inertia)
+        Known::Value(if self.at_output { 0.0 } else { self.inertia })
+    }
+
+    fn output_inertia(&self) -> Known {
+        Known::Value(if self.at_output { self.inertia } else { 0.0 })
     }
 
     fn limits(&self) -> Vec<Limit> {
@@ -155,6 +166,10 @@ impl Transmission for Fixed {
 
     fn open(&self, _gear: usize) -> bool {
         self.open
+    }
+
+    fn fluid(&self) -> Option<Fluid> {
+        self.fluid
     }
 
     fn slip(&self, state: &TransmissionState) -> Option<Slip> {

@@ -8,6 +8,7 @@ pub mod coupling;
 pub mod crank;
 pub mod drum;
 mod fixed;
+pub mod fluid_coupling;
 pub mod freewheel;
 pub mod friction_pulley;
 pub mod gear;

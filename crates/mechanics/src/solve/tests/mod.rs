@@ -1,5 +1,7 @@
 //! The solver against closed forms and published checks.
 
+mod apart;
+mod fluid;
 mod outcomes;
 mod published;
 mod random;
