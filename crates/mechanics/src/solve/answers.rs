@@ -125,7 +125,7 @@ impl Solution {
             speed: state.x * own.speed,
             motion: own.motion,
             source_effort: state.flow.sources[0],
-            source_speed: self.drive.speed_at(source.at.shaft, state.x),
+            source_speed: self.drive.speed_at(source.at.shaft, state.x, &state.flow),
             source_motion: shaft.motion,
             power: state.source_power(&self.drive),
             stability: state.stability?,

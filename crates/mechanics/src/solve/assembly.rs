@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use super::balance::Program;
 use super::chain::{Between, Hung, Tree, tree};
+use super::flow::Flow;
 use super::held;
 use super::shafts::{directed, gears_engaged, inertias, root, self_locking_in_branch, shafts, stages, turn};
 use super::source::{SourceAt, sources};
@@ -220,6 +221,10 @@ impl Assembly {
             Some(shaft) => shaft,
             None => return Err(wrong("a speed is stated at a part that does not stand in this drive")),
         };
+        if self.sources.iter().any(|s| s.at.shaft == shaft && s.behind.is_some()) {
+            let how = "a source before a fluid coupling has a speed of its own: state the speed of a part behind it";
+            return Err(wrong(how));
+        }
         let x = stated.speed / self.shafts[shaft].speed;
         if x > 0.0 && x.is_finite() {
             Ok(x)
@@ -228,11 +233,11 @@ impl Assembly {
         }
     }
 
-    /// The speed of a shaft while the root runs at `x`: of a source behind a fluid coupling its own.
-    pub fn speed_at(&self, shaft: usize, x: f64) -> f64 {
+    /// The speed of a shaft while the root runs at `x` under these efforts: of a source behind a fluid coupling its own.
+    pub fn speed_at(&self, shaft: usize, x: f64, flow: &Flow<f64>) -> f64 {
         let speed = x * self.shafts[shaft].speed;
-        let behind = self.sources.iter().find(|s| s.at.shaft == shaft).and_then(|s| s.behind.as_ref());
-        behind.map_or(speed, |behind| behind.input(speed))
+        let own = self.sources.iter().zip(&flow.sources).find(|(s, _)| s.at.shaft == shaft);
+        own.map_or(speed, |(source, effort)| source.own_speed(speed, *effort))
     }
 
     fn natural_scale(&self) -> f64 {

@@ -227,7 +227,7 @@ impl Solution {
             Some(source.at.part),
             shaft.motion,
             here.flow.sources[index],
-            self.drive.speed_at(source.at.shaft, here.x),
+            self.drive.speed_at(source.at.shaft, here.x, &here.flow),
         )
     }
 
@@ -273,7 +273,7 @@ impl Solution {
         let drive = &self.drive;
         if let Some(index) = drive.sources.iter().position(|s| s.at.part == part) {
             let source = &drive.sources[index];
-            let speed = drive.speed_at(source.at.shaft, here.x);
+            let speed = drive.speed_at(source.at.shaft, here.x, &here.flow);
             let effort = here.flow.sources[index];
             let Model::Source(model) = drive.models[part].as_ref() else { return None };
             let symbols = model.symbols(&SourceState { speed, effort, feed: &source.feed });

@@ -114,7 +114,11 @@ impl Solution {
                 "a freewheel, a neutral gear or an open clutch parts it from the load: its speed is its own",
             ));
         }
-        Ok(self.quantity(self.drive.speed_at(index, here.x), shaft.motion.speed_kind(), here.marks))
+        Ok(self.quantity(
+            self.drive.speed_at(index, here.x, &here.flow),
+            shaft.motion.speed_kind(),
+            here.marks,
+        ))
     }
 
     fn flag(&self, name: &str) -> Result<Answer, Answer> {
@@ -275,7 +279,9 @@ impl Solution {
                 }
             };
         }
-        Ok(self.quantity(self.drive.speed_at(index, peak), shaft.motion.speed_kind(), here.marks))
+        let behind = self.drive.sources.iter().find(|s| s.at.shaft == index).and_then(|s| s.behind.as_ref());
+        let speed = behind.map_or(peak * shaft.speed, |behind| behind.input(peak * shaft.speed));
+        Ok(self.quantity(speed, shaft.motion.speed_kind(), here.marks))
     }
 
     pub(super) fn holds_set_speed(&self) -> Result<bool, Answer> {
@@ -306,7 +312,7 @@ impl Solution {
         let source = &self.drive.sources[index];
         match self.drive.models[source.at.part].as_ref() {
             Model::Source(model) => {
-                Ok(model.limited_by(&source.feed, self.drive.speed_at(source.at.shaft, here.x)))
+                Ok(model.limited_by(&source.feed, self.drive.speed_at(source.at.shaft, here.x, &here.flow)))
             }
             _ => Err(Answer::NoSuch),
         }

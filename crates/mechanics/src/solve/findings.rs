@@ -212,7 +212,7 @@ impl Solution {
         for (source, effort) in self.drive.sources.iter().zip(&here.flow.sources) {
             let shaft = &self.drive.shafts[source.at.shaft];
             let ratings = ratings(&self.drive, source);
-            let speed = self.drive.speed_at(source.at.shaft, here.x);
+            let speed = self.drive.speed_at(source.at.shaft, here.x, &here.flow);
             let current = self.drawn(here, source, *effort, speed).current.unwrap_or(0.0);
             let checks = [
                 (ratings.effort, effort.abs(), shaft.motion.effort_kind()),

@@ -39,10 +39,26 @@ impl Behind {
         self.law.output(input, input.on(self.drive.as_ref()))
     }
 
-    /// The source's own speed at an output speed.
+    /// The source's own speed at an output speed, at full command.
     pub fn input(&self, output: f64) -> f64 {
         let high = 2.0 * (f64::max(output, 0.0) + self.top);
         bracketed(|input| self.output(input) - output, self.low, high)
+    }
+
+    /// The source's own speed at an output speed, while it gives this torque and not the most it can.
+    pub fn input_at(&self, output: f64, torque: f64) -> f64 {
+        let passes = |input: f64| self.law.torque(input, output) - torque;
+        if torque < 0.0 {
+            return bracketed(passes, output / (1.0 + self.law.shape) * (1.0 + PAD), output);
+        }
+        let mut high = f64::max(output, 1e-9 * self.top);
+        for _ in 0..200 {
+            if passes(high) >= 0.0 {
+                break;
+            }
+            high *= 2.0;
+        }
+        bracketed(passes, f64::max(output, 1e-12 * self.top), high)
     }
 
     fn rate(&self, input: Enclosure, output: Enclosure) -> Interval {

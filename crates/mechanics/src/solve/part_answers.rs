@@ -79,7 +79,7 @@ impl Solution {
         let here = self.here()?;
         let behind = here.behind[shaft];
         let effort = if behind { 0.0 } else { here.flow.sources[index] };
-        let speed = self.drive.speed_at(shaft, here.x);
+        let speed = self.drive.speed_at(shaft, here.x, &here.flow);
         match name {
             "power" => Ok(self.quantity((effort * speed).abs(), "mechanical_power", here.marks)),
             "power_share" if here.mode == Mode::DrivenBack => Err(absent(TURNED_BACK)),
@@ -209,7 +209,7 @@ impl Solution {
                 continue;
             }
             let behind = here.behind[source.at.shaft];
-            let speed = self.drive.speed_at(source.at.shaft, here.x);
+            let speed = self.drive.speed_at(source.at.shaft, here.x, &here.flow);
             let drawn = self.drawn(here, source, if behind { 0.0 } else { *effort }, speed);
             let Some(each) = drawn.supply_current else {
                 return Err(absent("a source on this supply does not know its current or flow"));
@@ -235,7 +235,7 @@ impl Solution {
         let behind = here.behind[stage.at.input];
         let count = stage.at.count;
         TransmissionState {
-            input_speed: self.drive.speed_at(stage.at.input, here.x),
+            input_speed: self.drive.speed_at(stage.at.input, here.x, &here.flow),
             input_effort: if behind { 0.0 } else { (through.input + through.hold) / count },
             output_speed: here.x * self.drive.shafts[stage.at.output].speed,
             output_effort: if behind { 0.0 } else { through.output / count },

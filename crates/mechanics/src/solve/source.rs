@@ -62,6 +62,11 @@ impl SourceAt {
         }
     }
 
+    /// Its own speed where its shaft would turn at `speed` under this effort: the same, but behind a fluid coupling.
+    pub fn own_speed(&self, speed: f64, effort: f64) -> f64 {
+        self.behind.as_ref().map_or(speed, |behind| behind.input_at(speed, effort))
+    }
+
     /// The most it gives in the direction of motion, 0 or above.
     pub fn most<R: Real>(&self, speed: R) -> R {
         match &self.character {

@@ -4,6 +4,7 @@ use super::assembly::{Assembly, Far};
 use super::flow::{Flow, Through};
 use super::points::{Meet, at};
 use super::roots::Crossing;
+use super::source::SourceAt;
 use crate::fault::{Fault, FaultKind, Note};
 use crate::model::Known;
 use crate::solution::{Marks, Mode, Stability};
@@ -107,7 +108,8 @@ fn left_behind(drive: &Assembly, flow: &Flow<f64>) -> Vec<bool> {
 /// Mechanical power of all sources.
 fn power(drive: &Assembly, x: f64, flow: &Flow<f64>) -> f64 {
     let each = drive.sources.iter().zip(&flow.sources);
-    each.map(|(s, effort)| effort * s.at.count * drive.speed_at(s.at.shaft, x)).sum()
+    let own = |s: &SourceAt, effort: f64| s.own_speed(x * drive.shafts[s.at.shaft].speed, effort);
+    each.map(|(s, effort)| effort * s.at.count * own(s, *effort)).sum()
 }
 
 fn mode(drive: &Assembly, x: f64, flow: &Flow<f64>) -> Mode {

@@ -1,9 +1,9 @@
 //! A fluid coupling between a source and its load: two speeds, one torque.
 
-use crate::drive::{Chain, DriveSpec, PartSpec, Port, Settings};
+use crate::drive::{Chain, DriveSpec, PartSpec, Port, Settings, StatedSpeed};
 use crate::registry::{Role, row};
 use crate::solution::{Answer, Outcome};
-use crate::solve::{Solution, solve};
+use crate::solve::{Solution, solve, solve_at};
 use crate::values::{FieldValue, FieldValue::Si, Table, Values};
 
 fn part(role: Role, kind: &str, fields: &[(&'static str, f64)]) -> PartSpec {
@@ -99,4 +99,16 @@ fn a_coupling_that_is_too_large_is_refused() {
     };
     assert!(dipping(60.0).is_ok());
     assert!(dipping(300.0).is_err());
+}
+
+#[test]
+fn at_a_stated_speed_the_slip_follows_the_torque() {
+    let at = |part| solve_at(&plant(30.0), StatedSpeed { part, port: None, speed: 100.0 });
+    let solution = at(None).unwrap();
+    let own = number(&solution, 0, None, "speed");
+    assert!(own > 100.0 && own < 110.0, "{own}");
+    let law = crate::laws::fluid_coupling::Fluid::rated(60.0, 150.0, 0.03, 2.0);
+    assert!((law.torque(own, 100.0) - 30.0).abs() < 1e-8);
+    // What the source turns at is its own affair.
+    assert!(at(Some(0)).is_err());
 }
