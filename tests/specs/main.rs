@@ -105,6 +105,7 @@ const FAILING: &[(&str, &[&str])] = &[
     ("lift-table", &[]),
     ("mill-hoist", &[]),
     ("mill-turbine", &[]),
+    ("river-ferry", &[]),
     ("stamping-press", &["P7-2"]),
     ("tunnel-trolley", &[]),
     ("twin-tumbler", &[]),

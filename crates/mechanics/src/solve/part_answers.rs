@@ -1,14 +1,12 @@
 //! What a part of a solved drive answers: speeds, efforts and powers of its stations, and its own results.
 
 use super::answers::{Solution, absent};
-use super::assembly::{LoadAt, Stage};
 use super::held;
 use super::source::SourceAt;
 use super::source_peak::search_peak;
 use super::state::State;
 use crate::drive::Port;
-use crate::fault::{Fault, FaultKind, Note};
-use crate::model::{Drawn, Known, LoadState, Model, Motion, SourceState, TransmissionState};
+use crate::model::{Drawn, LoadState, Model, Motion, SourceState, TransmissionState};
 use crate::solution::{Answer, Marks, Mode};
 
 impl Solution {
@@ -253,6 +251,9 @@ impl Solution {
             "highest_speed" => return self.highest_speed(part, port),
             "holding_reserve" => return self.holding_reserve(stage),
             "grip_reserve" => return self.grip_reserve(index),
+            "engagement_time" | "engagement_speed" | "engagement_heat" => {
+                return self.engagement(index, name);
+            }
             _ => {}
         }
         let own = self.drive.spec.parts[stage.at.part].row.results.iter().any(|r| r.name == name);
@@ -284,64 +285,6 @@ impl Solution {
                 .transmission(stage)
                 .and_then(|model| model.answer(name, &state))
                 .unwrap_or(Answer::NoSuch)),
-        }
-    }
-
-    /// Static effort of the loads at a shaft, losses left out.
-    pub(super) fn static_effort(&self, shaft: usize) -> f64 {
-        let mut sum = 0.0;
-        for load in &self.drive.loads {
-            let Some(model) = self.drive.load(load) else { continue };
-            let ratio = self.drive.shafts[load.at.shaft].speed / self.drive.shafts[shaft].speed;
-            sum += load.sense * model.standstill().holding * load.at.count * ratio;
-        }
-        sum
-    }
-
-    /// Brake effort over the static effort there.
-    fn holding_reserve(&self, stage: &Stage) -> Result<Answer, Answer> {
-        let Some(brake) = self.drive.transmission(stage).and_then(|t| t.brake()) else {
-            return Ok(Answer::NoSuch);
-        };
-        let hold = self.static_effort(stage.at.input).abs();
-        if hold == 0.0 {
-            return Err(absent("the load does not pull at rest: there is nothing to hold"));
-        }
-        Ok(self.quantity(brake.effort * stage.at.count / hold, "number", Marks::default()))
-    }
-
-    /// The force the ground can take over the force at the wheel.
-    fn grip_reserve(&self, index: usize) -> Result<Answer, Answer> {
-        let stage = &self.drive.stages[index];
-        let Some(most) = self.grip_force(stage)? else { return Ok(Answer::NoSuch) };
-        let here = self.here()?;
-        let asked = here.flow.through[index].output.abs();
-        if asked == 0.0 || asked.is_nan() {
-            return Err(absent("the wheel passes no force here"));
-        }
-        Ok(self.quantity(most / asked, "number", here.marks))
-    }
-
-    /// The force the ground can take; none without a wheel.
-    pub(super) fn grip_force(&self, stage: &Stage) -> Result<Option<f64>, Answer> {
-        let Some(grip) = self.drive.transmission(stage).and_then(|t| t.grip()) else { return Ok(None) };
-        let share = match grip.share {
-            Known::Value(share) => share,
-            Known::Missing(field) => {
-                let why = Note::plain("the grip of a wheel needs the share of the weight that presses on it");
-                let kind = FaultKind::Missing { any_of: vec![vec![field]], why };
-                return Err(Answer::Refused(vec![Fault { part: Some(stage.at.part), kind }]));
-            }
-        };
-        let on_it = |load: &&LoadAt| load.at.shaft == stage.at.output;
-        let weight = self.drive.loads.iter().filter(on_it).filter_map(|load| {
-            self.drive.load(load).and_then(|l| l.weight_on_ground()).map(|w| w * load.at.count)
-        });
-        let weight: f64 = weight.sum();
-        if weight > 0.0 {
-            Ok(Some(grip.friction * share * weight))
-        } else {
-            Err(absent("nothing behind this wheel knows the weight it runs under"))
         }
     }
 

@@ -141,24 +141,12 @@ pub(crate) fn sources(drive: &Assembly) -> Result<Vec<SourceAt>, Vec<Fault>> {
         let Model::Source(model) = drive.models[at.part].as_ref() else { continue };
         if drive.spec.parts[at.part].on {
             match taken(drive, &source, model.as_ref()) {
-                Ok(mut character) => {
-                    if let Hangs::Coupled(group, index) = hangs {
-                        character.drive = Box::new(Coupled { group: Arc::clone(&group), index });
-                        source.coupled = Some((group, index));
-                    } else {
+                Ok(character) => {
+                    followed |= character.follows_set_speed;
+                    if let Hangs::Alone(_) = hangs {
                         source.draw = model.draw(&feed);
                     }
-                    let (character, behind) = match put_behind(drive, at, character) {
-                        Ok(found) => found,
-                        Err(fault) => {
-                            faults.push(fault);
-                            continue;
-                        }
-                    };
-                    source.behind = behind;
-                    source.governor = governor(drive, at, &character);
-                    followed |= character.follows_set_speed;
-                    source.character = Some(character);
+                    faults.extend(put_to_work(drive, &mut source, character, hangs));
                 }
                 Err(found) => {
                     faults.extend(found.into_iter().map(|f| Fault { part: f.part.or(Some(at.part)), ..f }));
@@ -190,6 +178,29 @@ fn taken(drive: &Assembly, at: &SourceAt, model: &dyn Source) -> Result<Characte
         faults.push(Fault { part: None, kind });
     }
     if faults.is_empty() { Ok(character) } else { Err(faults) }
+}
+
+/// Gives a source what it does where it stands: on a shared supply, before a fluid coupling, under a set speed.
+fn put_to_work(
+    drive: &Assembly,
+    source: &mut SourceAt,
+    mut character: Characteristic,
+    hangs: Hangs,
+) -> Option<Fault> {
+    let at = source.at;
+    if let Hangs::Coupled(group, index) = hangs {
+        character.drive = Box::new(Coupled { group: Arc::clone(&group), index });
+        source.coupled = Some((group, index));
+    }
+    match put_behind(drive, &at, character) {
+        Ok((character, behind)) => {
+            source.behind = behind;
+            source.governor = governor(drive, &at, &character);
+            source.character = Some(character);
+            None
+        }
+        Err(fault) => Some(fault),
+    }
 }
 
 /// The set speed at a source's shaft.

@@ -7,7 +7,7 @@ mod words;
 
 use std::collections::BTreeMap;
 
-use layshaft_diagnostics::{Code, Diagnostic};
+use layshaft_diagnostics::{Code, Diagnostic, Span};
 use layshaft_mechanics::registry::{self, Field, Need, Shape};
 use layshaft_mechanics::values::{FieldValue, Gear, Values};
 
@@ -81,6 +81,30 @@ fn default_value(field: &Field, si: f64) -> Option<FieldValue> {
     }
 }
 
+/// A loss of one gear: its name, the field, the value and the entry.
+type OfGear<'w> = (Box<str>, &'static str, f64, Given<'w>);
+
+/// Puts the gears together, each with the losses of its own; false where one of these fits no gear.
+fn put_gears<'w>(
+    eval: &Eval<'w>,
+    built: &mut Built,
+    mut gears: Vec<(Span, Gear)>,
+    of_gears: Vec<OfGear<'w>>,
+) -> bool {
+    if gears.is_empty() {
+        return of_gears.is_empty();
+    }
+    // In the order of the text, as a driver would name them.
+    gears.sort_by_key(|(span, _)| *span);
+    let mut gears: Vec<Gear> = gears.into_iter().map(|(_, gear)| gear).collect();
+    let mut fits = true;
+    for (name, field, si, given) in of_gears {
+        fits &= put_in_gear(eval, &mut gears, (&name, field, si), &given);
+    }
+    built.values.set("gear", FieldValue::Gears(gears));
+    fits
+}
+
 /// Gives a gear a loss of its own; says so where there is no such gear.
 fn put_in_gear(
     eval: &Eval<'_>,
@@ -134,15 +158,7 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
         }
         built.values.set(field.name, read.value.clone());
     }
-    if !gears.is_empty() {
-        // In the order of the text, as a driver would name them.
-        gears.sort_by_key(|(span, _)| *span);
-        let mut gears: Vec<Gear> = gears.into_iter().map(|(_, gear)| gear).collect();
-        for (name, field, si, given) in of_gears {
-            whole &= put_in_gear(eval, &mut gears, (&name, field, si), &given);
-        }
-        built.values.set("gear", FieldValue::Gears(gears));
-    }
+    whole &= put_gears(eval, &mut built, gears, of_gears);
     if eval.first_layer && part.field("layer").is_some() && built.values.get("layer").is_none() {
         built.values.set("layer", FieldValue::Si(1.0));
     }

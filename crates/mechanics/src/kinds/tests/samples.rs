@@ -114,6 +114,7 @@ fn transmission(name: &str) -> Option<Values> {
         "wheel" => si(&[("rolling_circumference", 2.0)]),
         "brake" => si(&[("torque", 60.0)]),
         "clutch" => si(&[
+            ("surfaces", 2.0),
             ("friction_coefficient", 0.3),
             ("clamp_force", 4e3),
             ("outer_diameter", 0.24),

@@ -20,7 +20,7 @@ pub static ROW: KindRow = KindRow {
               it, from its idle speed on. Not engaged, it passes nothing.",
     fields: FIELDS,
     results: RESULTS,
-    formulas: &[law::TORQUE],
+    formulas: &[law::TORQUE, law::ENGAGEMENT_SPEED, law::ENGAGEMENT_TIME, law::ENGAGEMENT_HEAT],
     cautions: &[
         "A clutch that slips heats up within seconds. Hot, oily or worn linings carry less: use its least torque. It is no \
          holding device.",
@@ -58,10 +58,10 @@ static FIELDS: &[Field] = &[
     quantity(
         "surfaces",
         "count",
-        default(2.0, "one plate, gripped on both sides"),
+        Need::Where("a clutch that is given by its plates"),
         range(1.0, 100.0),
         range(1.0, 40.0),
-        "rubbing surfaces",
+        "rubbing surfaces: two for a plate that is gripped on both sides",
     ),
     plain(
         "engaged",
@@ -80,11 +80,27 @@ static RESULTS: &[ResultRow] = &[
         meaning: "torque above which it slips",
     },
     SLIP_RESERVE,
+    ResultRow {
+        name: "engagement_time",
+        shape: ResultShape::Quantity("time"),
+        meaning: "time it slips when it engages at this speed with its output at rest, source and load left aside",
+    },
+    ResultRow {
+        name: "engagement_speed",
+        shape: ResultShape::Quantity("rotational_speed"),
+        meaning: "speed at which both sides meet then",
+    },
+    ResultRow {
+        name: "engagement_heat",
+        shape: ResultShape::Quantity("energy"),
+        meaning: "heat in its linings from that",
+    },
 ];
 
 static OWN: &[Own] = &[Own { name: "slip_reserve", kind: "number", value: slip_reserve }];
 
-const PLATES: [&str; 4] = ["friction_coefficient", "clamp_force", "outer_diameter", "inner_diameter"];
+const PLATES: [&str; 5] =
+    ["surfaces", "friction_coefficient", "clamp_force", "outer_diameter", "inner_diameter"];
 
 /// The torque above which it slips.
 fn capacity(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
@@ -112,7 +128,7 @@ fn by_plates(values: &Values, faults: &mut Vec<Fault>) -> Option<f64> {
     }
     let (friction, force) = (values.si("friction_coefficient")?, values.si("clamp_force")?);
     let (outer, inner) = (values.si("outer_diameter")?, values.si("inner_diameter")?);
-    let surfaces = values.si("surfaces").unwrap_or(2.0);
+    let surfaces = values.si("surfaces")?;
     if surfaces != surfaces.round() {
         let how = "surfaces are counted: {0} is no whole number";
         faults.push(bad_value("surfaces", how, &[(surfaces, "number")]));
@@ -168,7 +184,8 @@ mod tests {
         }
     }
 
-    const PLATES: [(&str, f64); 4] = [
+    const PLATES: [(&str, f64); 5] = [
+        ("surfaces", 2.0),
         ("friction_coefficient", 0.3),
         ("clamp_force", 4000.0),
         ("outer_diameter", 0.24),
@@ -202,7 +219,7 @@ mod tests {
         assert!(matches!(clutch(&PLATES[..2]), Err(FaultKind::Missing { .. })));
         let twice = [&PLATES[..], &[("max_torque", 3.0)]].concat();
         assert!(matches!(clutch(&twice), Err(FaultKind::Contradiction { .. })));
-        let inside_out = [&PLATES[..3], &[("inner_diameter", 0.3)]].concat();
+        let inside_out = [&PLATES[..4], &[("inner_diameter", 0.3)]].concat();
         assert!(matches!(clutch(&inside_out), Err(FaultKind::Contradiction { .. })));
     }
 }
