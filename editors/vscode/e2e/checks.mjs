@@ -392,7 +392,9 @@ async function themes(editor) {
 }
 
 async function resultTable(editor) {
-  await editor.intoText();
+  await editor.closeAll();
+  await editor.open(HOIST);
+  await until("the server answers", () => solved(editor));
   await editor.goto(38, 8);
   await editor.command("Layshaft: Show Result Table of Drive");
   const text = await until("the page with the table", async () => {

@@ -8,13 +8,13 @@ import {
   type ServerOptions,
 } from "vscode-languageclient/node";
 
-import { pageUri, type Pages } from "./pages";
+import { SCHEME, type Pages } from "./pages";
 
 /** The language of specs. */
 export const LANGUAGE = "shaft";
 /** The section of the settings. */
 export const SECTION = "layshaft";
-/** Commands that the server runs; each answers with a page. */
+/** Commands that the server runs; each shows a page. */
 export const SERVER_COMMANDS = { explain: "layshaft.explain", resultTable: "layshaft.resultTable" } as const;
 
 /** A client for a program; not started yet. */
@@ -38,45 +38,32 @@ export function newClient(program: string, output: vscode.LogOutputChannel, page
         if (uri.scheme === "git") {
           return undefined;
         }
-        const report = await next(document, previous, token);
-        if (report?.kind === "full") {
-          report.items.forEach(linkToItsPage);
-        }
-        return report;
+        return next(document, previous, token);
       },
-      handleDiagnostics: (uri, diagnostics, next) => {
-        diagnostics.forEach(linkToItsPage);
-        next(uri, diagnostics);
-      },
-      executeCommand: async (command, args, next) => {
-        const answer: unknown = await next(command, args);
-        if (typeof answer === "string" && Object.values<string>(SERVER_COMMANDS).includes(command)) {
-          await pages.show(command, args, answer);
-        }
-        return answer;
+      window: {
+        showDocument: async (params, token, next) => {
+          const uri = vscode.Uri.parse(params.uri);
+          if (uri.scheme !== SCHEME) {
+            return next(params, token);
+          }
+          await pages.show(uri);
+          return { success: true };
+        },
       },
     },
   };
   return new LanguageClient(SECTION, "Layshaft", server, client);
 }
 
-/** What the server is told at once: the settings, and so whether charts are wanted in hovers. */
+/** What the server is told at once: that its pages can be opened, and the settings, so that charts come in hovers. */
 export function initializationOptions(): Record<string, unknown> {
   const of = vscode.workspace.getConfiguration(SECTION);
   return {
+    documents: true,
     charts: of.get<boolean>("charts", true),
     lenses: of.get<boolean>("lenses", false),
     hints: of.get<Record<string, boolean>>("hints", {}),
   };
-}
-
-/** The code of a finding opens the page that explains it. */
-function linkToItsPage(finding: vscode.Diagnostic): void {
-  const code = codeOf(finding);
-  if (code !== undefined) {
-    const target = pageUri(SERVER_COMMANDS.explain, [code]);
-    finding.code = { value: code, target };
-  }
 }
 
 /** The code of a finding of this server. */

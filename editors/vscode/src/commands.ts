@@ -41,9 +41,10 @@ async function showResultTable(server: Server): Promise<void> {
     return;
   }
   const { line, character } = editor.selection.active;
+  const before = server.pages.shown;
   const answer = await ask(server, SERVER_COMMANDS.resultTable, editor.document.uri.toString(), { line, character });
-  if (answer === null) {
-    void vscode.window.showInformationMessage("Put the cursor on the name of a drive first.");
+  if (answer === null && server.pages.shown === before) {
+    void vscode.window.showInformationMessage("Put the cursor on something of a drive first.");
   }
 }
 

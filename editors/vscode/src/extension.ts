@@ -18,12 +18,12 @@ let running: Server | undefined;
 export async function activate(context: vscode.ExtensionContext): Promise<void> {
   const output = vscode.window.createOutputChannel("Layshaft", { log: true });
   const status = new Status();
-  const pages = new Pages(async (command, args) => {
+  const pages = new Pages(async (method, params) => {
     const client = running?.client;
     if (client?.isRunning() !== true) {
       throw new Error("it does not run");
     }
-    return client.sendRequest("workspace/executeCommand", { command, arguments: args });
+    return client.sendRequest(method, params);
   });
   const server = new Server(context, output, pages, status);
   running = server;
@@ -56,7 +56,7 @@ export class Server {
   constructor(
     private readonly context: vscode.ExtensionContext,
     private readonly output: vscode.LogOutputChannel,
-    private readonly pages: Pages,
+    readonly pages: Pages,
     private readonly status: Status,
   ) {}
 

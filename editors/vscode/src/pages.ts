@@ -1,19 +1,19 @@
-// Pages of the server as documents: Markdown that nobody can edit, shown by the editor's own preview. The address of a
-// page says what it answers, so that a page which is not kept any more, or a tab of yesterday, is asked for again.
+// Pages of the server as documents: Markdown that nobody can edit, shown by the editor's own preview. The name of a page
+// says what it answers; its text is asked for when it is opened.
 
 import * as vscode from "vscode";
 
-/** The scheme of the addresses; the manifest sends it to the preview. */
-export const SCHEME = "layshaft-page";
-/** Pages kept. */
-const MOST = 32;
+/** The scheme of the names; the manifest sends it to the preview. */
+export const SCHEME = "layshaft";
+const REQUEST = "layshaft/document";
 
-/** Asks the server: a command and its arguments, answered with Markdown or nothing. */
-export type Ask = (command: string, args: readonly unknown[]) => Promise<unknown>;
+/** Asks the server. */
+export type Ask = (method: string, params: object) => Promise<unknown>;
 
-/** The pages shown so far. */
+/** The pages of the server. */
 export class Pages implements vscode.TextDocumentContentProvider, vscode.Disposable {
-  private readonly texts = new Map<string, string>();
+  /** How often a page was shown. */
+  shown = 0;
   private readonly changed = new vscode.EventEmitter<vscode.Uri>();
   private readonly registration = vscode.workspace.registerTextDocumentContentProvider(SCHEME, this);
   readonly onDidChange = this.changed.event;
@@ -21,27 +21,18 @@ export class Pages implements vscode.TextDocumentContentProvider, vscode.Disposa
   constructor(private readonly ask: Ask) {}
 
   async provideTextDocumentContent(uri: vscode.Uri): Promise<string> {
-    const kept = this.texts.get(uri.toString());
-    if (kept !== undefined) {
-      return kept;
-    }
-    const question = questionOf(uri);
     try {
-      const answer = question === undefined ? undefined : await this.ask(question.command, question.args);
-      return typeof answer === "string" ? answer : "There is nothing to tell.\n";
+      const answer = await this.ask(REQUEST, { uri: nameOf(uri) });
+      const text = (answer as { text?: unknown } | null)?.text;
+      return typeof text === "string" ? text : "There is nothing to tell.\n";
     } catch (error) {
       return `The server gave no answer: ${error instanceof Error ? error.message : String(error)}\n`;
     }
   }
 
-  /** Shows the answer of a command of the server. */
-  async show(command: string, args: readonly unknown[], markdown: string): Promise<void> {
-    const uri = pageUri(command, args);
-    this.texts.delete(uri.toString());
-    this.texts.set(uri.toString(), markdown);
-    for (const oldest of [...this.texts.keys()].slice(0, -MOST)) {
-      this.texts.delete(oldest);
-    }
+  /** Shows a page beside the text, as it is now. */
+  async show(uri: vscode.Uri): Promise<void> {
+    this.shown += 1;
     this.changed.fire(uri);
     await vscode.commands.executeCommand("vscode.open", uri, { viewColumn: vscode.ViewColumn.Beside, preview: true });
   }
@@ -52,20 +43,8 @@ export class Pages implements vscode.TextDocumentContentProvider, vscode.Disposa
   }
 }
 
-/** The address of the answer to a command. */
-export function pageUri(command: string, args: readonly unknown[]): vscode.Uri {
-  const first = typeof args[0] === "string" ? args[0] : "page";
-  const last = first.split("/").pop() ?? first;
-  const title = last.replace(/[^\p{L}\p{N}._-]/gu, "_").replace(/\.shaft$/, "") || "page";
-  return vscode.Uri.from({ scheme: SCHEME, path: `/${command}/${title}.md`, query: JSON.stringify(args) });
-}
-
-function questionOf(uri: vscode.Uri): { command: string; args: unknown[] } | undefined {
-  const command = uri.path.split("/")[1];
-  try {
-    const args: unknown = JSON.parse(uri.query);
-    return command !== undefined && Array.isArray(args) ? { command, args } : undefined;
-  } catch {
-    return undefined;
-  }
+/** The name as the server wrote it: the editor's own way of writing it hides what parts the questions in it. */
+function nameOf(uri: vscode.Uri): string {
+  const query = encodeURIComponent(uri.query).replace(/%3D/g, "=").replace(/%26/g, "&");
+  return uri.with({ query: "" }).toString() + (query === "" ? "" : `?${query}`);
 }
