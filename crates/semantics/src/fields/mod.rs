@@ -169,8 +169,14 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
     if whole {
         try_law(eval, part, &mut built);
     }
-    let found = (row.given)(&built.values);
-    built.given = found
+    built.given = given(row, &built.values);
+    Some(built)
+}
+
+/// Results that the fields alone settle.
+fn given(row: &registry::KindRow, values: &Values) -> Vec<(&'static str, Datum)> {
+    let found = (row.given)(values);
+    found
         .into_iter()
         .filter(|(_, si)| si.is_finite())
         .filter_map(|(name, si)| {
@@ -178,8 +184,7 @@ pub(crate) fn build(eval: &Eval<'_>, at: ItemRef) -> Option<Built> {
             let registry::ResultShape::Quantity(kind) = result.shape else { return None };
             Some((name, quantity(si, kind)?))
         })
-        .collect();
-    Some(built)
+        .collect()
 }
 
 fn put_defaults(part: &PartDef<'_>, built: &mut Built) {

@@ -227,22 +227,13 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
 #[cfg(test)]
 mod tests {
     use super::build;
+    use crate::kinds::loads::testing::{loaded, result};
     use crate::laws::testing::close;
-    use crate::model::{Load, Model, Motion, Own};
+    use crate::model::{Load, Motion, Own};
     use crate::values::{FieldValue, FieldValue::Si, Values};
 
     fn built(values: &Values) -> Box<dyn Load> {
-        match build(values) {
-            Ok(Model::Load(load)) => load,
-            other => panic!("{other:?}"),
-        }
-    }
-
-    fn result(load: &dyn Load, name: &str, speed: f64) -> f64 {
-        match load.own(name) {
-            Some(Own::Law { curve, .. }) => curve.at(speed),
-            other => panic!("{name}: {other:?}"),
-        }
+        loaded(build(values))
     }
 
     fn steel() -> Values {

@@ -339,22 +339,13 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
 #[cfg(test)]
 mod tests {
     use super::build;
+    use crate::kinds::loads::testing::{loaded, result};
     use crate::laws::testing::close;
-    use crate::model::{Load, Model, Own};
+    use crate::model::Load;
     use crate::values::{FieldValue, FieldValue::Si, Values};
 
     fn built(values: &Values) -> Box<dyn Load> {
-        match build(values) {
-            Ok(Model::Load(load)) => load,
-            other => panic!("{other:?}"),
-        }
-    }
-
-    fn result(load: &dyn Load, name: &str, speed: f64) -> f64 {
-        match load.own(name) {
-            Some(Own::Law { curve, .. }) => curve.at(speed),
-            other => panic!("{name}: {other:?}"),
-        }
+        loaded(build(values))
     }
 
     #[test]

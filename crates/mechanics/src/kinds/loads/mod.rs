@@ -20,6 +20,8 @@ mod pulled;
 pub mod pump;
 pub mod quadratic;
 mod resisting;
+#[cfg(test)]
+mod testing;
 mod turbo;
 pub mod vehicle;
 pub mod viscous;

@@ -130,15 +130,13 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
 #[cfg(test)]
 mod tests {
     use super::build;
+    use crate::kinds::loads::testing::loaded;
     use crate::laws::testing::close;
-    use crate::model::{Known, Load, Model};
+    use crate::model::{Known, Load};
     use crate::values::{FieldValue, Values};
 
     fn built(values: &Values) -> Box<dyn Load> {
-        match build(values) {
-            Ok(Model::Load(load)) => load,
-            other => panic!("{other:?}"),
-        }
+        loaded(build(values))
     }
 
     #[test]

@@ -195,23 +195,14 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
 #[cfg(test)]
 mod tests {
     use super::build;
+    use crate::kinds::loads::testing::{loaded, result};
     use crate::laws::testing::{close, rpm};
-    use crate::model::{Load, Model, Own};
+    use crate::model::{Load, Own};
     use crate::values::{FieldValue::Si, Values};
 
     fn screw(fields: &[(&'static str, f64)]) -> Box<dyn Load> {
         let values = fields.iter().fold(Values::default(), |values, (name, si)| values.with(name, Si(*si)));
-        match build(&values) {
-            Ok(Model::Load(load)) => load,
-            other => panic!("{other:?}"),
-        }
-    }
-
-    fn result(load: &dyn Load, name: &str, speed: f64) -> f64 {
-        match load.own(name) {
-            Some(Own::Law { curve, .. }) => curve.at(speed),
-            other => panic!("{name}: {other:?}"),
-        }
+        loaded(build(&values))
     }
 
     #[test]

@@ -148,8 +148,9 @@ fn build(values: &Values) -> Result<Model, Vec<Fault>> {
 #[cfg(test)]
 mod tests {
     use super::build;
+    use crate::kinds::loads::testing::{loaded, result};
     use crate::laws::testing::{close, rpm};
-    use crate::model::{Load, Model, Own};
+    use crate::model::Load;
     use crate::values::{FieldValue, Table, Values};
 
     fn values(fields: &[(&'static str, f64)]) -> Values {
@@ -157,17 +158,7 @@ mod tests {
     }
 
     fn pump(values: &Values) -> Box<dyn Load> {
-        match build(values) {
-            Ok(Model::Load(load)) => load,
-            other => panic!("{other:?}"),
-        }
-    }
-
-    fn result(load: &dyn Load, name: &str, speed: f64) -> f64 {
-        match load.own(name) {
-            Some(Own::Law { curve, .. }) => curve.at(speed),
-            other => panic!("{name}: {other:?}"),
-        }
+        loaded(build(values))
     }
 
     #[test]

@@ -1,8 +1,9 @@
 //! Tests of the belt conveyor.
 
 use super::build;
+use crate::kinds::loads::testing::{loaded, result};
 use crate::laws::testing::close;
-use crate::model::{Known, LimitOn, Load, Model, Own};
+use crate::model::{Known, LimitOn, Load, Own};
 use crate::values::{FieldValue::Si, Values};
 
 fn belt(more: &[(&'static str, f64)]) -> Values {
@@ -19,17 +20,7 @@ fn belt(more: &[(&'static str, f64)]) -> Values {
 }
 
 fn built(values: &Values) -> Box<dyn Load> {
-    match build(values) {
-        Ok(Model::Load(load)) => load,
-        other => panic!("{other:?}"),
-    }
-}
-
-fn result(load: &dyn Load, name: &str, speed: f64) -> f64 {
-    match load.own(name) {
-        Some(Own::Law { curve, .. }) => curve.at(speed),
-        other => panic!("{name}: {other:?}"),
-    }
+    loaded(build(values))
 }
 
 #[test]
