@@ -28,9 +28,9 @@ const kinds = new Set([
   "water_turbine", "hydraulic_motor", "pneumatic_motor", "person", "measured_curve", "polynomial",
   "constant_speed", "gear", "gearbox", "reversing_gear", "variable", "planetary", "worm", "belt", "chain",
   "friction_pulley", "drum", "reeving", "wheel", "screw", "rack", "crank", "shaft", "universal_joint",
-  "brake", "freewheel", "coupling", "clutch", "constant", "viscous", "quadratic", "power_law",
-  "constant_power", "fan", "pump", "propeller", "conveyor", "cutting", "work_stroke", "generator", "winder",
-  "hoist", "off_axis_mass", "incline", "vehicle", "flywheel"
+  "brake", "freewheel", "coupling", "clutch", "fluid_coupling", "constant", "viscous", "quadratic",
+  "power_law", "constant_power", "fan", "pump", "propeller", "conveyor", "cutting", "work_stroke",
+  "generator", "winder", "hoist", "off_axis_mass", "incline", "vehicle", "flywheel"
 ]);
 const quantities = new Set([
   "number", "percentage", "count", "grade", "angle", "slope", "length", "area", "volume", "lead",
