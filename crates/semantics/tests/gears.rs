@@ -94,8 +94,9 @@ fn open_layers_are_judged_at_both_ends() {
 
 #[test]
 fn a_criterion_is_judged_on_the_worse_layer() {
-    let text =
-        format!("{WINCH}require \"1\" well.speed >= 40 m/min\nrequire \"2\" well.motor.torque <= 7 N·m\n");
+    let text = format!(
+        "{WINCH}require \"1\" well.motor.speed <= 1700 rpm\nrequire \"2\" well.motor.torque <= 7 N·m\n"
+    );
     let analysis = analysis(&text);
     let governing = |index: usize| {
         let criterion = &analysis.criteria[index];
