@@ -42,7 +42,7 @@ fn car(grade: f64) -> PartSpec {
 }
 
 fn codes(solution: &Solution) -> Vec<&'static str> {
-    solution.findings().into_iter().map(|finding| finding.code).collect()
+    solution.findings().iter().map(|finding| finding.code).collect()
 }
 
 #[test]
