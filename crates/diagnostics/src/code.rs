@@ -115,6 +115,7 @@ codes! {
     NoDerating = "no-derating", Warning, "the site is high or hot, and no table says what that takes from the source";
     LoadShare = "load-share", Warning, "sources on one shaft do not share the load, or one drives another";
     OutsideData = "outside-data", Warning, "a result taken outside the range in which a curve was measured";
+    PiledMargins = "piled-margins", Warning, "a criterion whose margin stands upon margins already put in";
     PartLimit = "part-limit", Warning, "a part is loaded above its own limit";
     Slips = "slips", Warning, "a wheel, belt or clutch is asked for more than its friction passes";
 }

@@ -26,6 +26,7 @@ mod fields;
 mod findings;
 mod gears;
 mod load;
+mod piled;
 mod record;
 mod sink;
 mod solver;
@@ -103,6 +104,7 @@ pub fn analyze_with(path: &str, text: Arc<str>, files: &dyn Files, memo: &mut Me
     analysis.shows = criteria::shows(shared, &states, &mut extra);
     let all: Vec<&cases::State<'_>> = states.iter().chain(&extra).collect();
     findings::report(shared, &all);
+    piled::report(shared);
     record::record(shared, &all, &mut analysis);
     let found = sink.finish();
     allow::accept(shared, found, &mut analysis);

@@ -252,6 +252,17 @@ fn rows_of_a_csv_file_are_told_by_their_line() {
 }
 
 #[test]
+fn what_follows_from_a_broken_field_is_not_called_missing() {
+    check(
+        "supply grid: mains { voltage = 400 V; frequency = 50 Hz }
+source m: induction_motor { supply = grid; rated_power = 4 kw; rated_speed = 1440 rpm; rated_voltage = 400 V; rated_frequency = 50 Hz; poles = 4; locked_rotor_torque = 2 × rated; breakdown_torque = 2.5 × rated }  #! unknown-unit
+load fan: quadratic { rated_torque = 14 N·m; rated_speed = 1400 rpm }
+drive d = m -> fan { direction = forward }
+require \"loading\" d.m.torque <= m.rated_torque",
+    );
+}
+
+#[test]
 fn a_curve_with_a_row_that_cannot_be_read_is_not_called_short() {
     check(
         "source m: measured_curve { curve = points (speed [rpm], torque [N·m]) { 800 60; 1200, 72 #! syntax

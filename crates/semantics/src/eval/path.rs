@@ -139,6 +139,10 @@ impl Eval<'_> {
             {
                 return Some(datum);
             }
+            // It may follow from a field that could not be read, which has been reported.
+            if !built.sound {
+                return None;
+            }
             let message = format!("`{}` is not given", path_text(path));
             let mut found = Diagnostic::new(Code::MissingField, place, message);
             found = found.related(self.place(at, part.name.span), "the part is declared here");
