@@ -62,6 +62,9 @@ fn value(field: &Field, si: f64) -> String {
             quantity(si, kind, &Habits::default())
         }
         Shape::Flag => String::from(if si == 0.0 { "no" } else { "yes" }),
+        Shape::Choice(words) => {
+            words.get(si as usize).map_or_else(|| written(si), |(word, _)| (*word).to_owned())
+        }
         _ => written(si),
     }
 }
