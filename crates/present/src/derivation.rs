@@ -156,7 +156,7 @@ mod tests {
             for formula in row.formulas {
                 let step = step_of(formula);
                 let kind = kind_of(&step, Some(row));
-                if !kind.is_some_and(|kind| layshaft_units::kind(kind).is_some()) {
+                if kind.is_none_or(|kind| layshaft_units::kind(kind).is_none()) {
                     without.push(format!("{} {}: {}", row.name, formula.name, formula.text));
                 }
                 let symbols: Vec<_> = step.symbols.iter().map(|s| (s.name, s.meaning, "2".into())).collect();
