@@ -3,7 +3,7 @@
 
 use layshaft_diagnostics::FileId;
 use layshaft_mechanics::registry::ColumnRow;
-use layshaft_present::unit::usual_unit;
+use layshaft_semantics::say::column as spelled;
 use layshaft_syntax::{Token, TokenKind as K};
 use layshaft_units::Function;
 
@@ -153,8 +153,7 @@ fn table(columns: &'static [ColumnRow], csv: bool, inside: &[Token]) -> Option<H
     } else {
         let one = |column: &ColumnRow| {
             let what = if column.optional { ", may be missing" } else { "" };
-            let unit = usual_unit(column.kind, []);
-            (format!("{heading}{} [{unit}]", column.name), format!("{}{what}", title(column.kind)))
+            (format!("{heading}{}", spelled(column)), format!("{}{what}", title(column.kind)))
         };
         columns.iter().map(one).collect()
     };
@@ -195,7 +194,6 @@ fn point(columns: &'static [ColumnRow], inside: &[Token]) -> Option<Help> {
     let choices: Vec<&ColumnRow> = others().filter(|column| column.optional).collect();
     let mut firsts: Vec<&ColumnRow> = others().filter(|column| !column.optional).collect();
     let mut parameters = Vec::new();
-    let spelled = |column: &ColumnRow| format!("{} [{}]", column.name, usual_unit(column.kind, []));
     if choices.is_empty() && !firsts.is_empty() {
         let first = firsts.remove(0);
         parameters.push((spelled(first), title(first.kind)));

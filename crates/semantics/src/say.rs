@@ -1,6 +1,7 @@
 //! Sentences with their quantities put in, each in the unit its kind is usually given in.
 
 use layshaft_mechanics::fault::Note;
+use layshaft_mechanics::registry::ColumnRow;
 
 use crate::number::{DIGITS, digits, shortened};
 use crate::unit::usual_unit;
@@ -8,6 +9,15 @@ use crate::unit::usual_unit;
 /// A number with four significant digits, zeros at the end of its fraction cut.
 pub(crate) fn plain(value: f64) -> String {
     shortened(&digits(value, DIGITS))
+}
+
+/// A column as the head of a table says it: `speed [rpm]`; of plain numbers the name alone.
+#[must_use]
+pub fn column(row: &ColumnRow) -> String {
+    match usual_unit(row.kind, []).as_str() {
+        "" => row.name.to_owned(),
+        unit => format!("{} [{unit}]", row.name),
+    }
 }
 
 /// An SI value of a kind in its usual unit: `1450 rpm`.
@@ -55,4 +65,17 @@ pub fn filled(note: &Note, write: impl Fn(f64, &'static str) -> String) -> Strin
     }
     out.push_str(rest);
     out
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_column_of_plain_numbers_has_no_brackets() {
+        let row = |kind| ColumnRow { name: "x", kind, optional: false };
+        assert_eq!(column(&row("rotational_speed")), "x [rpm]");
+        assert_eq!(column(&row("percentage")), "x [%]");
+        assert_eq!(column(&row("number")), "x");
+    }
 }

@@ -4,6 +4,7 @@
 use layshaft_diagnostics::{Code, Edit, FileSpan, Span};
 use layshaft_mechanics::registry::{self, Field, Role, Shape};
 use layshaft_present::sheet::role_word;
+use layshaft_semantics::say::column;
 use layshaft_syntax::{Item, ItemKind};
 
 use super::accept::into_block;
@@ -87,8 +88,7 @@ fn wanted(row: &Field) -> String {
             format!("the name of a {}", role_word(role))
         }
         Shape::Points(columns) => {
-            let heads: Vec<String> =
-                columns.iter().map(|column| format!("{} [{}]", column.name, unit(column.kind))).collect();
+            let heads: Vec<String> = columns.iter().map(column).collect();
             format!("points ({}) {{ … }}", heads.join(", "))
         }
         Shape::Ratio { diameters: true } => String::from("one diameter drives the other"),

@@ -152,8 +152,7 @@ pub(super) fn form_of(asked: Asked<'_, '_>, field: &'static Field, place: &mut u
         Shape::Part(role) => format!("{name} = {}", part(asked, role, one)),
         Shape::Points(columns) => {
             let wanted = columns.iter().filter(|column| !column.optional || columns.len() <= 2);
-            let heads: Vec<String> =
-                wanted.map(|column| format!("{} [{}]", column.name, usual_unit(column.kind, []))).collect();
+            let heads: Vec<String> = wanted.map(layshaft_semantics::say::column).collect();
             format!("{name} = points ({}) {{\n    ${{{one}}}\n}}", heads.join(", "))
         }
         Shape::Ratio { diameters: false } => format!("{name} = ${{{one}}} drives ${{{}}}", next()),

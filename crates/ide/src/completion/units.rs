@@ -3,7 +3,6 @@
 use std::collections::BTreeSet;
 
 use layshaft_mechanics::registry::{ColumnRow, Shape};
-use layshaft_present::unit::usual_unit;
 use layshaft_units::{KINDS, Kind};
 
 use super::Asked;
@@ -59,8 +58,7 @@ fn in_ascii(unit: &str) -> String {
 /// Columns of a table with their usual units.
 pub(super) fn columns(columns: &[ColumnRow], menu: &mut Menu<'_>) {
     for column in columns {
-        let unit = usual_unit(column.kind, []);
-        let text = format!("{} [{unit}]", column.name);
+        let text = layshaft_semantics::say::column(column);
         let needed = if column.optional { "" } else { " · required" };
         let title = layshaft_units::kind(column.kind).map_or(column.kind, |kind| kind.title);
         let entry = menu.add(u8::from(column.optional), CompletionKind::Field, &text);

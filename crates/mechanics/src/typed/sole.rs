@@ -61,6 +61,9 @@ const PIECES: usize = 400;
 /// How often the range is halved before it is left open.
 const DEEPEST: u32 = 46;
 
+/// A step this small beside the speed is the last one: the error it leaves goes by its square, far below rounding.
+const SETTLED: f64 = 1e-14;
+
 /// A piece: the range halved `level` times, the one of number `index` from below.
 #[derive(Clone, Copy)]
 struct Piece {
@@ -151,7 +154,7 @@ fn newton<S: Law, L: Law>(source: &S, load: &L, of: &Bracket) -> f64 {
         }
         let step = x - here.value / here.slope;
         let next = if step >= lo && step <= hi { step } else { 0.5 * lo + 0.5 * hi };
-        if (next - x).abs() <= 2.0 * f64::EPSILON * x.abs() {
+        if (next - x).abs() <= SETTLED * x.abs() {
             return next;
         }
         x = next;

@@ -64,7 +64,8 @@ fn drawn(finding: &Diagnostic, places: &[Place], sources: &Sources, style: Style
         report = report.with_note(terminal(note));
     }
     for help in helps(finding) {
-        report = report.with_help(terminal(&help));
+        let lines: Vec<_> = help.lines().map(terminal).collect();
+        report = report.with_help(lines.join("\n"));
     }
     let mut bytes = Vec::new();
     report.finish().write(sources, &mut bytes).ok()?;
@@ -103,7 +104,8 @@ fn plain(finding: &Diagnostic, sources: &Sources, style: Style) -> String {
         }
     }
     for help in helps(finding) {
-        out.push_str(&format!("   Help: {}\n", terminal(&help)));
+        let lines: Vec<_> = help.lines().map(terminal).collect();
+        out.push_str(&format!("   Help: {}\n", lines.join("\n         ")));
     }
     for note in &finding.notes {
         out.push_str(&format!("   Note: {}\n", terminal(note)));
@@ -139,6 +141,13 @@ mod tests {
 
     fn at(file: u32, start: u32, end: u32) -> FileSpan {
         FileSpan { file: FileId(file), span: Span::new(start, end) }
+    }
+
+    #[test]
+    fn a_help_of_several_lines_stands_in_several_lines() {
+        let found = Diagnostic::new(Code::MissingField, at(0, 4, 5), "m").help("add a = … m\nb = … s");
+        let shown = findings(&analysis(&["let x = 9.81\n"], vec![found]), &[String::from("a.shaft")], NO);
+        assert!(shown.contains("add a = … m\n") && !shown.contains("\\n"), "{shown}");
     }
 
     #[test]

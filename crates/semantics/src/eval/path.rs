@@ -257,7 +257,9 @@ impl Eval<'_> {
                     self.remark("from data taken at other conditions and scaled".to_owned());
                 }
                 let kind = layshaft_units::kind(kind)?;
-                // Nobody wrote a unit: the reader is shown the one that suits the number.
+                // Nobody wrote a unit: the reader is shown the one that suits the number. A share has the type of a
+                // plain number and would be shown as one.
+                let share = matches!(kind.name, "percentage" | "grade");
                 let ty = kind.ty();
                 return Some(Datum::Quantity(Quantity {
                     si,
@@ -265,7 +267,7 @@ impl Eval<'_> {
                     limits: None,
                     is_range: false,
                     confidence: None,
-                    unit: None,
+                    unit: share.then(|| "%".into()),
                 }));
             }
             Answer::Flag(flag) => return Some(Datum::Flag(flag)),

@@ -105,10 +105,7 @@ impl Reader<'_, '_> {
                 .columns
                 .iter()
                 .filter(|row| !row.optional)
-                .map(|row| {
-                    let unit = layshaft_units::kind(row.kind).map_or("", |kind| kind.unit);
-                    format!("heading as {} [{unit}]", row.name)
-                })
+                .map(|row| format!("heading as {}", crate::say::column(row)))
                 .collect();
             let message = "say which column of the file is what, and in which unit".to_owned();
             self.eval.report(

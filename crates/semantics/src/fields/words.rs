@@ -33,13 +33,7 @@ pub(crate) fn sample(field: &Field) -> String {
         Shape::Flag => "yes | no".to_owned(),
         Shape::Part(role) => format!("(a {})", role_word(role)),
         Shape::Points(columns) => {
-            let heads: Vec<_> = columns
-                .iter()
-                .map(|column| {
-                    let unit = layshaft_units::kind(column.kind).map_or("", |kind| kind.unit);
-                    format!("{} [{unit}]", column.name)
-                })
-                .collect();
+            let heads: Vec<_> = columns.iter().map(crate::say::column).collect();
             format!("points ({}) {{ … }}", heads.join(", "))
         }
         Shape::Ratio { diameters: true } => "… mm drives … mm".to_owned(),
