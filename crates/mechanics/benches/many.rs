@@ -162,3 +162,85 @@ fn curved_proved(bencher: Bencher) {
 fn curved_written_out_proved(bencher: Bencher) {
     all_proved(bencher, |(machine, fan)| proved(&WrittenOut(machine), machine, fan));
 }
+
+/// A straight line behind a gear, seen at its output.
+struct Geared {
+    standstill: f64,
+    end: f64,
+}
+
+impl Law for Geared {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        (R::of(self.end) - speed) * (self.standstill / self.end)
+    }
+}
+
+/// A load without closed form: a constant, a power of 1.8, and what sticks and fades.
+struct Rough {
+    constant: f64,
+    power: f64,
+    sticks: f64,
+    fades: f64,
+}
+
+impl Law for Rough {
+    fn eval<R: Real>(&self, speed: R) -> R {
+        speed.powf(1.8) * self.power + (speed * (-1.0 / self.fades)).exp() * self.sticks + self.constant
+    }
+}
+
+fn rough() -> Vec<(Geared, Rough)> {
+    let one = |n: usize| {
+        let share = 1.0 + (n % 97) as f64 * 1e-3;
+        let load = Rough { constant: 0.2 * share, power: 1e-3, sticks: 0.15, fades: 5.0 };
+        (Geared { standstill: 1.575 + n as f64 * 1e-7, end: 62.8 }, load)
+    };
+    (0..CURVED).map(one).collect()
+}
+
+fn newton_rough(source: &Geared, load: &Rough) -> f64 {
+    let (mut low, mut high) = (0.0, source.end);
+    let mut w = 0.5 * (low + high);
+    for _ in 0..60 {
+        let (power, faded) = (load.power * w.powf(1.8), load.sticks * (-w / load.fades).exp());
+        let net = (source.end - w) * source.standstill / source.end - load.constant - power - faded;
+        let slope = -source.standstill / source.end - 1.8 * power / w + faded / load.fades;
+        if net > 0.0 {
+            low = w;
+        } else {
+            high = w;
+        }
+        let step = w - net / slope;
+        if (step - w).abs() <= 1e-14 * w {
+            return step;
+        }
+        w = if step > low && step < high { step } else { 0.5 * (low + high) };
+    }
+    w
+}
+
+#[divan::bench(sample_count = 20)]
+fn baseline_rough(bencher: Bencher) {
+    let drives = rough();
+    let all = || black_box(&drives).iter().map(|(source, load)| newton_rough(source, load)).sum::<f64>();
+    bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
+}
+
+#[divan::bench(sample_count = 20)]
+fn rough_proved(bencher: Bencher) {
+    let drives = rough();
+    let one = |(source, load): &(Geared, Rough)| match sole_operating_point(
+        source,
+        load,
+        (rads(0.0), rads(source.end)),
+    ) {
+        Sole::Stable(point) => point.speed.get::<radian_per_second>(),
+        other => panic!("{other:?}"),
+    };
+    for (source, load) in drives.iter().step_by(1000) {
+        let (ours, bare) = (one(&(Geared { ..*source }, Rough { ..*load })), newton_rough(source, load));
+        assert!((ours / bare - 1.0).abs() < 1e-12, "{ours} {bare}");
+    }
+    let all = || black_box(&drives).iter().map(one).sum::<f64>();
+    bencher.counter(ItemsCount::new(CURVED)).bench_local(all);
+}
