@@ -202,7 +202,8 @@ fn newton_rough(source: &Geared, load: &Rough) -> f64 {
     let (mut low, mut high) = (0.0, source.end);
     let mut w = 0.5 * (low + high);
     for _ in 0..60 {
-        let (power, faded) = (load.power * w.powf(1.8), load.sticks * (-w / load.fades).exp());
+        let power = load.power * libm::pow(w, 1.8);
+        let faded = load.sticks * libm::exp(-w / load.fades);
         let net = (source.end - w) * source.standstill / source.end - load.constant - power - faded;
         let slope = -source.standstill / source.end - 1.8 * power / w + faded / load.fades;
         if net > 0.0 {
