@@ -102,29 +102,36 @@ fn curved() -> Vec<(Machine, Fan)> {
     (0..CURVED).map(one).collect()
 }
 
-/// Newton's method kept inside a bracket.
-fn newton(machine: &Machine, fan: &Fan) -> f64 {
-    let (mut low, mut high) = (machine.synchronous * (1.0 - machine.slip), machine.synchronous);
+/// Newton's method kept inside a bracket, on a net torque that falls; `net` gives its value and slope.
+#[inline(always)]
+fn safeguarded((mut low, mut high): (f64, f64), net: impl Fn(f64) -> (f64, f64)) -> f64 {
     let mut w = 0.5 * (low + high);
     for _ in 0..60 {
-        let s = (machine.synchronous - w) / (machine.synchronous * machine.slip);
-        let below = 1.0 + s * s;
-        let net = 2.0 * machine.breakdown * s / below - fan.0 * w * w;
-        let slope = -2.0 * machine.breakdown * (1.0 - s * s)
-            / (below * below * machine.slip * machine.synchronous)
-            - 2.0 * fan.0 * w;
-        if net > 0.0 {
+        let (value, slope) = net(w);
+        if value > 0.0 {
             low = w;
         } else {
             high = w;
         }
-        let step = w - net / slope;
+        let step = w - value / slope;
         if (step - w).abs() <= 1e-14 * w {
             return step;
         }
         w = if step > low && step < high { step } else { 0.5 * (low + high) };
     }
     w
+}
+
+fn newton(machine: &Machine, fan: &Fan) -> f64 {
+    safeguarded((machine.synchronous * (1.0 - machine.slip), machine.synchronous), |w| {
+        let s = (machine.synchronous - w) / (machine.synchronous * machine.slip);
+        let below = 1.0 + s * s;
+        let net = 2.0 * machine.breakdown * s / below - fan.0 * w * w;
+        let slope = -2.0 * machine.breakdown * (1.0 - s * s)
+            / (below * below * machine.slip * machine.synchronous)
+            - 2.0 * fan.0 * w;
+        (net, slope)
+    })
 }
 
 #[divan::bench(sample_count = 20)]
@@ -199,25 +206,13 @@ fn rough() -> Vec<(Geared, Rough)> {
 }
 
 fn newton_rough(source: &Geared, load: &Rough) -> f64 {
-    let (mut low, mut high) = (0.0, source.end);
-    let mut w = 0.5 * (low + high);
-    for _ in 0..60 {
+    safeguarded((0.0, source.end), |w| {
         let power = load.power * libm::pow(w, 1.8);
         let faded = load.sticks * libm::exp(-w / load.fades);
         let net = (source.end - w) * source.standstill / source.end - load.constant - power - faded;
         let slope = -source.standstill / source.end - 1.8 * power / w + faded / load.fades;
-        if net > 0.0 {
-            low = w;
-        } else {
-            high = w;
-        }
-        let step = w - net / slope;
-        if (step - w).abs() <= 1e-14 * w {
-            return step;
-        }
-        w = if step > low && step < high { step } else { 0.5 * (low + high) };
-    }
-    w
+        (net, slope)
+    })
 }
 
 #[divan::bench(sample_count = 20)]
